@@ -1,0 +1,56 @@
+import type { MediumChoice, ResolvedMedium, Situation } from '../model/index.js'
+import type { WaveSystem } from '../wave/index.js'
+
+/** One decision of a stack: a numbered choice among `choices`. */
+export interface Place {
+  readonly name: string
+  readonly choices: number
+  /** Neighbouring numbers are neighbouring values (widths, compositions, numbers), not a list of materials. */
+  readonly ordered: boolean
+}
+
+/** One layer as it is grown: equal neighbours merged, zero widths dropped, from entry to exit. */
+export interface GrownLayer {
+  readonly id: string
+  readonly choice: MediumChoice
+  readonly resolved: ResolvedMedium
+  /** widthNm = count stepNm; the step is the layer's own monolayer, or the lattice step of nm ranges. */
+  readonly count: number
+  readonly stepNm: number
+  readonly widthNm: number
+}
+
+/** The makeable stacks of a job: an assignment gives each place one of its choices. */
+export interface Design {
+  readonly places: readonly Place[]
+  /** One a condition of the job, in its order. */
+  readonly situations: readonly Situation[]
+  readonly notes: readonly string[]
+  /** How many different stacks the lattice holds. */
+  stackCount(): number
+  /** Every feasible assignment, in the order of the places; the array is reused. */
+  assignments(): Iterable<Int32Array>
+  feasible(assignment: Int32Array): boolean
+  /** The one of a stack and its mirror image that is listed (design 5); may be the argument itself. */
+  canonical(assignment: Int32Array): Int32Array
+  layers(assignment: Int32Array): GrownLayer[]
+  systems(assignment: Int32Array): WaveSystem[]
+  /** First 12 hex digits of SHA-256 over the canonical JSON of the stack. */
+  id(assignment: Int32Array): string
+  /** The readable text of a stack: `AlGaAs(0.35) 12 / GaAs 18 / AlGaAs(0.35) 12 ML`. */
+  text(assignment: Int32Array): string
+  /** The continuous neighbourhood of an assignment: its lists of materials held, everything ordered set free. */
+  relax(assignment: Int32Array): Relaxed
+}
+
+/** Free widths, compositions and numbers as one vector of variables of order one. */
+export interface Relaxed {
+  readonly start: Float64Array
+  readonly lower: Float64Array
+  readonly upper: Float64Array
+  systems(variables: Float64Array): WaveSystem[]
+  /** d(layer parameter)/d(variable): row v holds layers * (1 + parameters) entries, [width, then the medium's own] a layer. */
+  directions(variables: Float64Array): Float64Array
+  /** The assignment nearest to the variables on the lattice; feasible. */
+  snap(variables: Float64Array): Int32Array
+}

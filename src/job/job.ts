@@ -1,0 +1,173 @@
+/** A job as read, checked and filled with its defaults: energies in eV, lengths in nm, kelvin, fractions. */
+
+export type Kind = 'electron' | 'light'
+
+export interface Job {
+  /** Where it was read from, and the exact text. */
+  readonly file: string
+  readonly text: string
+  /** Contents of every file that the job names, by the name as written. */
+  readonly files: Readonly<Record<string, string>>
+
+  readonly format: 1
+  readonly name: string
+  readonly kind: Kind
+  readonly note: string
+  readonly conditions: readonly Condition[]
+  readonly stack: StackSpec
+  readonly scanEv: readonly [number, number]
+  /** Energy resolution below which a maximum in a `block` counts less (design 3); null: none. */
+  readonly resolutionEv: number | null
+  readonly demands: readonly Demand[]
+  readonly growth: GrowthSpec
+  readonly search: SearchSpec
+  readonly deliver: { readonly candidates: number }
+  /** Sentences for the engineer that are no errors: roundings, assumed values, limits of validity. */
+  readonly notes: readonly string[]
+}
+
+/** One operating point. A job without `conditions:` has one, named ''. */
+export interface Condition {
+  readonly name: string
+  readonly temperatureK: number
+  readonly biasV: number
+  readonly inPlaneEv: number
+}
+
+export interface StackSpec {
+  readonly entry: MediumOption
+  readonly exit: MediumOption | 'hard wall'
+  readonly layers: readonly StackItem[]
+  /** Reflect about the last layer. */
+  readonly mirror: boolean
+  readonly massModel: 'two-band' | 'parabolic'
+  /** A material's name, 'none', or null: the lead at the substrate's side. */
+  readonly strainedTo: string | null
+}
+
+export type StackItem = LayerSpec | PeriodSpec
+
+export interface LayerSpec {
+  readonly kind: 'layer'
+  /** As written, or `L1`, `L2`, ... in the order of the file. */
+  readonly id: string
+  /** The id of the layer whose material, composition and width this one shares. */
+  readonly like: string | null
+  /** Absent (null) exactly when `like` is given. */
+  readonly media: readonly MediumOption[] | null
+  readonly width: WidthSpec | null
+}
+
+export interface PeriodSpec {
+  readonly kind: 'period'
+  readonly id: string | null
+  readonly repeat: number
+  readonly period: readonly StackItem[]
+  readonly mirror: boolean
+}
+
+/** One medium that a layer may be made of; several options are a `pick` of material. Choices ascend, at least one. */
+export type MediumOption =
+  | {
+      readonly kind: 'material'
+      readonly material: string
+      /** The allowed compositions; null for a binary. */
+      readonly x: readonly number[] | null
+    }
+  | {
+      readonly kind: 'numbers'
+      /** The name under `media:`, if it has one. */
+      readonly name: string | null
+      readonly potentialEv: readonly number[]
+      readonly massRel: readonly number[]
+      readonly alphaPerEv: readonly number[]
+    }
+
+/** A width as written. ML count monolayers of whatever medium the layer gets; equal ends mean a fixed width. */
+export interface WidthSpec {
+  readonly unit: 'ML' | 'nm'
+  readonly from: number
+  readonly to: number
+  /** In the same unit; null: one ML, or the growth step. */
+  readonly step: number | null
+}
+
+interface DemandBase {
+  readonly id: string
+  readonly weight: number
+}
+
+export interface PeakDemand extends DemandBase {
+  readonly kind: 'peak'
+  readonly energyEv: number
+  readonly withinEv: number
+  readonly fwhmEv: readonly [number, number] | null
+  readonly height: number | null
+}
+
+export interface PassDemand extends DemandBase {
+  readonly kind: 'pass'
+  /** Evenly spaced over the closed range in the unit it is written in, both ends included; eV, ascending. */
+  readonly pointsEv: readonly number[]
+  readonly above: number
+}
+
+export interface BlockDemand extends DemandBase {
+  readonly kind: 'block'
+  readonly pointsEv: readonly number[]
+  readonly below: number
+}
+
+export interface CurveDemand extends DemandBase {
+  readonly kind: 'curve'
+  /** The file's name as written. */
+  readonly file: string
+  readonly rows: readonly CurveRow[]
+}
+
+export interface CurveRow {
+  readonly energyEv: number
+  readonly T: number
+  readonly sense: 'equal' | 'least' | 'most'
+  readonly scale: 'linear' | 'decades'
+  readonly tolerance: number
+  readonly weight: number
+}
+
+export type Demand = PeakDemand | PassDemand | BlockDemand | CurveDemand
+
+export interface GrowthSpec {
+  /** The side of the substrate. */
+  readonly startsAt: 'entry' | 'exit'
+  /** As written: `Ga`, `Al-1`; empty when the job gives none. */
+  readonly sources: readonly Source[]
+  /** At most so many different alloys in one stack; null: no limit. */
+  readonly compositions: number | null
+  /** Lattice step of nm ranges; null: one ML for materials, 0.1 nm for media by numbers. */
+  readonly stepNm: number | null
+  readonly spread: Spread
+  /** True where the job has no `spread`: everything that uses it says "assumed". */
+  readonly assumed: boolean
+  readonly trials: number
+}
+
+export interface Source {
+  readonly name: string
+  readonly element: string
+  readonly rateMlPerS: number
+}
+
+/** One standard deviation each. */
+export interface Spread {
+  /** Fraction of a source's rate. */
+  readonly rate: number
+  /** Per grown layer, in monolayers of its own or in nm. */
+  readonly layer: { readonly value: number; readonly unit: 'ML' | 'nm' }
+  readonly x: number
+}
+
+export interface SearchSpec {
+  readonly method: 'auto' | 'sampled'
+  readonly effort: 'brief' | 'standard' | 'overnight'
+  readonly seed: number
+}

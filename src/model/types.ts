@@ -1,0 +1,66 @@
+/** The stacks of the public library, in its own units: eV, nm, free-electron masses, degrees. */
+
+/** A homogeneous region for electrons: m(E) = massRel (1 + alphaPerEv (E - potentialEv)). */
+export interface Region {
+  readonly potentialEv: number
+  readonly massRel: number
+  readonly alphaPerEv?: number
+}
+
+export interface ElectronStack {
+  readonly kind: 'electron'
+  readonly entry: Region
+  readonly layers: readonly (Region & { readonly widthNm: number })[]
+  readonly exit: Region | 'hard wall'
+  readonly inPlaneKPerNm?: number
+}
+
+export type OfWavelength = number | ((nm: number) => number)
+
+/** n + i kappa, kappa > 0 absorbs; the entry is lossless. */
+export interface Medium {
+  readonly index: OfWavelength
+  readonly extinction?: OfWavelength
+}
+
+export interface LightStack {
+  readonly kind: 'light'
+  readonly entry: Medium
+  readonly layers: readonly (Medium & { readonly widthNm: number })[]
+  readonly exit: Medium
+  readonly angleDeg?: number
+  readonly polarisation?: 's' | 'p'
+  readonly back?: { readonly exit: Medium }
+}
+
+/** One medium out of what a job allows, with its composition or numbers fixed. */
+export type MediumChoice =
+  | { readonly kind: 'material'; readonly material: string; readonly x: number | null }
+  | {
+      readonly kind: 'numbers'
+      readonly name: string | null
+      readonly potentialEv: number
+      readonly massRel: number
+      readonly alphaPerEv: number
+    }
+
+/** What turns a medium of the job into a region: the job's conditions and its strain. */
+export interface Situation {
+  readonly temperatureK: number
+  /** Lattice constant (nm, 300 K) that the layers are strained to; null: no strain. */
+  readonly substrateNm: number | null
+  readonly massModel: 'two-band' | 'parabolic'
+  readonly entry: MediumChoice
+  readonly exit: MediumChoice | 'hard wall'
+  /** In-plane wave number, 1/nm. */
+  readonly inPlaneKPerNm: number
+}
+
+/** A medium at the job's situation. */
+export interface ResolvedMedium {
+  readonly region: Required<Region>
+  /** Half of the strained lattice constant along (001) at 300 K; null for media by numbers. */
+  readonly monolayerNm: number | null
+  /** In-plane strain; null for media by numbers or without strain. */
+  readonly strain: number | null
+}

@@ -1,0 +1,43 @@
+import type { Score } from '../target/index.js'
+
+/** Places with numbered choices, and an evaluator: all that a search may know. An assignment has one choice a place. */
+export interface SearchProblem {
+  readonly places: readonly { readonly choices: number; readonly ordered: boolean }[]
+  feasible(assignment: Int32Array): boolean
+  /** The assignment under which a stack is listed, for stacks that are one physical object. */
+  canonical(assignment: Int32Array): Int32Array
+  /** A lower bound of the merit that costs little. */
+  bound(assignment: Int32Array): number
+  score(assignment: Int32Array): Score
+  /** Negative when a comes first. */
+  compare(a: Score, b: Score): number
+  /** The continuous problem around an assignment, for Levenberg-Marquardt. */
+  relax(assignment: Int32Array): RelaxedProblem
+}
+
+export interface RelaxedProblem {
+  readonly residuals: number
+  readonly start: Float64Array
+  readonly lower: Float64Array
+  readonly upper: Float64Array
+  /** Writes residuals and `jacobian[i * variables + v]`. */
+  evaluate(variables: Float64Array, residuals: Float64Array, jacobian: Float64Array): void
+  snap(variables: Float64Array): Int32Array
+}
+
+/** A stack as the journal keeps it. */
+export interface Found {
+  readonly assignment: readonly number[]
+  readonly score: Score
+}
+
+/** What one unit of work leaves: plain data, at most 64 stacks, the best first. */
+export interface UnitResult {
+  readonly unit: number
+  readonly found: readonly Found[]
+  /** Stacks looked at with the whole merit, and those cut by the bound. */
+  readonly examined: number
+  readonly cut: number
+  /** Why the unit stopped: `no move helps`, `budget of evaluations`. */
+  readonly stop: string
+}

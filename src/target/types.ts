@@ -1,0 +1,73 @@
+import type { WaveSystem } from '../wave/index.js'
+
+export interface PeakFigures {
+  readonly energyEv: number
+  readonly T: number
+  /** Half-height points of the peak's own height, cut at the window's ends. */
+  readonly lowEv: number
+  readonly highEv: number
+  readonly fwhmEv: number
+}
+
+export interface DemandResult {
+  readonly id: string
+  readonly kind: 'peak' | 'pass' | 'block' | 'curve'
+  /** Peak: its energy (eV), null without a maximum; pass, block: the extreme T; curve: the rms. */
+  readonly reached: number | null
+  /** Root mean square of the residuals. */
+  readonly rms: number
+  /** Null for a curve, which is a goal and no limit. */
+  readonly met: boolean | null
+  /** Energy of the extreme of a pass or block. */
+  readonly extremeEv: number | null
+  readonly peak: PeakFigures | null
+}
+
+export interface Evaluation {
+  readonly merit: number
+  /** All limits are met at every condition. */
+  readonly met: boolean
+  readonly demands: readonly DemandResult[]
+  /** Of the first peak demand, else the highest maximum of the window; null when there is none. */
+  readonly peak: PeakFigures | null
+}
+
+/** A limit g >= 0 in natural units, with dg/d(layer parameter): [width, then the medium's own] a layer. */
+export interface Limit {
+  readonly demand: string
+  readonly part: string
+  readonly slack: number
+  readonly gradient: Float64Array
+}
+
+/** The demands of a job, ready to judge stacks. Systems come one a condition, in the job's order. */
+export interface Target {
+  /** Residuals of the fit: point terms and the parts of peaks. */
+  readonly fitSize: number
+  /** A lower bound of the merit from the point terms alone. */
+  pointMerit(systems: readonly WaveSystem[]): number
+  evaluate(systems: readonly WaveSystem[]): Evaluation
+  /**
+   * The residuals that Levenberg-Marquardt minimises, scaled so that their sum of squares is the merit squared without its
+   * extremes. `jacobian[i * variables + v]`, from d(layer parameter)/d(variable) in `directions`.
+   */
+  fit(
+    systems: readonly WaveSystem[],
+    directions: Float64Array,
+    variables: number,
+    residuals: Float64Array,
+    jacobian: Float64Array,
+  ): void
+  /** Every limit of a stack that was evaluated; slacks are negative where unmet. */
+  limits(systems: readonly WaveSystem[], evaluation: Evaluation): Limit[]
+}
+
+/** What the order of stacks compares (design 3). */
+export interface Score {
+  readonly met: boolean
+  readonly merit: number
+  /** Null when unmet, or when the job has no limits. */
+  readonly margin: number | null
+  readonly totalNm: number
+  readonly id: string
+}
