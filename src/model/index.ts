@@ -1,1 +1,7 @@
+export { buildSystem } from './buildSystem.js'
+export { electronMedia } from './electronMedia.js'
+export { regionDerivative } from './regionDerivative.js'
+export { resolveMedium } from './resolveMedium.js'
+export { StackError } from './StackError.js'
+export { situationOf } from './situationOf.js'
 export type * from './types.js'

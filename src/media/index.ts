@@ -1,0 +1,8 @@
+export { type BandParameters, bandParameters } from './bandParameters.js'
+export * from './constants.js'
+export { type ListedNumber, listedNumbers } from './listedNumbers.js'
+export { MaterialError } from './MaterialError.js'
+export type { Alloy, Binary, Bowing, Gap, Material, Sourced } from './material.js'
+export { materialNotes } from './materialNotes.js'
+export { isMaterial, material, materialNames, materials, needsX } from './materials.js'
+export { nearest } from './nearest.js'
