@@ -24,6 +24,7 @@ export interface SpectrumReport {
   readonly log10T: Float64Array
 }
 
+/** From the entry (z < 0) through the stack, which starts at z = 0, into the exit; at an interface two points with the same z. */
 export interface ProfileReport {
   readonly zNm: Float64Array
   readonly edgeEv: Float64Array

@@ -1,0 +1,127 @@
+import type { Demand, Job } from '../job/index.js'
+import type { DemandResult } from '../target/index.js'
+import { fitted, label, wrapped } from './label.js'
+import { short } from './layerText.js'
+import { palette } from './palette.js'
+import type { PictureBody } from './picture.js'
+import { element } from './svg.js'
+import type { Candidate } from './types.js'
+
+/** One line of the table: what was wanted and what came of it. `id` and `state` stand on the first line of a demand only. */
+export interface DemandRow {
+  readonly id: string
+  readonly wanted: string
+  readonly reached: string
+  readonly state: '' | 'met' | 'missed' | 'goal'
+}
+
+/** Rows of demands that a picture holds. */
+const mostRows = 24
+
+/** The demands in words. */
+export function demandRows(job: Job, { evaluation }: Candidate): DemandRow[] {
+  return job.demands.flatMap((demand) => {
+    const result = evaluation.demands.find(({ id }) => id === demand.id)
+    const [first, ...others] = partsOf(demand, result)
+    const state = result === undefined ? '' : result.met === null ? 'goal' : result.met ? 'met' : 'missed'
+    return [
+      { id: demand.id, ...first, state } as const,
+      ...others.map((part) => ({ id: '', ...part, state: '' }) as const),
+    ]
+  })
+}
+
+/** What else a planner asks first: how good, how sure, how sensitive. */
+export function factLines({ growth }: Job, candidate: Candidate): string[] {
+  const { evaluation, margin, yield: grown, limitingDemand, worstLayer, worstShiftEv } = candidate
+  const assumed = growth.assumed ? ', assumed growth errors' : ''
+  const lines = [
+    `Merit ${short(evaluation.merit)} (0: all limits are met)${margin === null ? '' : `, margin ${short(margin)}`}.`,
+  ]
+  if (grown !== null) {
+    const interval = `${short(grown.lowPct)} to ${short(grown.highPct)} %`
+    lines.push(`Yield ${short(grown.pct)} % (${interval}, ${grown.trials} trials on paper${assumed}).`)
+  }
+  if (limitingDemand !== null) lines.push(`Fails most often: ${limitingDemand}.`)
+  if (worstLayer !== null && worstShiftEv !== null) {
+    lines.push(
+      `Most sensitive: ${worstLayer}, ${short(worstShiftEv * 1000).replace('-', '\u2212')} meV for one standard deviation.`,
+    )
+  }
+  return lines
+}
+
+/** Draws both below one another. */
+export function demandTable(
+  rows: readonly DemandRow[],
+  facts: readonly string[],
+  { left, top, width }: { left: number; top: number; width: number },
+): PictureBody {
+  const columns = { id: left, wanted: left + 64, reached: left + 205, state: left + width }
+  const shown = rows.slice(0, mostRows)
+  const head = { bold: true, size: 11, fill: palette.quiet }
+  const parts = [
+    label(columns.id, top, 'demand', head),
+    label(columns.wanted, top, 'wanted', head),
+    label(columns.reached, top, 'reached', head),
+    rule(left, top + 5, width),
+  ]
+  let y = top + 21
+  for (const { id, wanted, reached, state } of shown) {
+    if (id !== '') parts.push(label(columns.id, y, fitted(id, 60, 11.5), { size: 11.5, bold: true }))
+    parts.push(label(columns.wanted, y, fitted(wanted, 138, 11.5), { size: 11.5 }))
+    parts.push(label(columns.reached, y, fitted(reached, width - 205 - (state === '' ? 0 : 48), 11.5), { size: 11.5 }))
+    if (state !== '') {
+      const fill = { met: palette.wanted, missed: palette.forbidden, goal: palette.quiet }[state]
+      parts.push(label(columns.state, y, state, { size: 11.5, anchor: 'end', bold: true, fill }))
+    }
+    y += 17
+  }
+  if (rows.length > shown.length) {
+    parts.push(label(columns.wanted, y, 'and more, in candidates.csv', { size: 11, fill: palette.quiet }))
+    y += 17
+  }
+  parts.push(rule(left, y - 10, width))
+  y += 8
+  for (const line of facts.flatMap((fact) => wrapped(fact, width, 11.5, 2))) {
+    parts.push(label(left, y, line, { size: 11.5 }))
+    y += 16
+  }
+  return { height: y - top, defs: [], parts }
+}
+
+type Part = Pick<DemandRow, 'wanted' | 'reached'>
+
+function partsOf(demand: Demand, result: DemandResult | undefined): [Part, ...Part[]] {
+  const reached = result?.reached ?? null
+  if (demand.kind === 'curve') {
+    return [{ wanted: `curve ${demand.file}`, reached: reached === null ? '' : `rms ${short(reached)}` }]
+  }
+  if (demand.kind !== 'peak') {
+    const [from, to] = [demand.pointsEv[0], demand.pointsEv[demand.pointsEv.length - 1]].map(meVText)
+    const limit = demand.kind === 'block' ? `T \u2264 ${short(demand.below)}` : `T \u2265 ${short(demand.above)}`
+    const where = result === undefined || result.extremeEv === null ? '' : ` at ${meVText(result.extremeEv)} meV`
+    return [
+      { wanted: `${demand.kind} ${from}..${to} meV`, reached: reached === null ? '' : `T = ${short(reached)}` },
+      { wanted: limit, reached: where.trim() },
+    ]
+  }
+  const peak = result?.peak ?? null
+  const parts: Part[] = []
+  if (demand.fwhmEv !== null) {
+    const [least, most] = demand.fwhmEv.map(meVText)
+    parts.push({ wanted: `fwhm ${least}..${most} meV`, reached: peak === null ? '' : `${meVText(peak.fwhmEv)} meV` })
+  }
+  if (demand.height !== null)
+    parts.push({ wanted: `height ${short(demand.height)}`, reached: peak === null ? '' : short(peak.T) })
+  const place = `peak ${meVText(demand.energyEv)} \u00b1 ${meVText(demand.withinEv)} meV`
+  return [{ wanted: place, reached: reached === null ? 'no maximum' : `${meVText(reached)} meV` }, ...parts]
+}
+
+function meVText(ev: number): string {
+  return short(ev * 1000)
+}
+
+function rule(left: number, y: number, width: number): string {
+  return element('line', { x1: left, y1: y, x2: left + width, y2: y, stroke: palette.border })
+}

@@ -1,0 +1,43 @@
+import type { PeakFigures } from '../target/index.js'
+import { type Axis, roundAxis } from './frame.js'
+
+/**
+ * An axis over [from, to] (eV): energies in meV, or, where the digits that differ would be far behind the point, distances from the peak
+ * in the unit that suits them. `at` gives the place of an energy on it.
+ */
+export function energyAxis(
+  from: number,
+  to: number,
+  peak: PeakFigures | null,
+): { axis: Axis; at: (ev: number) => number } {
+  if (peak === null || to - from > 1e-4) {
+    return { axis: roundAxis('energy (meV)', from * 1000, to * 1000, 7), at: (ev) => ev * 1000 }
+  }
+  const unit = units.find(({ perEv }) => (to - from) * perEv >= 1) ?? units[units.length - 1]
+  const at = (ev: number) => (ev - peak.energyEv) * unit.perEv
+  const centre = (peak.energyEv * 1000).toPrecision(7)
+  return { axis: roundAxis(`energy \u2212 ${centre} meV (${unit.name})`, at(from), at(to), 5), at }
+}
+
+const units = [
+  { name: '\u00b5eV', perEv: 1e6 },
+  { name: 'neV', perEv: 1e9 },
+  { name: 'peV', perEv: 1e12 },
+  { name: 'feV', perEv: 1e15 },
+]
+
+/** The unit of a linear T axis whose curve reaches `greatest`: 1, or the power of ten that keeps its labels short. */
+export function heightUnit(greatest: number): { inverse: number; top: number; name: string } {
+  if (greatest > 0.5) return { inverse: 1, top: 1.08, name: 'transmission T' }
+  let inverse = 1
+  let exponent = 0
+  while (greatest * inverse < 0.1) {
+    inverse *= 10
+    exponent++
+  }
+  return {
+    inverse,
+    top: 1.15 * greatest * inverse,
+    name: exponent === 0 ? 'transmission T' : `T in units of 10^\u2212${exponent}`,
+  }
+}

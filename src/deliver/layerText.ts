@@ -1,0 +1,32 @@
+import type { MediumOption } from '../job/index.js'
+import type { MediumChoice } from '../model/index.js'
+import type { LayerReport } from './types.js'
+
+/** Whole monolayers of the layer's own, or null where its width does not count them. */
+export function mlOf(layer: LayerReport): number | null {
+  return layer.resolved.monolayerNm !== null && layer.stepNm === layer.resolved.monolayerNm ? layer.count : null
+}
+
+/** `AlGaAs 0.35`, a name of the user's own, or the potential of media by numbers. */
+export function mediumText(choice: MediumChoice): string {
+  if (choice.kind === 'numbers') return choice.name ?? `${short(choice.potentialEv * 1000)} meV`
+  return choice.x === null ? choice.material : `${choice.material} ${choice.x}`
+}
+
+/** The same for a lead of the job. */
+export function leadText(lead: MediumOption | 'hard wall'): string {
+  if (lead === 'hard wall') return lead
+  if (lead.kind === 'numbers') return lead.name ?? `${short(lead.potentialEv[0] * 1000)} meV`
+  return lead.x === null ? lead.material : `${lead.material} ${lead.x[0]}`
+}
+
+/** `12 ML`, or the width in nm of what has no monolayers. */
+export function widthText(layer: LayerReport): string {
+  const ml = mlOf(layer)
+  return ml === null ? `${short(layer.widthNm)} nm` : `${ml} ML`
+}
+
+/** A number for the eye: four digits, no trailing zeros. */
+export function short(value: number): string {
+  return String(Number(value.toPrecision(4)))
+}

@@ -1,0 +1,144 @@
+import { line } from 'd3-shape'
+import type { Job } from '../job/index.js'
+import { log10, type Pole } from '../wave/index.js'
+import { type DemandFrame, demandLabels, demandRegion, goalMarks } from './demandMarks.js'
+import { type Box, type Frame, frame, roundAxis } from './frame.js'
+import { hatch } from './hatch.js'
+import { fitted, label, signed, textWidth, wrapped } from './label.js'
+import { palette } from './palette.js'
+import type { PictureBody } from './picture.js'
+import { rollUp } from './rollUp.js'
+import { element } from './svg.js'
+import type { Candidate, SpectrumReport } from './types.js'
+
+/** T of every condition over the whole scan, on an axis of decades, with the demands as regions and every resonance marked. */
+export function scanPanel(job: Job, candidate: Candidate, box: Box, key: string): PictureBody {
+  const least = leastLog10T(candidate)
+  const floor = floorOf(job, least)
+  const every = [1, 2, 5, 10, 20, 50].find((step) => -floor / step <= 9) ?? 100
+  const powers = Array.from({ length: Math.floor(-floor / every) + 1 }, (_, i) => ({ value: -i * every, text: '' }))
+  const plot = frame(
+    box,
+    roundAxis('energy above the band edge of the entry (meV)', job.scanEv[0] * 1000, job.scanEv[1] * 1000, 10),
+    { name: 'transmission T', from: floor, to: -0.04 * floor, ticks: powers, powers: true },
+    key,
+  )
+  // A limit of 0 has no decade: it lies below every picture.
+  const marks: DemandFrame = { plot, key, height: (T) => plot.y(T > 0 ? log10(T) : floor - 1) }
+  const captions = captionsOf(job, candidate, least, floor).flatMap((text) => wrapped(text, box.width, 11))
+  return {
+    height: box.height + 44 + captions.length * 15,
+    defs: [plot.defs, hatch(key)],
+    parts: [
+      plot.under,
+      plot.inside(
+        ...job.demands.map((demand) => demandRegion(marks, demand)),
+        ...candidate.resonances.map((pole) => stroke(marks, pole)),
+        ...candidate.spectra.map((spectrum, i) => curve(plot, spectrum, i)),
+        ...job.demands.map((demand) => (demand.kind === 'curve' ? goalMarks(marks, demand) : '')),
+      ),
+      ...(least === null ? [nothingPasses(job, box)] : []),
+      plot.over,
+      ...demandLabels(marks, job.demands),
+      ...conditionLegend(candidate, box),
+      ...captions.map((text, i) =>
+        label(box.left, box.top + box.height + 54 + i * 15, text, { size: 11, fill: palette.quiet }),
+      ),
+    ],
+  }
+}
+
+/** Null when T is zero everywhere. */
+function leastLog10T({ spectra }: Candidate): number | null {
+  let least = Number.POSITIVE_INFINITY
+  for (const { log10T } of spectra)
+    for (const value of log10T) if (Number.isFinite(value)) least = Math.min(least, value)
+  return Number.isFinite(least) ? least : null
+}
+
+/** Where the axis ends below, in whole decades: deep enough for the limits, and not so deep that nothing can be read. */
+function floorOf({ demands }: Job, least: number | null): number {
+  const limits = demands.flatMap((demand) => {
+    if (demand.kind === 'block') return [demand.below]
+    if (demand.kind === 'pass') return [demand.above]
+    return demand.kind === 'curve' ? demand.rows.map(({ T }) => Math.max(T, 1e-30)) : []
+  })
+  const lowest = Math.min(0, ...limits.filter((T) => T > 0).map((T) => log10(T)))
+  return Math.floor(Math.max(Math.min(least ?? 0, lowest - 1, -2), Math.min(-12, lowest - 3)))
+}
+
+/** A resonance: a stroke at the foot, or its whole height where its line would be thinner than a pixel. */
+function stroke({ plot, height }: DemandFrame, { energyEv, widthEv, peakT }: Pole): string {
+  const x = plot.x(energyEv * 1000)
+  const foot = plot.box.top + plot.box.height
+  const needle = plot.x((energyEv + widthEv) * 1000) - x < 1
+  const top = needle ? Math.min(height(peakT), foot - 8) : foot - 8
+  return element('line', { x1: x, y1: top, x2: x, y2: foot, stroke: palette.ink, 'stroke-width': needle ? 0.9 : 1.8 })
+}
+
+function curve(plot: Frame, { energyEv, log10T }: SpectrumReport, condition: number): string {
+  const { left, width } = plot.box
+  const x = energyEv.map((ev) => plot.x(ev * 1000))
+  const path = line<number>(
+    (i) => x[i],
+    (i) => plot.y(log10T[i]),
+  )
+    .defined((i) => Number.isFinite(log10T[i]))
+    .digits(2)
+  const { stroke, dash } = palette.curves[condition % palette.curves.length]
+  return element('path', {
+    d: path(rollUp({ x, y: log10T }, left, left + width, width)) ?? '',
+    ...{ fill: 'none', stroke, 'stroke-width': 1.7, 'stroke-linejoin': 'round', 'stroke-dasharray': dash },
+  })
+}
+
+function nothingPasses(job: Job, box: Box): string {
+  const why = job.stack.exit === 'hard wall' ? ': the exit is a hard wall, all is reflected' : ''
+  return label(box.left + box.width / 2, box.top + box.height / 2, `T = 0 at every energy of the scan${why}.`, {
+    ...{ size: 14, anchor: 'middle', halo: true },
+  })
+}
+
+function captionsOf(
+  { demands }: Job,
+  { spectra, resonances }: Candidate,
+  least: number | null,
+  floor: number,
+): string[] {
+  const captions: string[] = []
+  if (least !== null && least < floor) {
+    captions.push(`T goes down to 10^${signed(Math.floor(least))}; the picture ends at 10^${signed(floor)}.`)
+  }
+  if (least !== null && spectra.some(({ T, log10T }) => T.some((_, i) => !Number.isFinite(log10T[i])))) {
+    captions.push('T = 0 where the line is missing: the wave is forbidden in the exit.')
+  }
+  const kinds = demands.map(({ kind }) => kind)
+  const key = [
+    resonances.length > 0 ? 'Strokes at the foot: resonances' : 'No resonance in the scan',
+    ...(kinds.includes('peak') ? ['green: window of a peak'] : []),
+    ...(kinds.includes('block') || kinds.includes('pass') ? ['hatched: where T must not be'] : []),
+    ...(kinds.includes('curve') ? ['marks: the goal'] : []),
+  ]
+  captions.push(`${key.join('; ')}.`)
+  return captions
+}
+
+/** Names of the conditions at the top right corner, above the frame; a job with one condition needs none. */
+function conditionLegend({ spectra }: Candidate, box: Box): string[] {
+  if (spectra.length < 2) return []
+  let right = box.left + box.width
+  return spectra
+    .map(({ condition }, i) => ({ text: fitted(condition, 120, 11), look: palette.curves[i % palette.curves.length] }))
+    .reverse()
+    .flatMap(({ text, look }) => {
+      const from = right - textWidth(text, 11)
+      right = from - 46
+      return [
+        label(from, box.top + box.height + 36, text, { size: 11 }),
+        element('line', {
+          ...{ x1: from - 32, x2: from - 5, y1: box.top + box.height + 32, y2: box.top + box.height + 32 },
+          ...{ stroke: look.stroke, 'stroke-width': 2, 'stroke-dasharray': look.dash },
+        }),
+      ]
+    })
+}
