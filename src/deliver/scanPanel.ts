@@ -1,10 +1,11 @@
 import { line } from 'd3-shape'
 import type { Job } from '../job/index.js'
 import { log10, type Pole } from '../wave/index.js'
+import { conditionLegend } from './conditionLegend.js'
 import { type DemandFrame, demandLabels, demandRegion, goalMarks } from './demandMarks.js'
 import { type Box, type Frame, frame, roundAxis } from './frame.js'
 import { hatch } from './hatch.js'
-import { fitted, label, signed, textWidth, wrapped } from './label.js'
+import { label, signed, wrapped } from './label.js'
 import { palette } from './palette.js'
 import type { PictureBody } from './picture.js'
 import { rollUp } from './rollUp.js'
@@ -26,8 +27,10 @@ export function scanPanel(job: Job, candidate: Candidate, box: Box, key: string)
   // A limit of 0 has no decade: it lies below every picture.
   const marks: DemandFrame = { plot, key, height: (T) => plot.y(T > 0 ? log10(T) : floor - 1) }
   const captions = captionsOf(job, candidate, least, floor).flatMap((text) => wrapped(text, box.width, 11))
+  const foot = box.top + box.height + 54
+  const legend = conditionLegend(candidate.spectra, box, foot + captions.length * 15)
   return {
-    height: box.height + 44 + captions.length * 15,
+    height: box.height + 44 + captions.length * 15 + legend.height,
     defs: [plot.defs, hatch(key)],
     parts: [
       plot.under,
@@ -40,10 +43,8 @@ export function scanPanel(job: Job, candidate: Candidate, box: Box, key: string)
       ...(least === null ? [nothingPasses(job, box)] : []),
       plot.over,
       ...demandLabels(marks, job.demands),
-      ...conditionLegend(candidate, box),
-      ...captions.map((text, i) =>
-        label(box.left, box.top + box.height + 54 + i * 15, text, { size: 11, fill: palette.quiet }),
-      ),
+      ...legend.parts,
+      ...captions.map((text, i) => label(box.left, foot + i * 15, text, { size: 11, fill: palette.quiet })),
     ],
   }
 }
@@ -121,24 +122,4 @@ function captionsOf(
   ]
   captions.push(`${key.join('; ')}.`)
   return captions
-}
-
-/** Names of the conditions at the top right corner, above the frame; a job with one condition needs none. */
-function conditionLegend({ spectra }: Candidate, box: Box): string[] {
-  if (spectra.length < 2) return []
-  let right = box.left + box.width
-  return spectra
-    .map(({ condition }, i) => ({ text: fitted(condition, 120, 11), look: palette.curves[i % palette.curves.length] }))
-    .reverse()
-    .flatMap(({ text, look }) => {
-      const from = right - textWidth(text, 11)
-      right = from - 46
-      return [
-        label(from, box.top + box.height + 36, text, { size: 11 }),
-        element('line', {
-          ...{ x1: from - 32, x2: from - 5, y1: box.top + box.height + 32, y2: box.top + box.height + 32 },
-          ...{ stroke: look.stroke, 'stroke-width': 2, 'stroke-dasharray': look.dash },
-        }),
-      ]
-    })
 }
