@@ -19,9 +19,9 @@ export function demandRegion({ plot, height, key }: DemandFrame, demand: Demand)
   // One pixel more than the box, so that only the inner edge shows as a line.
   const top = plot.box.top - 2
   const bottom = plot.box.top + plot.box.height + 2
-  const [from, to] = rangeEv(demand)
-  const left = plot.x(from * 1000)
-  const right = plot.x(to * 1000)
+  const across = spanInside(plot, rangeEv(demand))
+  if (across === null) return ''
+  const { left, right } = across
   if (demand.kind === 'block') return forbidden({ left, right, top, bottom: height(demand.below) }, 'bottom', key)
   if (demand.kind === 'pass') return forbidden({ left, right, top: height(demand.above), bottom }, 'top', key)
   const width = Math.max(right - left, 2)
@@ -31,6 +31,19 @@ export function demandRegion({ plot, height, key }: DemandFrame, demand: Demand)
   })
 }
 
+/**
+ * A range of energies in pixels, cut a little outside of the plot; null when all of it is elsewhere. (Drawing it in full and leaving the cut to
+ * the clip path goes wrong where a plot magnifies a million times: viewers overflow.)
+ */
+export function spanInside(
+  { box, x }: Frame,
+  [fromEv, toEv]: readonly [number, number],
+): { left: number; right: number } | null {
+  const [least, most] = [box.left - 2, box.left + box.width + 2]
+  const [left, right] = [x(fromEv * 1000), x(toEv * 1000)]
+  return right < least || left > most ? null : { left: Math.max(left, least), right: Math.min(right, most) }
+}
+
 /** Rows of a curve demand that are drawn at most. */
 const mostGoals = 150
 
@@ -38,7 +51,7 @@ const mostGoals = 150
 export function goalMarks({ plot, height }: DemandFrame, { rows }: CurveDemand): string {
   const every = Math.ceil(rows.length / mostGoals)
   const marks = rows
-    .filter(({ T }, i) => i % every === 0 && T > 0)
+    .filter(({ T, energyEv }, i) => i % every === 0 && T > 0 && spanInside(plot, [energyEv, energyEv]) !== null)
     .map(({ energyEv, T, sense }) => {
       const x = plot.x(energyEv * 1000)
       const y = height(T)

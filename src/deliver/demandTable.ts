@@ -1,7 +1,7 @@
 import type { Demand, Job } from '../job/index.js'
 import type { DemandResult } from '../target/index.js'
-import { fitted, label, wrapped } from './label.js'
-import { short } from './layerText.js'
+import { fitted, label, textWidth, wrapped } from './label.js'
+import { energyText, short } from './layerText.js'
 import { palette } from './palette.js'
 import type { PictureBody } from './picture.js'
 import { element } from './svg.js'
@@ -36,7 +36,9 @@ export function factLines({ growth }: Job, candidate: Candidate): string[] {
   const { evaluation, margin, yield: grown, limitingDemand, worstLayer, worstShiftEv } = candidate
   const assumed = growth.assumed ? ', assumed growth errors' : ''
   const lines = [
-    `Merit ${short(evaluation.merit)} (0: all limits are met)${margin === null ? '' : `, margin ${short(margin)}`}.`,
+    evaluation.met
+      ? `All limits are met.${margin === null ? '' : ` Margin ${short(margin)} standard deviations.`}`
+      : `Merit ${short(evaluation.merit)}; 0 would meet all limits.`,
   ]
   if (grown !== null) {
     const interval = `${short(grown.lowPct)} to ${short(grown.highPct)} %`
@@ -45,7 +47,7 @@ export function factLines({ growth }: Job, candidate: Candidate): string[] {
   if (limitingDemand !== null) lines.push(`Fails most often: ${limitingDemand}.`)
   if (worstLayer !== null && worstShiftEv !== null) {
     lines.push(
-      `Most sensitive: ${worstLayer}, ${short(worstShiftEv * 1000).replace('-', '\u2212')} meV for one standard deviation.`,
+      `Most sensitive: ${worstLayer}, ${short(worstShiftEv * 1000).replace('-', '\u2212')} meV for one deviation of its width.`,
     )
   }
   return lines
@@ -57,7 +59,8 @@ export function demandTable(
   facts: readonly string[],
   { left, top, width }: { left: number; top: number; width: number },
 ): PictureBody {
-  const columns = { id: left, wanted: left + 64, reached: left + 205, state: left + width }
+  const idWidth = Math.min(100, Math.max(textWidth('demand', 11.5), ...rows.map(({ id }) => textWidth(id, 11.5))))
+  const columns = { id: left, wanted: left + idWidth + 8, reached: left + idWidth + 150, state: left + width }
   const shown = rows.slice(0, mostRows)
   const head = { bold: true, size: 11, fill: palette.quiet }
   const parts = [
@@ -68,9 +71,13 @@ export function demandTable(
   ]
   let y = top + 21
   for (const { id, wanted, reached, state } of shown) {
-    if (id !== '') parts.push(label(columns.id, y, fitted(id, 60, 11.5), { size: 11.5, bold: true }))
+    if (id !== '') parts.push(label(columns.id, y, fitted(id, idWidth, 11.5), { size: 11.5, bold: true }))
     parts.push(label(columns.wanted, y, fitted(wanted, 138, 11.5), { size: 11.5 }))
-    parts.push(label(columns.reached, y, fitted(reached, width - 205 - (state === '' ? 0 : 48), 11.5), { size: 11.5 }))
+    parts.push(
+      label(columns.reached, y, fitted(reached, columns.state - columns.reached - (state === '' ? 0 : 50), 11.5), {
+        size: 11.5,
+      }),
+    )
     if (state !== '') {
       const fill = { met: palette.wanted, missed: palette.forbidden, goal: palette.quiet }[state]
       parts.push(label(columns.state, y, state, { size: 11.5, anchor: 'end', bold: true, fill }))
@@ -100,22 +107,23 @@ function partsOf(demand: Demand, result: DemandResult | undefined): [Part, ...Pa
   if (demand.kind !== 'peak') {
     const [from, to] = [demand.pointsEv[0], demand.pointsEv[demand.pointsEv.length - 1]].map(meVText)
     const limit = demand.kind === 'block' ? `T \u2264 ${short(demand.below)}` : `T \u2265 ${short(demand.above)}`
-    const where = result === undefined || result.extremeEv === null ? '' : ` at ${meVText(result.extremeEv)} meV`
+    const extreme = result?.extremeEv ?? null
     return [
       { wanted: `${demand.kind} ${from}..${to} meV`, reached: reached === null ? '' : `T = ${short(reached)}` },
-      { wanted: limit, reached: where.trim() },
+      { wanted: limit, reached: extreme === null ? '' : `at ${meVText(extreme)} meV` },
     ]
   }
   const peak = result?.peak ?? null
   const parts: Part[] = []
   if (demand.fwhmEv !== null) {
     const [least, most] = demand.fwhmEv.map(meVText)
-    parts.push({ wanted: `fwhm ${least}..${most} meV`, reached: peak === null ? '' : `${meVText(peak.fwhmEv)} meV` })
+    parts.push({ wanted: `fwhm ${least}..${most} meV`, reached: peak === null ? '' : energyText(peak.fwhmEv) })
   }
   if (demand.height !== null)
     parts.push({ wanted: `height ${short(demand.height)}`, reached: peak === null ? '' : short(peak.T) })
+  const nothing = result === undefined ? '' : 'no maximum'
   const place = `peak ${meVText(demand.energyEv)} \u00b1 ${meVText(demand.withinEv)} meV`
-  return [{ wanted: place, reached: reached === null ? 'no maximum' : `${meVText(reached)} meV` }, ...parts]
+  return [{ wanted: place, reached: reached === null ? nothing : `${meVText(reached)} meV` }, ...parts]
 }
 
 function meVText(ev: number): string {

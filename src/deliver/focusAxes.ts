@@ -38,6 +38,6 @@ export function heightUnit(greatest: number): { inverse: number; top: number; na
   return {
     inverse,
     top: 1.15 * greatest * inverse,
-    name: exponent === 0 ? 'transmission T' : `T in units of 10^\u2212${exponent}`,
+    name: exponent === 0 ? 'transmission T' : `T in units of 1e-${exponent}`,
   }
 }

@@ -1,13 +1,13 @@
 import { line } from 'd3-shape'
 import type { Job } from '../job/index.js'
 import type { PeakFigures } from '../target/index.js'
-import { type DemandFrame, demandRegion, goalMarks } from './demandMarks.js'
+import { type DemandFrame, demandRegion, goalMarks, rangeEv, spanInside } from './demandMarks.js'
 import { energyAxis, heightUnit } from './focusAxes.js'
 import { focusRange } from './focusRange.js'
 import { type Box, type Frame, frame, roundAxis } from './frame.js'
 import { hatch } from './hatch.js'
 import { label, textWidth, wrapped } from './label.js'
-import { short } from './layerText.js'
+import { energyText, short } from './layerText.js'
 import { palette } from './palette.js'
 import type { PictureBody } from './picture.js'
 import { type Curve, rollUp } from './rollUp.js'
@@ -21,9 +21,13 @@ export function focusPanel(job: Job, candidate: Candidate, box: Box, key: string
   if (range === null) return sentence('No maximum of T: there is no peak to show.', box)
   const [from, to] = range
   const curves = candidate.spectra.map((spectrum, i) => piece(spectrum, range, i === 0 ? peak : null, box.width))
-  const greatest = Math.max(...curves.flatMap(({ y }) => Array.from(y)), ...wantedHeights(job, range))
+  const highest = Math.max(0, ...curves.flatMap(({ y }) => Array.from(y)))
+  const wanted = Math.max(0, ...wantedHeights(job, range))
+  // Where hardly anything passes, an axis up to what was wanted would show a flat line.
+  const tooLow = highest < 0.05 * wanted
+  const greatest = tooLow ? highest : Math.max(highest, wanted)
   if (curves[0].x.length < 5 || !(greatest > 1e-300)) {
-    const what = peak === null ? 'The pass range' : `The peak at ${short(peak.energyEv * 1000)} meV`
+    const what = peak === null ? 'The pass range' : `The peak at ${energyText(peak.energyEv)}`
     return sentence(`${what} lies outside of the scan, is too narrow or too low to draw.`, box)
   }
   const unit = heightUnit(greatest)
@@ -47,6 +51,7 @@ export function focusPanel(job: Job, candidate: Candidate, box: Box, key: string
         ...(marked === null ? [] : peakMarks(marked, (ev) => plot.x(at(ev)), marks)),
       ),
       plot.over,
+      ...(tooLow ? [label(box.left + 6, box.top + 15, `wanted: ${short(wanted)}`, { size: 11, halo: true })] : []),
     ],
   }
 }
@@ -100,10 +105,18 @@ function heightLines(job: Job, { plot, height }: DemandFrame): string[] {
   return job.demands.flatMap((demand) => {
     if (demand.kind !== 'peak' || demand.height === null) return []
     const y = height(demand.height)
-    const x1 = plot.x((demand.energyEv - demand.withinEv) * 1000)
-    const x2 = plot.x((demand.energyEv + demand.withinEv) * 1000)
+    const across = spanInside(plot, rangeEv(demand))
+    if (across === null) return []
     return [
-      element('line', { x1, y1: y, x2, y2: y, stroke: palette.wanted, 'stroke-width': 1.8, 'stroke-dasharray': '6 4' }),
+      element('line', {
+        x1: across.left,
+        y1: y,
+        x2: across.right,
+        y2: y,
+        stroke: palette.wanted,
+        'stroke-width': 1.8,
+        'stroke-dasharray': '6 4',
+      }),
     ]
   })
 }
@@ -117,7 +130,7 @@ function peakMarks(
   const { left, width } = marks.plot.box
   const y = marks.height(T / 2)
   const [x1, x2] = [across(lowEv), across(highEv)]
-  const text = `${short(fwhmEv * 1000)} meV`
+  const text = energyText(fwhmEv)
   const room = textWidth(text, 11) + 10
   const end = (x: number) => element('line', { x1: x, y1: y - 5, x2: x, y2: y + 5 })
   const bar = element(

@@ -26,6 +26,19 @@ export function widthText(layer: LayerReport): string {
   return ml === null ? `${short(layer.widthNm)} nm` : `${ml} ML`
 }
 
+/** `79.87 meV`, `20 neV`: four digits in the unit that keeps them near the point. */
+export function energyText(ev: number): string {
+  const [name, perEv] = energyUnits.find(([, per]) => Math.abs(ev) * per >= 0.1) ?? energyUnits[0]
+  return `${short(ev * perEv)} ${name}`
+}
+
+const energyUnits: readonly [name: string, perEv: number][] = [
+  ['meV', 1e3],
+  ['\u00b5eV', 1e6],
+  ['neV', 1e9],
+  ['peV', 1e12],
+]
+
 /** A number for the eye: four digits, no trailing zeros. */
 export function short(value: number): string {
   return String(Number(value.toPrecision(4)))

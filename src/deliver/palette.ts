@@ -10,9 +10,9 @@ export const palette = {
   /** T of the conditions, in their order; the dash goes with the colour. */
   curves: [
     { stroke: '#12467f', dash: undefined },
-    { stroke: '#c2571a', dash: '7 3' },
-    { stroke: '#6f8f1f', dash: '2 3' },
-    { stroke: '#8a4a9e', dash: '9 3 2 3' },
+    { stroke: '#8a3f9c', dash: '7 3' },
+    { stroke: '#a8780a', dash: '2 3' },
+    { stroke: '#4a4a4a', dash: '9 3 2 3' },
   ],
   forbidden: '#b8431f',
   wanted: '#0f7f6f',

@@ -1,6 +1,7 @@
 import type { Job } from '../job/index.js'
 import { cautions } from './cautions.js'
 import { fitted, label, wrapped } from './label.js'
+import { short } from './layerText.js'
 import { palette } from './palette.js'
 import { svgDocument } from './svg.js'
 import type { Candidate } from './types.js'
@@ -45,7 +46,7 @@ export function picture(
   const lines = [
     ...candidate.notes.flatMap((note) => wrapped(`Note: ${note}`, textSpan, 11, 3)),
     ...cautions(job.kind).flatMap((line) => wrapped(line, textSpan, 11)),
-    `Stack ${candidate.id}`,
+    `Stack ${candidate.id}${operatingPoint(job)}.`,
   ]
   const footTop = top + body.height + 14
   const foot = lines.map((line, i) => label(margin, footTop + i * lineHeight, line, { size: 11, fill: palette.quiet }))
@@ -61,4 +62,11 @@ export function picture(
     body.defs,
     [...head, ...body.parts, ...foot],
   )
+}
+
+/** The temperature and bias of a job that has one condition; several are named in the picture itself. */
+function operatingPoint({ conditions }: Job): string {
+  if (conditions.length !== 1) return ''
+  const [{ temperatureK, biasV }] = conditions
+  return ` at ${short(temperatureK)} K${biasV === 0 ? '' : `, bias ${short(biasV * 1000)} mV`}`
 }

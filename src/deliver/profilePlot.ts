@@ -38,7 +38,7 @@ function body(job: Job, candidate: Candidate, top: number, key: string): Picture
   )
   const foot = directionLines(job, box.top + height + 58)
   return {
-    height: labels.height + height + 8 + 58 + 30,
+    height: labels.height + height + 8 + 58 + 38,
     defs: [plot.defs, hatch(key)],
     parts: [
       plot.under,

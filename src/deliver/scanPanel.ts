@@ -5,7 +5,7 @@ import { conditionLegend } from './conditionLegend.js'
 import { type DemandFrame, demandLabels, demandRegion, goalMarks } from './demandMarks.js'
 import { type Box, type Frame, frame, roundAxis } from './frame.js'
 import { hatch } from './hatch.js'
-import { label, signed, wrapped } from './label.js'
+import { label, wrapped } from './label.js'
 import { palette } from './palette.js'
 import type { PictureBody } from './picture.js'
 import { rollUp } from './rollUp.js'
@@ -62,7 +62,7 @@ function floorOf({ demands }: Job, least: number | null): number {
   const limits = demands.flatMap((demand) => {
     if (demand.kind === 'block') return [demand.below]
     if (demand.kind === 'pass') return [demand.above]
-    return demand.kind === 'curve' ? demand.rows.map(({ T }) => Math.max(T, 1e-30)) : []
+    return demand.kind === 'curve' ? demand.rows.filter(({ T }) => T > 0).map(({ T }) => Math.max(T, 1e-30)) : []
   })
   const lowest = Math.min(0, ...limits.filter((T) => T > 0).map((T) => log10(T)))
   return Math.floor(Math.max(Math.min(least ?? 0, lowest - 1, -2), Math.min(-12, lowest - 3)))
@@ -108,7 +108,7 @@ function captionsOf(
 ): string[] {
   const captions: string[] = []
   if (least !== null && least < floor) {
-    captions.push(`T goes down to 10^${signed(Math.floor(least))}; the picture ends at 10^${signed(floor)}.`)
+    captions.push(`T goes down to 1e${Math.floor(least)}; the picture ends at 1e${floor}.`)
   }
   if (least !== null && spectra.some(({ T, log10T }) => T.some((_, i) => !Number.isFinite(log10T[i])))) {
     captions.push('T = 0 where the line is missing: the wave is forbidden in the exit.')

@@ -1,7 +1,7 @@
 import type { Job } from '../job/index.js'
 import { demandRows, demandTable, factLines } from './demandTable.js'
 import { focusPanel } from './focusPanel.js'
-import { short } from './layerText.js'
+import { energyText, short } from './layerText.js'
 import { picture, pictureWidth } from './picture.js'
 import { scanPanel } from './scanPanel.js'
 import type { Candidate } from './types.js'
@@ -20,11 +20,11 @@ export function transmissionPlot(job: Job, candidate: Candidate): string {
       `${key}-scan`,
     )
     const below = top + 24 + scan.height
-    const focus = focusPanel(job, candidate, { left: 80, top: below + 26, width: 280, height: 200 }, `${key}-focus`)
+    const focus = focusPanel(job, candidate, { left: 80, top: below + 26, width: 250, height: 200 }, `${key}-focus`)
     const table = demandTable(rows, factLines(job, candidate), {
-      left: 392,
+      left: 356,
       top: below + 22,
-      width: pictureWidth - 392 - 20,
+      width: pictureWidth - 356 - 20,
     })
     return {
       height: 24 + scan.height + Math.max(26 + focus.height, 22 + table.height),
@@ -47,7 +47,7 @@ function description(job: Job, candidate: Candidate): string {
     `Transmission from ${short(from * 1000)} to ${short(to * 1000)} meV above the band edge of the entry.`,
     peak === null
       ? 'There is no maximum.'
-      : `Peak at ${short(peak.energyEv * 1000)} meV, ${short(peak.fwhmEv * 1000)} meV wide, T = ${short(peak.T)}.`,
+      : `Peak at ${energyText(peak.energyEv)}, ${energyText(peak.fwhmEv)} wide, T = ${short(peak.T)}.`,
     `Demands: ${demands}`,
   ].join(' ')
 }
