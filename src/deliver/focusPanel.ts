@@ -18,7 +18,8 @@ import type { Candidate, SpectrumReport } from './types.js'
 export function focusPanel(job: Job, candidate: Candidate, box: Box, key: string): PictureBody {
   const { peak } = candidate.evaluation
   const range = focusRange(job, peak)
-  if (range === null) return sentence('No maximum of T: there is no peak to show.', box)
+  if (range === null)
+    return sentence(peak === null ? 'No maximum of T: there is no peak to show.' : tooNarrow(peak), box)
   const [from, to] = range
   const curves = candidate.spectra.map((spectrum, i) => piece(spectrum, range, i === 0 ? peak : null, box.width))
   const highest = Math.max(0, ...curves.flatMap(({ y }) => Array.from(y)))
@@ -28,7 +29,7 @@ export function focusPanel(job: Job, candidate: Candidate, box: Box, key: string
   const greatest = tooLow ? highest : Math.max(highest, wanted)
   if (curves[0].x.length < 5 || !(greatest > 1e-300)) {
     const what = peak === null ? 'The pass range' : `The peak at ${energyText(peak.energyEv)}`
-    return sentence(`${what} lies outside of the scan, is too narrow or too low to draw.`, box)
+    return sentence(`${what} lies outside of the scan, or is too low to draw.`, box)
   }
   const unit = heightUnit(greatest)
   const { axis, at } = energyAxis(from, to, peak)
@@ -146,6 +147,10 @@ function peakMarks(
       ? [label(beside ? x2 + 7 : x1 - 7, y + 4, text, { size: 11, anchor: beside ? 'start' : 'end', halo: true })]
       : []
   return [bar, element('circle', { cx: across(energyEv), cy: marks.height(T), r: 3, fill: palette.ink }), ...name]
+}
+
+function tooNarrow({ energyEv, fwhmEv }: PeakFigures): string {
+  return `The peak at ${energyText(energyEv)} is ${energyText(fwhmEv)} wide: too narrow to draw.`
 }
 
 function sentence(text: string, { left, top, width }: Box): PictureBody {

@@ -4,7 +4,8 @@ import { rangeEv } from './demandMarks.js'
 
 /**
  * The energies (eV) worth a look on a linear scale: the pass ranges of the job with some room beside them, else the peak with three of
- * its widths on either side, and its window where that is not much wider. Null when there is neither.
+ * its widths on either side, and its window where that is not much wider. Null when there is neither, or the peak is
+ * too narrow to have a shape in doubles.
  */
 export function focusRange(job: Job, peak: PeakFigures | null): [number, number] | null {
   const passes = job.demands.filter(({ kind }) => kind === 'pass').map(rangeEv)
@@ -15,7 +16,8 @@ export function focusRange(job: Job, peak: PeakFigures | null): [number, number]
     const room = to > from ? 0.35 * (to - from) : 0.02 * (job.scanEv[1] - job.scanEv[0])
     return within(job, from - room, to + room)
   }
-  if (peak === null || !(peak.fwhmEv > 0)) return null
+  // A line of a few spacings of doubles has no shape that could be drawn.
+  if (peak === null || !(peak.fwhmEv > 1e-13 * Math.abs(peak.energyEv))) return null
   const windows = job.demands.filter(({ kind }) => kind === 'peak').map(rangeEv)
   const reaches = windows.map(([a, b]) => 1.1 * Math.max(Math.abs(peak.energyEv - a), Math.abs(b - peak.energyEv)))
   const half = Math.max(3 * peak.fwhmEv, ...reaches.filter((reach) => reach <= 8 * peak.fwhmEv))
