@@ -76,8 +76,8 @@ class ElectronMedia implements WaveMedia {
       const above = re - this.potential[m]
       const massRe = mass * (1 + alpha * above)
       const massIm = mass * alpha * im
-      out.qRe[m] = (massRe * above - massIm * im) / hbar2Over2m0 - this.inPlane2
-      out.qIm[m] = (massRe * im + massIm * above) / hbar2Over2m0
+      out.qRe[m] = (massRe / hbar2Over2m0) * above - (massIm / hbar2Over2m0) * im - this.inPlane2
+      out.qIm[m] = (massRe / hbar2Over2m0) * im + (massIm / hbar2Over2m0) * above
       out.muRe[m] = massRe
       out.muIm[m] = massIm
       out.dqRe[m] = (mass / hbar2Over2m0) * (1 + 2 * alpha * above)

@@ -1,0 +1,64 @@
+import { type MediaTable, type Side, spectrumInto, type WaveStack } from '../wave/index.js'
+import { energiesOf } from './energiesOf.js'
+import { StackError } from './StackError.js'
+import { systemOf } from './systemOf.js'
+import type { ElectronStack, LightStack } from './types.js'
+
+export interface SpectrumOptions {
+  /** Where the wave comes from; for light the angle is that in this medium. */
+  readonly from?: Side
+}
+
+/** One number a point, in the order of the points. */
+export interface Spectrum {
+  readonly T: Float64Array
+  readonly R: Float64Array
+  /** -Infinity where T = 0; finite where T itself is too small for a double. */
+  readonly log10T: Float64Array
+  /** Largest abs(T + R + A - 1). */
+  readonly fluxError: number
+}
+
+/** A stack and its points, checked and laid out once, for many calls of spectrumInto(table, stack, out, from). */
+export interface PreparedSpectrum {
+  readonly table: MediaTable
+  /** Its widths may be changed between calls. */
+  readonly stack: WaveStack
+  readonly from: Side
+}
+
+/**
+ * Transmission and reflection of a stack at `points`: electron energies in eV, for light vacuum wavelengths in nm, in any order.
+ * Throws StackError, naming the number, for a negative or non-finite width, a non-finite number, a point at or below the edge of
+ * the side that the wave comes from, a wave from the side of a hard wall, absorption on that side, an angle of 90 degrees or
+ * more, and an electron energy at which the one-band picture fails.
+ */
+export function spectrum(
+  stack: ElectronStack | LightStack,
+  points: ArrayLike<number>,
+  options: SpectrumOptions = {},
+): Spectrum {
+  const { table, stack: waves, from } = prepareSpectrum(stack, points, options)
+  const row = () => new Float64Array(points.length).fill(Number.NaN)
+  const out = { T: row(), R: row(), log10T: row() }
+  return { ...out, fluxError: spectrumInto(table, waves, out, from) }
+}
+
+/** Checks as spectrum does; see there for what it throws. */
+export function prepareSpectrum(
+  stack: ElectronStack | LightStack,
+  points: ArrayLike<number>,
+  { from = 'entry' }: SpectrumOptions = {},
+): PreparedSpectrum {
+  const { media, stack: waves } = systemOf(stack, from)
+  const energies = energiesOf(stack, points, from)
+  if (!media.lossless) {
+    throw new StackError(
+      'A layer or lead has an extinction: spectra of absorbing stacks are not computed yet. Leave it out.',
+    )
+  }
+  const row = () => new Float64Array(media.count * energies.length).fill(Number.NaN)
+  const table = { count: media.count, points: energies.length, q: row(), mu: row() }
+  media.fill(energies, table)
+  return { table, stack: waves, from }
+}

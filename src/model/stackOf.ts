@@ -1,0 +1,54 @@
+import type { Condition, Job, LayerRow } from '../job/index.js'
+import { resolveMedium } from './resolveMedium.js'
+import { StackError } from './StackError.js'
+import { situationOf } from './situationOf.js'
+import type { ElectronStack, LightStack, MediumChoice, Situation } from './types.js'
+
+/**
+ * A stack of rows, entry to exit, at a condition of a job: its leads, temperature, strain and mass model. A width is the count
+ * of the layer's own monolayers where the row has one, else the nm as written. Without `condition` the job's only one, or its
+ * first. Throws StackError for a condition that the job has not, and for a count and a width that contradict each other.
+ */
+export function stackOf(job: Job, rows: readonly LayerRow[], condition?: string): ElectronStack | LightStack {
+  const situation = situationOf(job, conditionOf(job, condition))
+  const { entry, exit, inPlaneKPerNm } = situation
+  return {
+    kind: 'electron',
+    entry: resolveMedium(entry, situation).region,
+    layers: rows.map((row) => layerOf(row, situation)),
+    exit: exit === 'hard wall' ? exit : resolveMedium(exit, situation).region,
+    inPlaneKPerNm,
+  }
+}
+
+function conditionOf({ conditions }: Job, name: string | undefined): Condition {
+  const found = name === undefined ? conditions[0] : conditions.find((condition) => condition.name === name)
+  if (found) return found
+  const names = conditions.map((condition) => `"${condition.name}"`).join(', ')
+  throw new StackError(`The job has no condition "${name}". It has ${names}.`)
+}
+
+function layerOf(row: LayerRow, situation: Situation): ElectronStack['layers'][number] {
+  const choice: MediumChoice = row.medium
+  const { region, monolayerNm } = resolveMedium(choice, situation)
+  return { ...region, widthNm: widthOf(row, monolayerNm) }
+}
+
+function widthOf({ where, ml, widthNm }: LayerRow, monolayerNm: number | null): number {
+  if (ml === null) {
+    if (widthNm === null) throw new StackError(`${where}  The layer has neither ml nor width_nm. Give one of them.`)
+    return widthNm
+  }
+  if (monolayerNm === null)
+    throw new StackError(`${where}  ml is ${ml}, but a medium given by numbers has no monolayer.`)
+  const counted = ml * monolayerNm
+  if (widthNm !== null && !(Math.abs(widthNm - counted) <= agreement * counted)) {
+    throw new StackError(
+      `${where}  ml is ${ml}, which is ${counted} nm of this layer, but width_nm is ${widthNm}. Leave one of the two empty.`,
+    )
+  }
+  return counted
+}
+
+/** Relative: a table rounded to six digits still agrees with its own count. */
+const agreement = 1e-5
