@@ -7,6 +7,8 @@ export {
   type PreparedSpectrum,
   prepareSpectrum,
   type Region,
+  type ResonanceList,
+  resonances,
   type Spectrum,
   type SpectrumOptions,
   StackError,
