@@ -1,5 +1,5 @@
 import type { WaveSystem } from '../wave/index.js'
-import { electronSystem } from './electronSystem.js'
+import { systemOfRegions } from './electronSystem.js'
 import { resolveMedium } from './resolveMedium.js'
 import type { MediumChoice, Situation } from './types.js'
 
@@ -12,10 +12,13 @@ export function buildSystem(
   layers: readonly { readonly choice: MediumChoice; readonly widthNm: number }[],
 ): WaveSystem {
   const { entry, exit, inPlaneKPerNm } = situation
-  return electronSystem({
-    entry: resolveMedium(entry, situation).region,
-    layers: layers.map(({ choice, widthNm }) => ({ ...resolveMedium(choice, situation).region, widthNm })),
-    exit: exit === 'hard wall' ? exit : resolveMedium(exit, situation).region,
+  const widths = new Float64Array(layers.length)
+  for (let i = 0; i < widths.length; i++) widths[i] = layers[i].widthNm
+  return systemOfRegions(
+    resolveMedium(entry, situation).region,
+    layers.map(({ choice }) => resolveMedium(choice, situation).region),
+    widths,
+    exit === 'hard wall' ? exit : resolveMedium(exit, situation).region,
     inPlaneKPerNm,
-  })
+  )
 }

@@ -26,10 +26,16 @@ class ElectronMedia implements WaveMedia {
   private readonly inPlane2: number
 
   constructor(regions: readonly Region[], inPlaneKPerNm: number) {
-    this.count = regions.length
-    this.potential = Float64Array.from(regions, (region) => region.potentialEv)
-    this.mass = Float64Array.from(regions, (region) => region.massRel)
-    this.alpha = Float64Array.from(regions, (region) => region.alphaPerEv ?? 0)
+    const count = regions.length
+    this.count = count
+    this.potential = new Float64Array(count)
+    this.mass = new Float64Array(count)
+    this.alpha = new Float64Array(count)
+    for (let m = 0; m < count; m++) {
+      this.potential[m] = regions[m].potentialEv
+      this.mass[m] = regions[m].massRel
+      this.alpha[m] = regions[m].alphaPerEv ?? 0
+    }
     this.inPlane2 = inPlaneKPerNm * inPlaneKPerNm
   }
 
