@@ -40,7 +40,13 @@ type Column = (typeof known)[number]
  * from entry to exit: in the order of `no` where there is one, else as they stand. Throws LayersError that holds every problem.
  */
 export async function readLayers(path: string): Promise<LayerRow[]> {
-  return parseLayers(await readFile(path, 'utf8'), path)
+  let text: string
+  try {
+    text = await readFile(path, 'utf8')
+  } catch (error) {
+    throw new LayersError([`${path}  The file can't be read: ${(error as Error).message}`])
+  }
+  return parseLayers(text, path)
 }
 
 /** The same from text; `file` only names it in messages. */

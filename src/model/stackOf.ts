@@ -7,9 +7,10 @@ import type { ElectronStack, LightStack, MediumChoice, Situation } from './types
 /**
  * A stack of rows, entry to exit, at a condition of a job: its leads, temperature, strain and mass model. A width is the count
  * of the layer's own monolayers where the row has one, else the nm as written. Without `condition` the job's only one, or its
- * first. Throws StackError for a condition that the job has not, and for a count and a width that contradict each other.
+ * first. Throws StackError for a job of light, a condition that the job has not, and for a count and a width that contradict each other.
  */
 export function stackOf(job: Job, rows: readonly LayerRow[], condition?: string): ElectronStack | LightStack {
+  if (job.kind !== 'electron') throw new StackError(`The job is of kind ${job.kind}: its stacks are not computed yet.`)
   const situation = situationOf(job, conditionOf(job, condition))
   const { entry, exit, inPlaneKPerNm } = situation
   return {

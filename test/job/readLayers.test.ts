@@ -65,6 +65,10 @@ describe('readLayers', () => {
     }
   })
 
+  test('a file that is not there is told by its name', async () => {
+    await expect(readLayers('no-such.csv')).rejects.toThrow("no-such.csv  The file can't be read: ENOENT")
+  })
+
   test.each([
     ['', 'own.csv:1  The file is empty'],
     ['material,x,ml\n', 'own.csv:1  There is a header and no layer'],

@@ -24,7 +24,7 @@ function job(stack: Partial<Job['stack']> = {}, startsAt: 'entry' | 'exit' = 'ex
     strainedTo: null,
     ...stack,
   }
-  return { conditions, stack: whole, growth: { startsAt } } as unknown as Job
+  return { kind: 'electron', conditions, stack: whole, growth: { startsAt } } as unknown as Job
 }
 
 const rows = parseLayers('material,x,ml\nAlGaAs,0.35,12\nGaAs,,18\nAlGaAs,0.35,12\n', 'layers.csv')
@@ -111,6 +111,11 @@ describe('stackOf', () => {
     expect(stackOf(both, rows, 'hot')).toEqual(stackOf(job({}, 'exit', [hot]), rows))
     expect(stackOf(both, rows)).toEqual(stackOf(job(), rows))
     expect(() => stackOf(both, rows, 'warm')).toThrow('The job has no condition "warm". It has "cold", "hot".')
+  })
+
+  test('a bias and a job of light are refused, never passed over', () => {
+    expect(() => stackOf(job({}, 'exit', [{ ...cold, biasV: 0.1 }]), rows)).toThrow('Bias is 0.1 V')
+    expect(() => stackOf({ ...job(), kind: 'light' }, rows)).toThrow('The job is of kind light')
   })
 
   test('layers of material under leads by numbers have no zero', () => {

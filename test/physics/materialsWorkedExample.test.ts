@@ -5,6 +5,7 @@ import { stackOf } from '../../src/model/index.js'
 
 // The stacks of ../shared/worked-example.md, evaluated there from the published material numbers in 30-digit arithmetic.
 const job = {
+  kind: 'electron',
   conditions: [{ name: '', temperatureK: 77, biasV: 0, inPlaneEv: 0 }],
   stack: {
     entry: { kind: 'material', material: 'GaAs', x: null },
