@@ -1,0 +1,153 @@
+import { materialNotes } from '../media/index.js'
+import { checkShape } from './checkShape.js'
+import type { Condition, Job } from './job.js'
+import { Problems } from './Problems.js'
+import { shortened } from './problemAt.js'
+import { Reader } from './Reader.js'
+import type { Tables } from './readCurve.js'
+import { readGrowth, readStep } from './readGrowth.js'
+import { readMedia } from './readMedia.js'
+import { readStack } from './readStack.js'
+import { readTarget } from './readTarget.js'
+import { readYaml } from './readYaml.js'
+import { refuse } from './refuse.js'
+import { largestFile, refusedName } from './tableFile.js'
+import { YamlSource } from './YamlSource.js'
+
+/**
+ * Reads a job from its text. `file` names it in messages, `files` holds the text of the tables that it names. Throws JobError
+ * with everything that is wrong, whatever the text.
+ */
+export function readJobText(text: string, file: string, files: Readonly<Record<string, string>> = {}): Job {
+  return assembleJob(text, file, (name) => {
+    const refused = refusedName(name)
+    if (refused) return refused
+    if (Object.hasOwn(files, name)) return { text: files[name] }
+    return { rule: `There is no file ${shortened(name)} beside the job.`, remedy: 'Check its name.' }
+  })
+}
+
+/** The same with the tables from wherever `tables` finds them. */
+export function assembleJob(text: string, file: string, tables: Tables): Job {
+  // A byte order mark is no part of the first line.
+  const plain = text.startsWith('\ufeff') ? text.slice(1) : text
+  const source = new YamlSource(file, plain.length > largestFile ? '' : plain)
+  const problems = new Problems(source)
+  if (plain.length > largestFile) {
+    problems.addAt(
+      { start: 0, end: 0 },
+      'The file is larger than 1 MB.',
+      'A job has a few lines. Is this the right file?',
+    )
+    problems.throwIfAny()
+  }
+  const value = readYaml(source, problems)
+  if (value === undefined) problems.throwIfAny()
+
+  const light = (value as { kind?: unknown }).kind === 'light'
+  const written = checkShape(value, problems)
+  if (light) {
+    // Everything else in it would be judged by the rules of electrons.
+    problems.add(
+      ['kind'],
+      "kind: light is part of the job format, but this version can't run it yet.",
+      'Write "kind: electron".',
+    )
+    problems.throwIfAny()
+  }
+  refuse(written, problems)
+
+  const files: Record<string, string> = Object.create(null)
+  const reader = new Reader(problems)
+  const name = readName(written.name, problems)
+  const condition = readCondition(written.temperature, reader)
+  const media = readMedia(written.media, reader)
+  const stepNm = readStep(written.growth, reader)
+  const stack = readStack(written.stack, media, stepNm, reader)
+  const target = readTarget(written.target, keeping(tables, files), reader)
+  const growth = readGrowth(written.growth, stepNm, stack.layers, reader)
+  const seed =
+    written.search?.seed === undefined ? 1 : reader.whole(written.search.seed, ['search', 'seed'], 0, 4294967295)
+  const candidates =
+    written.deliver?.candidates === undefined
+      ? 10
+      : reader.whole(written.deliver.candidates, ['deliver', 'candidates'], 1, 256)
+  problems.throwIfAny()
+
+  const job = {
+    file,
+    text,
+    files,
+    format: 1 as const,
+    name,
+    kind: 'electron' as const,
+    note: written.note ?? '',
+    conditions: [condition],
+    stack: stack.spec!,
+    scanEv: target.scanEv!,
+    resolutionEv: target.resolutionEv,
+    demands: target.demands,
+    growth,
+    search: {
+      method: written.search?.method === 'sampled' ? 'sampled' : 'auto',
+      effort: written.search?.effort ?? 'standard',
+      seed: seed!,
+    },
+    deliver: { candidates: candidates! },
+  } as const
+  return { ...job, notes: notesOf(job, source.has(['temperature'])) }
+}
+
+function readName(name: string | undefined, problems: Problems): string {
+  if (name === undefined || /^[A-Za-z0-9][A-Za-z0-9-]{0,63}$/.test(name)) return name ?? ''
+  const cleaned = name
+    .slice(0, 200)
+    .replace(/[^A-Za-z0-9]+/g, '-')
+    .replace(/^-+|-+$/g, '')
+    .slice(0, 64)
+  const rule = `name "${shortened(name)}" is no name: letters, digits and dashes, at most 64, no dash first.`
+  problems.add(['name'], rule, `Write "${cleaned || 'my-filter'}".`)
+  return ''
+}
+
+function readCondition(temperature: string | number | undefined, reader: Reader): Condition {
+  const temperatureK = reader.single(temperature, ['temperature'], 'temperature') ?? 300
+  if (temperatureK < 0 || temperatureK > 1000) {
+    reader.complain(['temperature'], 'is outside 0..1000 K', 'Write the temperature in operation, like "77 K".')
+  }
+  return { name: '', temperatureK, biasV: 0, inPlaneEv: 0 }
+}
+
+function keeping(tables: Tables, files: Record<string, string>): Tables {
+  return (name) => {
+    const table = tables(name)
+    if ('text' in table) files[name] = table.text
+    return table
+  }
+}
+
+function notesOf(job: Omit<Job, 'notes'>, statesTemperature: boolean): string[] {
+  const { growth, stack, conditions } = job
+  const notes: string[] = []
+  if (!statesTemperature) notes.push('The job states no temperature: 300 K is assumed.')
+  if (growth.assumed) {
+    const { rate, layer, x } = growth.spread
+    const values = `rates ${rate * 100} %, layers ${layer.value} ${layer.unit}, x ${x}`
+    notes.push(`The job states no growth.spread: ${values} (one standard deviation) are assumed.`)
+  }
+  const [{ temperatureK }] = conditions
+  const seen = new Set<string>()
+  for (const option of optionsOf(stack)) {
+    if (option.kind !== 'material') continue
+    // The ends of a range tell all: what holds for one composition and not for its neighbours has a limit between them.
+    const ends = option.x ? [option.x[0], option.x[option.x.length - 1]] : [null]
+    for (const x of ends) for (const note of materialNotes(option.material, x, temperatureK)) seen.add(note)
+  }
+  return [...notes, ...seen]
+}
+
+function optionsOf({ entry, exit, layers }: Job['stack']) {
+  const inside = (items: typeof layers): Exclude<typeof exit, 'hard wall'>[] =>
+    items.flatMap((item) => (item.kind === 'period' ? inside(item.period) : (item.media ?? [])))
+  return [entry, ...inside(layers), ...(exit === 'hard wall' ? [] : [exit])]
+}

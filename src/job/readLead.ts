@@ -1,0 +1,84 @@
+import type { Loose } from './checkShape.js'
+import type { MediumOption } from './job.js'
+import type { Reader } from './Reader.js'
+import { isAlloy, readComposition, readNamed, readNumbers, type UserMedia } from './readMedia.js'
+import type { JobAsWritten } from './schema.js'
+
+type Lead = Loose<JobAsWritten['stack']['entry']>
+
+/** A lead: a material, numbers, or (exit only) `hard wall`. Nothing about it may be left to the search. */
+export function readLead(
+  lead: Lead | undefined,
+  side: 'entry' | 'exit',
+  media: UserMedia,
+  reader: Reader,
+): MediumOption | 'hard wall' | null {
+  const path = ['stack', side]
+  const { problems } = reader
+  if (lead === undefined) return null
+  if (typeof lead === 'string') {
+    if (lead === 'hard wall') {
+      if (side === 'exit') return lead
+      problems.add(
+        path,
+        "The entry can't be a hard wall: the wave comes from there.",
+        'Make the hard wall the exit, or name a material.',
+      )
+      return null
+    }
+    if (isAlloy(lead, media)) {
+      problems.add(
+        path,
+        `${lead} is an alloy and needs a composition.`,
+        `Write "${side}: { material: ${lead}, x: 0.3 }".`,
+      )
+      return null
+    }
+    return fixed(readNamed(lead, path, null, media, reader))
+  }
+  const byNumbers = (['potential', 'mass', 'alpha'] as const).filter((key) => lead[key] !== undefined)
+  if (lead.material === undefined) {
+    if (problems.source.has([...path, 'material'])) return null
+    if (problems.source.has([...path, 'x'])) {
+      problems.addAtKey(
+        [...path, 'x'],
+        '"x" belongs to a material, and none is named.',
+        'Add "material: AlGaAs", or take x out.',
+      )
+    }
+    return fixed(readNumbers(lead, path, null, reader))
+  }
+  for (const key of byNumbers) {
+    problems.addAtKey(
+      [...path, key],
+      `"${key}" has no place beside "material".`,
+      'Give a material or numbers, not both.',
+    )
+  }
+  const name = lead.material
+  const hasX = problems.source.has([...path, 'x'])
+  const x = readComposition(lead.x, [...path, 'x'], reader)
+  const named = readNamed(name, [...path, 'material'], x, media, reader)
+  if (isAlloy(name, media) && !hasX) {
+    problems.add([...path, 'x'], `${name} is an alloy and needs a composition.`, 'Add "x: 0.3".')
+    return null
+  }
+  if (named && !isAlloy(name, media) && hasX) {
+    problems.addAtKey([...path, 'x'], `${name} has no composition to choose.`, 'Take x out.')
+  }
+  if (isAlloy(name, media) && x === null) return null
+  return fixed(named)
+
+  function fixed(option: MediumOption | null): MediumOption | null {
+    if (option === null) return null
+    const lists =
+      option.kind === 'material' ? [option.x ?? [0]] : [option.potentialEv, option.massRel, option.alphaPerEv]
+    if (lists.every((list) => list.length === 1)) return option
+    problems.add(
+      path,
+      `The ${side} is a lead and has to be fixed; here it has several values.`,
+      'Write single numbers.',
+    )
+    return null
+  }
+}

@@ -1,0 +1,272 @@
+import { isMaterial, materialNames, nearest, needsX } from '../media/index.js'
+import type { Loose } from './checkShape.js'
+import type { LayerSpec, MediumOption, PeriodSpec, StackItem, StackSpec } from './job.js'
+import { shortened } from './problemAt.js'
+import type { Reader } from './Reader.js'
+import { readLead } from './readLead.js'
+import { isAlloy, readComposition, readNamed, readNumbers, type UserMedia } from './readMedia.js'
+import { readWidth } from './readWidth.js'
+import type { ItemAsWritten, JobAsWritten } from './schema.js'
+import { tieLayers } from './tieLayers.js'
+import type { Path } from './YamlSource.js'
+
+/** A layer as it was read, with the place of its parts: growth has something to say about them later. */
+export interface PlacedLayer {
+  readonly path: Path
+  readonly writtenId: string | null
+  readonly spec: LayerSpec
+}
+
+/** A stack with every layer of it in the order of the file; the parts that were wrong are missing. */
+export interface ReadStack {
+  readonly spec: StackSpec | null
+  readonly layers: readonly PlacedLayer[]
+}
+
+/** More layers than this, repetitions counted, no machine grows in a night. */
+const mostLayers = 2000
+
+type Item = Loose<ItemAsWritten>
+
+export function readStack(
+  stack: Loose<JobAsWritten>['stack'],
+  media: UserMedia,
+  stepNm: number | null,
+  reader: Reader,
+): ReadStack {
+  const { problems } = reader
+  const layers: PlacedLayer[] = []
+  const periods = new Map<string, Path>()
+  if (stack === undefined) return { spec: null, layers }
+  const entry = readLead(stack.entry, 'entry', media, reader) as MediumOption | null
+  const exit = readLead(stack.exit, 'exit', media, reader)
+  const before = problems.count
+  const items = stack.layers ? readItems(stack.layers, ['stack', 'layers']) : null
+  const mirror = readMirror(stack.mirror, stack.layers, ['stack', 'mirror'])
+  const tied = tieLayers(layers, periods, reader)
+  if (items && problems.count === before && countLayers(items, mirror) > mostLayers) {
+    problems.addAtKey(['stack', 'layers'], `The stack has more than ${mostLayers} layers.`, 'Repeat less.')
+  }
+  const strainedTo = readStrain(stack['strained to'])
+  commonZero()
+  if (!entry || !exit || !items) return { spec: null, layers }
+  const spec: StackSpec = {
+    entry,
+    exit,
+    layers: items.map((item) => withTies(item, tied)),
+    mirror,
+    massModel: stack.mass ?? 'two-band',
+    strainedTo,
+  }
+  return { spec, layers }
+
+  function readItems(written: readonly (Item | undefined)[], path: Path): StackItem[] {
+    if (written.length === 0) {
+      const what = path.length > 2 ? 'The period has no layers.' : 'The stack has no layers.'
+      problems.add(path, what, 'Write at least one, like "- { material: GaAs, width: 10..30 ML }".')
+    }
+    return written.flatMap((item, i) => (item === undefined ? [] : [readItem(item, [...path, i])]))
+  }
+
+  function readItem(item: Item, path: Path): StackItem {
+    const form = formOf(path)
+    for (const key of Object.keys(item)) {
+      if (form === null || forms[form].includes(key)) continue
+      problems.addAtKey([...path, key], `"${key}" has no place in ${meaning[form]}.`, misplaced(form, key))
+    }
+    const id = readId(item.id, [...path, 'id'])
+    if (form === 'period') return readPeriod(item, id, path)
+    const media = form === 'material' ? readMaterial(item, path) : form === 'numbers' ? byNumbers(item, path) : null
+    if (form !== 'like' && form !== null && !problems.source.has([...path, 'width'])) {
+      problems.add(
+        [...path, 'width'],
+        '"width" is missing: a layer has a width, fixed or a range.',
+        'Add "width: 6..20 ML".',
+      )
+    }
+    // A tied width was refused before; only the text of a width is left.
+    const text = typeof item.width === 'object' ? undefined : item.width
+    const width = form === 'like' ? null : readWidth(text, [...path, 'width'], media, stepNm, reader)
+    const like = form === 'like' ? (item.like ?? null) : null
+    const spec: LayerSpec = { kind: 'layer', id: id ?? '', like, media, width }
+    layers.push({ path, writtenId: id, spec })
+    return spec
+  }
+
+  function readPeriod(item: Item, id: string | null, path: Path): PeriodSpec {
+    if (id !== null) periods.set(id, path)
+    for (const key of ['repeat', 'period']) {
+      if (problems.source.has([...path, key])) continue
+      const what = key === 'repeat' ? '"repeat: 3"' : '"period:" with the layers of one period'
+      problems.add([...path, key], `"${key}" is missing: a period says its layers and how often.`, `Add ${what}.`)
+    }
+    const repeat = typeof item.repeat === 'number' ? reader.whole(item.repeat, [...path, 'repeat'], 1, 1000) : null
+    const period = item.period ? readItems(item.period, [...path, 'period']) : []
+    const mirror = readMirror(item.mirror, item.period, [...path, 'mirror'])
+    return { kind: 'period', id, repeat: repeat ?? 1, period, mirror }
+  }
+
+  function readMaterial(item: Item, path: Path): readonly MediumOption[] | null {
+    const xPath = [...path, 'x']
+    const hasX = problems.source.has(xPath)
+    const x = readComposition(item.x, xPath, reader)
+    const { material } = item
+    if (material === undefined) return null
+    const picked = typeof material === 'string' ? null : (material.pick ?? [])
+    const names = picked ?? [material as string]
+    const placeOf = (i: number) => [...path, 'material', ...(picked ? ['pick', i] : [])]
+    if (names.length === 0)
+      problems.add(
+        [...path, 'material'],
+        'The list of materials is empty.',
+        'Write "material: { pick: [GaAs, AlAs] }".',
+      )
+    const options: MediumOption[] = []
+    names.forEach((name, i) => {
+      if (name === undefined) return
+      if (names.indexOf(name) < i) {
+        problems.add(placeOf(i), `${shortened(name)} stands twice in the list.`, 'Keep one of the two.')
+        return
+      }
+      const option = readNamed(name, placeOf(i), x, media, reader)
+      if (option) options.push(option)
+    })
+    const known = names.filter((name): name is string => name !== undefined)
+    const alloys = known.filter((name) => isAlloy(name, media))
+    if (alloys.length > 0 && !hasX) {
+      problems.add(
+        xPath,
+        `${alloys[0]} is an alloy and needs a composition.`,
+        'Add "x: 0.3" or "x: { pick: [0.25, 0.35] }".',
+      )
+    }
+    if (hasX && alloys.length === 0 && options.length === known.length && known.length > 0) {
+      problems.addAtKey(
+        xPath,
+        `${known.join(' and ')} has no composition to choose.`,
+        `Take x out${alloyHint(known[0], media)}.`,
+      )
+    }
+    const complete = options.length === names.length && names.length > 0 && (alloys.length === 0 || x !== null)
+    return complete ? options : null
+  }
+
+  function byNumbers(item: Item, path: Path): readonly MediumOption[] | null {
+    const option = readNumbers(item, path, null, reader)
+    return option && [option]
+  }
+
+  function readId(id: string | undefined, path: Path): string | null {
+    if (id === undefined) return null
+    if (!/^[A-Za-z0-9][A-Za-z0-9_-]{0,39}$/.test(id)) {
+      problems.add(path, `id "${shortened(id)}" is no id.`, 'Use letters, digits and dashes, at most 40.')
+    }
+    return id
+  }
+
+  function readMirror(
+    mirror: boolean | undefined,
+    items: readonly (Item | undefined)[] | undefined,
+    path: Path,
+  ): boolean {
+    const last = items?.[items.length - 1]
+    if (mirror && last !== undefined && (last.period !== undefined || last.repeat !== undefined)) {
+      problems.add(
+        path,
+        '"mirror" reflects about the last layer, but a period stands last.',
+        'End with the single layer in the middle of the stack.',
+      )
+    }
+    return mirror ?? false
+  }
+
+  function readStrain(name: string | undefined): string | null {
+    if (name === undefined || name === 'none') return name ?? null
+    const path = ['stack', 'strained to']
+    const binaries = materialNames.filter((known) => !needsX(known))
+    if (isMaterial(name) && !needsX(name)) return name
+    const near = nearest(name, binaries)
+    const remedy =
+      near.length > 0 ? `Did you mean ${near.join(' or ')}?` : `Write none, or one of ${binaries.join(', ')}.`
+    problems.add(path, `"${shortened(name)}" is no binary material to be strained to.`, remedy)
+    return null
+  }
+
+  /** Offsets of materials are known to one another, plain numbers count from the entry: they can't be mixed the wrong way. */
+  function commonZero(): void {
+    if (entry?.kind !== 'numbers') return
+    if (entry.potentialEv[0] !== 0) {
+      const path = ['stack', 'entry', ...(problems.source.has(['stack', 'entry', 'potential']) ? ['potential'] : [])]
+      problems.add(
+        path,
+        "The entry's potential is not 0, but every energy counts from the entry's own edge.",
+        'Write "potential: 0 eV" and shift the others.',
+      )
+    }
+    const remedy = 'Name a material as the entry, or give this by numbers too.'
+    const rule = 'The entry is given by numbers, so that a material has no common zero of energy with it.'
+    if (exit && exit !== 'hard wall' && exit.kind === 'material') problems.add(['stack', 'exit'], rule, remedy)
+    for (const { path, spec } of layers) {
+      if (spec.media?.some((option) => option.kind === 'material')) problems.add([...path, 'material'], rule, remedy)
+    }
+  }
+
+  function formOf(path: Path): Form | null {
+    const stated = (key: string) => problems.source.has([...path, key])
+    if (stated('like')) return 'like'
+    if (stated('period') || stated('repeat')) return 'period'
+    if (stated('material')) return 'material'
+    if (stated('potential') || stated('mass') || stated('alpha')) return 'numbers'
+    if (stated('index') || stated('extinction')) return null
+    problems.add(
+      path,
+      'This layer says nothing of what it is made of.',
+      'Add "material: GaAs", numbers, or "like: id".',
+    )
+    return null
+  }
+}
+
+type Form = 'like' | 'period' | 'material' | 'numbers'
+
+const forms: Readonly<Record<Form, readonly string[]>> = {
+  like: ['id', 'like'],
+  period: ['id', 'repeat', 'period', 'mirror'],
+  material: ['id', 'material', 'x', 'width'],
+  numbers: ['id', 'potential', 'mass', 'alpha', 'width'],
+}
+
+const meaning: Readonly<Record<Form, string>> = {
+  like: 'a layer with "like", which takes material, composition and width from the other',
+  period: 'a period',
+  material: 'a layer with "material"',
+  numbers: 'a layer given by numbers',
+}
+
+function misplaced(form: Form, key: string): string {
+  if (form === 'like') return `Take "${key}" out, or take "like" out and describe the layer in full.`
+  if (form === 'period') return 'Put it on a layer inside "period".'
+  if (key === 'mirror') return '"mirror" belongs to the stack or to a period.'
+  if (form === 'numbers' && key === 'x')
+    return 'Only materials have a composition: add "material: AlGaAs", or take x out.'
+  return 'Give a material or numbers, not both.'
+}
+
+function alloyHint(name: string, media: UserMedia): string {
+  const alloys = materialNames.filter((known) => needsX(known) && known.includes(name.slice(0, 2)) && !media.has(name))
+  return alloys.length > 0 ? `, or name an alloy (${alloys.join(', ')})` : ''
+}
+
+function countLayers(items: readonly StackItem[], mirror: boolean): number {
+  const once = items.reduce(
+    (sum, item) => sum + (item.kind === 'layer' ? 1 : item.repeat * countLayers(item.period, item.mirror)),
+    0,
+  )
+  return mirror ? 2 * once - 1 : once
+}
+
+/** Puts the layers as tied in the place of those that were read. */
+function withTies(item: StackItem, tied: ReadonlyMap<LayerSpec, LayerSpec>): StackItem {
+  if (item.kind === 'layer') return tied.get(item) ?? item
+  return { ...item, period: item.period.map((inner) => withTies(inner, tied)) }
+}
