@@ -1,1 +1,3 @@
+export { compileTarget, type TargetSpec } from './compileTarget.js'
+export { compareScores } from './order.js'
 export type * from './types.js'

@@ -46,6 +46,10 @@ export interface Target {
   readonly fitSize: number
   /** A lower bound of the merit from the point terms alone. */
   pointMerit(systems: readonly WaveSystem[]): number
+  /** Merit and met of `evaluate` without the figures: all that a search compares. Cheap for curves alone, which need no maxima. */
+  verdict(systems: readonly WaveSystem[]): { readonly merit: number; readonly met: boolean }
+  /** Which demands are met, in their order, a curve always: all that a yield counts, at less cost than `evaluate`. */
+  meets(systems: readonly WaveSystem[]): boolean[]
   evaluate(systems: readonly WaveSystem[]): Evaluation
   /**
    * The residuals that Levenberg-Marquardt minimises, scaled so that their sum of squares is the merit squared without its

@@ -1,0 +1,39 @@
+import type { Landscape } from './Landscape.js'
+import type { DemandResult, Limit } from './types.js'
+
+/** One demand, ready to judge a stack at one condition. */
+export interface Judge {
+  readonly id: string
+  readonly kind: DemandResult['kind']
+  readonly weight: number
+  /** What it reads at fixed energies; null for a peak. */
+  readonly terms: PointTerms | null
+  /** How many parts a peak states, which the fit takes one by one; 0 for the others. */
+  readonly parts: number
+  judge(landscape: Landscape): Verdict
+  /** Whether the demand is met, without its figures; null for a curve. */
+  met(landscape: Landscape): boolean | null
+  /** Writes a residual a part into `residuals` and returns the slopes of each, [width, then the medium's own] a layer. */
+  fitParts(landscape: Landscape, residuals: Float64Array): Float64Array[]
+  limits(landscape: Landscape): Limit[]
+}
+
+/** What a demand says of a stack at one condition. */
+export interface Verdict extends Pick<DemandResult, 'reached' | 'met' | 'extremeEv' | 'peak'> {
+  /** Mean square of the residuals. */
+  readonly square: number
+}
+
+/** Residuals that hang on T at fixed energies, each with its share of the mean square; shares add up to 1. */
+export interface PointTerms {
+  readonly energiesEv: readonly number[]
+  /** Of the first energy among all points of the target. */
+  readonly first: number
+  share(i: number): number
+  residual(i: number, T: number): number
+  /** d(residual)/dT. */
+  slope(i: number, T: number): number
+}
+
+/** The largest residual that counts as met (design 3). */
+export const nothing = 1e-9

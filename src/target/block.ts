@@ -1,0 +1,100 @@
+import type { BlockDemand } from '../job/index.js'
+import { type Extremum, extremeOver, log10 } from '../wave/index.js'
+import { type Judge, nothing, type PointTerms, type Verdict } from './Judge.js'
+import type { Landscape } from './Landscape.js'
+import { meanSquare } from './meanSquare.js'
+import { peakSlopes } from './peakSlopes.js'
+import type { Limit } from './types.js'
+
+/** Decibels that count as a residual of 1. */
+const unitDb = 3
+
+/**
+ * T at most t over a closed range: 10 log10(T/t) over 3 dB at its points and at the greatest T. `resolutionEv`: a maximum with a
+ * pole of Gamma within its own width counts with T min(1, (pi/2) Gamma/resolution), the mean over a detector that wide.
+ */
+export class BlockJudge implements Judge {
+  readonly kind = 'block'
+  readonly parts = 0
+  readonly id: string
+  readonly weight: number
+  readonly terms: PointTerms
+
+  constructor(
+    private readonly demand: BlockDemand,
+    first: number,
+    private readonly resolutionEv: number | null,
+  ) {
+    this.id = demand.id
+    this.weight = demand.weight
+    const { below, pointsEv } = demand
+    this.terms = {
+      energiesEv: pointsEv,
+      first,
+      share: () => 1 / pointsEv.length,
+      residual: (_, T) => excess(T, below),
+      slope: (_, T) => (T > below ? decibelSlope(T) / unitDb : 0),
+    }
+  }
+
+  judge(landscape: Landscape): Verdict {
+    const points = meanSquare(this.terms, landscape.T)
+    const { energyEv, T } = this.greatest(landscape)
+    const extreme = excess(T, this.demand.below)
+    const met = this.pointsMet(landscape) && extreme <= nothing
+    return { square: points + extreme * extreme, reached: T, met, extremeEv: energyEv, peak: null }
+  }
+
+  met(landscape: Landscape): boolean {
+    return this.pointsMet(landscape) && excess(this.greatest(landscape).T, this.demand.below) <= nothing
+  }
+
+  fitParts(): Float64Array[] {
+    return []
+  }
+
+  limits(landscape: Landscape): Limit[] {
+    const { energyEv, T } = this.greatest(landscape)
+    const slack = T > 0 ? 10 * log10(this.demand.below / T) : Infinity
+    const { T: bare, gradient } = landscape.gradient([energyEv])
+    const row = gradient.map((slope) => (T > 0 ? -decibelSlope(bare[0]) * slope : 0))
+    const unresolved = landscape.extrema.find((e) => e.energyEv === energyEv && this.factor(e) < 1)
+    if (unresolved) {
+      // T Gamma counts, not T: the width has a share in the slope.
+      const peak = landscape.figuresOf(unresolved)
+      const { fwhm, height } = peakSlopes(landscape, peak)
+      for (let k = 0; k < row.length; k++) {
+        row[k] = -(10 / Math.LN10) * (height[k] / peak.T + fwhm[k] / peak.fwhmEv)
+      }
+    }
+    return [{ demand: this.id, part: 'greatest T', slack, gradient: row }]
+  }
+
+  /** The greatest T that counts, and its energy. */
+  private greatest(landscape: Landscape): { energyEv: number; T: number } {
+    const { pointsEv } = this.demand
+    const range = [pointsEv[0], pointsEv[pointsEv.length - 1]] as const
+    const counted = landscape.extrema.map((e) => ({ ...e, T: e.T * this.factor(e) }))
+    return extremeOver(landscape.system, range, 'greatest', counted)
+  }
+
+  private factor({ kind, poleWidthEv }: Extremum): number {
+    if (this.resolutionEv === null || kind === 'minimum' || poleWidthEv === null) return 1
+    return Math.min(1, ((Math.PI / 2) * poleWidthEv) / this.resolutionEv)
+  }
+
+  private pointsMet({ T }: Landscape): boolean {
+    const { below, pointsEv } = this.demand
+    return pointsEv.every((_, i) => excess(T[this.terms.first + i], below) <= nothing)
+  }
+}
+
+/** 10 log10(T/t) over 3 dB; 0 at or below t. */
+function excess(T: number, t: number): number {
+  return T > t ? (10 * log10(T / t)) / unitDb : 0
+}
+
+/** d(10 log10 T)/dT. */
+function decibelSlope(T: number): number {
+  return 10 / (Math.LN10 * T)
+}

@@ -1,0 +1,144 @@
+import type { Demand, Job } from '../job/index.js'
+import type { WaveSystem } from '../wave/index.js'
+import { BlockJudge } from './block.js'
+import { CurveJudge } from './curve.js'
+import { fitInto } from './fitInto.js'
+import type { Judge, Verdict } from './Judge.js'
+import { Landscape } from './Landscape.js'
+import { meanSquare } from './meanSquare.js'
+import { merit } from './merit.js'
+import { PointSpectrum } from './PointSpectrum.js'
+import { PassJudge } from './pass.js'
+import { PeakJudge } from './peak.js'
+import type { DemandResult, Evaluation, Limit, PeakFigures, Target } from './types.js'
+
+/** What of a job says how stacks are judged. */
+export type TargetSpec = Pick<Job, 'demands' | 'scanEv' | 'resolutionEv' | 'conditions'>
+
+/**
+ * The demands of a job, ready to judge stacks. Maxima are looked for between the entry's edge, from which energies count, and the
+ * scan's end plus the scan's length. What is found of a system is kept with it: limits after an evaluation cost no second search.
+ */
+export function compileTarget(job: TargetSpec): Target {
+  return new CompiledTarget(job)
+}
+
+class CompiledTarget implements Target {
+  readonly fitSize: number
+  private readonly judges: readonly Judge[]
+  private readonly weights: readonly number[]
+  private readonly spectrum: PointSpectrum
+  private readonly windowEv: readonly [number, number]
+  private readonly onlyCurves: boolean
+  private readonly landscapes = new WeakMap<WaveSystem, Landscape>()
+
+  constructor({ demands, scanEv, resolutionEv, conditions }: TargetSpec) {
+    const points: number[] = []
+    this.judges = demands.map((demand) => {
+      const judge = judgeOf(demand, points.length, resolutionEv)
+      if (judge.terms) points.push(...judge.terms.energiesEv)
+      return judge
+    })
+    this.weights = this.judges.map(({ weight }) => weight)
+    this.spectrum = new PointSpectrum(points)
+    this.windowEv = [0, 2 * scanEv[1] - scanEv[0]]
+    this.onlyCurves = demands.every(({ kind }) => kind === 'curve')
+    const rows = this.judges.map(({ terms, parts }) => parts + (terms?.energiesEv.length ?? 0))
+    this.fitSize = conditions.length * rows.reduce((sum, size) => sum + size, 0)
+  }
+
+  pointMerit(systems: readonly WaveSystem[]): number {
+    const squares = new Float64Array(this.judges.length)
+    for (const system of systems) {
+      const T = this.spectrum.at(system)
+      for (let d = 0; d < squares.length; d++) {
+        const { terms } = this.judges[d]
+        if (terms) squares[d] += meanSquare(terms, T) / systems.length
+      }
+    }
+    return merit(squares, this.weights)
+  }
+
+  verdict(systems: readonly WaveSystem[]): { readonly merit: number; readonly met: boolean } {
+    if (this.onlyCurves) return { merit: this.pointMerit(systems), met: true }
+    const { merit, demands } = this.judgeAll(systems)
+    return { merit, met: demands.every(({ met }) => met !== false) }
+  }
+
+  meets(systems: readonly WaveSystem[]): boolean[] {
+    const landscapes = systems.map((system) => this.landscape(system))
+    return this.judges.map((judge) => landscapes.every((landscape) => judge.met(landscape) !== false))
+  }
+
+  evaluate(systems: readonly WaveSystem[]): Evaluation {
+    const { merit, demands } = this.judgeAll(systems)
+    const first = demands.find(({ kind }) => kind === 'peak')
+    const peak = first ? first.peak : highestPeak(this.landscape(systems[0]))
+    return { merit, met: demands.every(({ met }) => met !== false), demands, peak }
+  }
+
+  fit(
+    systems: readonly WaveSystem[],
+    directions: Float64Array,
+    variables: number,
+    residuals: Float64Array,
+    jacobian: Float64Array,
+  ): void {
+    const landscapes = systems.map((system) => this.landscape(system))
+    fitInto(landscapes, this.judges, directions, variables, residuals, jacobian)
+  }
+
+  limits(systems: readonly WaveSystem[]): Limit[] {
+    return systems.flatMap((system) => {
+      const landscape = this.landscape(system)
+      return this.judges.flatMap((judge) => judge.limits(landscape))
+    })
+  }
+
+  private judgeAll(systems: readonly WaveSystem[]): { merit: number; demands: DemandResult[] } {
+    const landscapes = systems.map((system) => this.landscape(system))
+    const squares = new Float64Array(this.judges.length)
+    const demands = this.judges.map((judge, d) => {
+      const verdicts = landscapes.map((landscape) => judge.judge(landscape))
+      // As in pointMerit: its sum is a lower bound of this one to the last bit.
+      for (const { square } of verdicts) squares[d] += square / systems.length
+      return resultOf(judge, squares[d], verdicts)
+    })
+    return { merit: merit(squares, this.weights), demands }
+  }
+
+  private landscape(system: WaveSystem): Landscape {
+    let landscape = this.landscapes.get(system)
+    if (!landscape) {
+      landscape = new Landscape(system, this.spectrum.at(system).slice(), this.windowEv)
+      this.landscapes.set(system, landscape)
+    }
+    return landscape
+  }
+}
+
+function judgeOf(demand: Demand, first: number, resolutionEv: number | null): Judge {
+  switch (demand.kind) {
+    case 'peak':
+      return new PeakJudge(demand)
+    case 'pass':
+      return new PassJudge(demand, first)
+    case 'block':
+      return new BlockJudge(demand, first, resolutionEv)
+    case 'curve':
+      return new CurveJudge(demand, first)
+  }
+}
+
+/** Figures are those of the worst condition; met means met at each. */
+function resultOf({ id, kind }: Judge, square: number, verdicts: readonly Verdict[]): DemandResult {
+  const { reached, extremeEv, peak } = verdicts.reduce((worst, next) => (next.square > worst.square ? next : worst))
+  const met = verdicts[0].met === null ? null : verdicts.every((verdict) => verdict.met)
+  return { id, kind, reached, rms: Math.sqrt(square), met, extremeEv, peak }
+}
+
+function highestPeak(landscape: Landscape): PeakFigures | null {
+  const maxima = landscape.extrema.filter(({ kind }) => kind === 'maximum')
+  if (maxima.length === 0) return null
+  return landscape.figuresOf(maxima.reduce((highest, next) => (next.T > highest.T ? next : highest)))
+}

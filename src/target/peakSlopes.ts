@@ -1,0 +1,57 @@
+import type { Landscape } from './Landscape.js'
+import type { PeakFigures } from './types.js'
+
+/** Slopes of a maximum in the layer parameters, [width, then the medium's own] a layer. */
+export interface PeakSlopes {
+  /** dE/dp, d(T at the maximum)/dp and d(full width at half height)/dp. */
+  readonly energy: Float64Array
+  readonly height: Float64Array
+  readonly fwhm: Float64Array
+}
+
+/**
+ * Implicit derivatives of a maximum E0 of T and of its half-height points E-, E+:
+ *
+ *     dE0/dp = -T_Ep/T_EE     dT(E0)/dp = T_p     dE±/dp = (T_p(E0)/2 - T_p(E±))/T_E(E±)
+ *
+ * Mixed and second derivatives are differences, in energy, of the slopes of ln T, whose odd parts around the maximum of a
+ * Lorentzian have the ratio -dE0/dp at any distance: the step may be wider than a peak that doubles hardly resolve. It is a
+ * thousandth of the width where that is wide enough (fourth order: 1e-10 there), else `stepEv`. A side that was cut at the window
+ * does not move. Below `narrowestEv` the half points can't be told from the maximum: the height counts as fixed and ln(width)
+ * moves by half of the even part of d(ln T)/dp, as for a symmetric resonance.
+ */
+export function peakSlopes(landscape: Landscape, peak: PeakFigures): PeakSlopes {
+  const { energyEv, lowEv, highEv, fwhmEv } = peak
+  const n = landscape.layerParameters
+  const step = Math.max(1e-3 * fwhmEv, stepEv)
+  const around = [-2, -1, 1, 2].map((k) => energyEv + k * step)
+  const { T, gradient } = landscape.gradient([...around, energyEv, lowEv, highEv])
+  const slope = landscape.slope([...around, lowEv, highEv])
+  const second = differences.reduce((sum, d, e) => sum + (d * slope[e]) / T[e], 0)
+  const narrow = fwhmEv < narrowestEv
+  const [low, high] = [4, 5].map((i) => (isCut(landscape, peak, i) ? 0 : 1 / slope[i]))
+  const slopes = { energy: new Float64Array(n), height: new Float64Array(n), fwhm: new Float64Array(n) }
+  for (let k = 0; k < n; k++) {
+    const mixed = differences.reduce((sum, d, e) => sum + (d * gradient[e * n + k]) / T[e], 0)
+    slopes.energy[k] = -mixed / second
+    if (narrow) {
+      slopes.fwhm[k] = 0.25 * fwhmEv * (gradient[n + k] / T[1] + gradient[2 * n + k] / T[2])
+      continue
+    }
+    const height = gradient[4 * n + k]
+    slopes.height[k] = height
+    slopes.fwhm[k] = (0.5 * height - gradient[6 * n + k]) * high - (0.5 * height - gradient[5 * n + k]) * low
+  }
+  return slopes
+}
+
+/** Weights of a first derivative of fourth order at -2, -1, 1, 2 steps, but for a common factor. */
+const differences = [1, -8, 8, -1]
+
+const stepEv = 1e-7
+const narrowestEv = 1e-12
+
+/** Slope 4 belongs to the low side, 5 to the high one. */
+function isCut({ windowEv }: Landscape, { lowEv, highEv }: PeakFigures, i: number): boolean {
+  return i === 4 ? lowEv <= windowEv[0] : highEv >= windowEv[1]
+}
