@@ -1,1 +1,7 @@
+export { growthErrors } from './growthErrors.js'
+export { limitMargin, marginOf } from './margin.js'
+export { type RandomStream, randomStream } from './random.js'
+export { type Sheet, type SheetRow, type SheetTask, sheetOf } from './sheet.js'
 export type * from './types.js'
+export { wilson } from './wilson.js'
+export { type YieldTask, yieldOf } from './yield.js'

@@ -1,5 +1,5 @@
 import type { Demand, Job } from '../job/index.js'
-import type { WaveSystem } from '../wave/index.js'
+import type { Extremum, WaveSystem } from '../wave/index.js'
 import { BlockJudge } from './block.js'
 import { CurveJudge } from './curve.js'
 import { fitInto } from './fitInto.js'
@@ -10,6 +10,7 @@ import { merit } from './merit.js'
 import { PointSpectrum } from './PointSpectrum.js'
 import { PassJudge } from './pass.js'
 import { PeakJudge } from './peak.js'
+import { peakSlopes } from './peakSlopes.js'
 import type { DemandResult, Evaluation, Limit, PeakFigures, Target } from './types.js'
 
 /** What of a job says how stacks are judged. */
@@ -95,6 +96,16 @@ class CompiledTarget implements Target {
     })
   }
 
+  maximumNear(system: WaveSystem, energyEv: number): number | null {
+    return nearestPeak(this.landscape(system), energyEv)?.energyEv ?? null
+  }
+
+  maximumSlope(system: WaveSystem, energyEv: number): Float64Array | null {
+    const landscape = this.landscape(system)
+    const peak = nearestPeak(landscape, energyEv)
+    return peak && peakSlopes(landscape, peak).energy
+  }
+
   private judgeAll(systems: readonly WaveSystem[]): { merit: number; demands: DemandResult[] } {
     const landscapes = systems.map((system) => this.landscape(system))
     const squares = new Float64Array(this.judges.length)
@@ -138,7 +149,15 @@ function resultOf({ id, kind }: Judge, square: number, verdicts: readonly Verdic
 }
 
 function highestPeak(landscape: Landscape): PeakFigures | null {
+  return greatest(landscape, ({ T }) => T)
+}
+
+function nearestPeak(landscape: Landscape, energyEv: number): PeakFigures | null {
+  return greatest(landscape, (maximum) => -Math.abs(maximum.energyEv - energyEv))
+}
+
+function greatest(landscape: Landscape, value: (maximum: Extremum) => number): PeakFigures | null {
   const maxima = landscape.extrema.filter(({ kind }) => kind === 'maximum')
   if (maxima.length === 0) return null
-  return landscape.figuresOf(maxima.reduce((highest, next) => (next.T > highest.T ? next : highest)))
+  return landscape.figuresOf(maxima.reduce((best, next) => (value(next) > value(best) ? next : best)))
 }

@@ -64,6 +64,10 @@ export interface Target {
   ): void
   /** Every limit of a stack that was evaluated; slacks are negative where unmet. */
   limits(systems: readonly WaveSystem[], evaluation: Evaluation): Limit[]
+  /** Energy (eV) of the maximum in the window that lies nearest to `energyEv`; null when there is none. */
+  maximumNear(system: WaveSystem, energyEv: number): number | null
+  /** dE/d(layer parameter) of that maximum. */
+  maximumSlope(system: WaveSystem, energyEv: number): Float64Array | null
 }
 
 /** What the order of stacks compares (design 3). */
