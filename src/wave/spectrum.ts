@@ -1,7 +1,8 @@
-import { exponentOf, highWord, powerOfTwo, scaleByPowerOfTwo } from './bits.js'
+import { scaleByPowerOfTwo } from './bits.js'
 import { log10 } from './elementary.js'
-import { BlockMedia, blockSize, layerFunctions, thickest } from './layerBlock.js'
+import { blockSize } from './layerBlock.js'
 import { checkStack, lead, refuseClosed, refuseResult } from './stackChecks.js'
+import { applyLayer, computeLayer, growth, media, renormalise, shift, startVectors, u1, u2, v1, v2 } from './sweep.js'
 import type { MediaTable, Side, WaveStack } from './types.js'
 
 /** What `spectrumInto` writes: at least `points` entries each. */
@@ -11,15 +12,6 @@ export interface SpectrumOut {
   /** -Infinity where T = 0; computed only when given. */
   readonly log10T?: Float64Array
 }
-
-const media = new BlockMedia()
-const u1 = new Float64Array(blockSize)
-const v1 = new Float64Array(blockSize)
-const u2 = new Float64Array(blockSize)
-const v2 = new Float64Array(blockSize)
-const shift = new Float64Array(blockSize)
-const c = new Float64Array(blockSize)
-const s = new Float64Array(blockSize)
 
 /**
  * Transmission and reflection of a lossless stack at every point of the table.
@@ -51,78 +43,22 @@ export function spectrumInto(table: MediaTable, stack: WaveStack, out: SpectrumO
 function sweep(table: MediaTable, stack: WaveStack, from: Side, far: number, first: number, n: number): void {
   const { medium, width } = stack
   const layers = medium.length
-  media.begin()
-  start(table, far, first, n)
+  startVectors(table, far, first, n)
   // Log2 of what the vectors may have grown or shrunk by since they were last brought to order one.
   let grown = 0
   for (let step = 0; step < layers; step++) {
     const j = from === 'entry' ? layers - 1 - step : step
-    const w = width[j]
     const slot = media.at(table, medium[j], first, n)
-    const x = media.kappaMax[slot] * w
-    const thick = x > thickest
-    const bound = (thick ? 0 : x * 1.5) + 4 + exponentOf(1 + media.muBound[slot] * w) + exponentOf(media.yBound[slot])
+    const bound = growth(slot, width[j])
     if (grown + bound > 900) {
       renormalise(n)
       grown = 0
     }
     grown += bound
-    const t = medium[j] * table.points + first
-    const o = slot * blockSize
-    layerFunctions(table.q, t, media.k, o, w, n, c, s, thick ? shift : null)
-    apply(table.q, t, o, n)
+    computeLayer(table, medium[j], slot, width[j], first, n)
+    applyLayer(table, medium[j], slot, first, n)
   }
   if (grown > 400) renormalise(n)
-}
-
-function start(table: MediaTable, far: number, first: number, n: number): void {
-  const { q, mu } = table
-  const t = far * table.points + first
-  for (let i = 0; i < n; i++) {
-    shift[i] = 0
-    u2[i] = 0
-    if (far < 0) {
-      u1[i] = 0
-      v1[i] = 1
-      v2[i] = 0
-    } else {
-      const Y = Math.sqrt(Math.abs(q[t + i])) / mu[t + i]
-      const open = q[t + i] > 0
-      u1[i] = 1
-      v1[i] = open ? 0 : -Y
-      v2[i] = open ? Y : 0
-    }
-  }
-}
-
-function apply(q: Float64Array, t: number, o: number, n: number): void {
-  const { y, z } = media
-  for (let i = 0; i < n; i++) {
-    const cos = c[i]
-    const down = z[o + i] * s[i]
-    const up = q[t + i] < 0 ? -(y[o + i] * s[i]) : y[o + i] * s[i]
-    const a = u1[i]
-    const b = v1[i]
-    const d = u2[i]
-    const e = v2[i]
-    u1[i] = cos * a - down * b
-    v1[i] = up * a + cos * b
-    u2[i] = cos * d - down * e
-    v2[i] = up * d + cos * e
-  }
-}
-
-function renormalise(n: number): void {
-  for (let i = 0; i < n; i++) {
-    const size = Math.max(Math.max(Math.abs(u1[i]), Math.abs(v1[i])), Math.max(Math.abs(u2[i]), Math.abs(v2[i])))
-    const exponent = (highWord(size) >> 20) - 1023
-    const factor = powerOfTwo(-exponent)
-    u1[i] *= factor
-    v1[i] *= factor
-    u2[i] *= factor
-    v2[i] *= factor
-    shift[i] += exponent
-  }
 }
 
 function finish(table: MediaTable, near: number, far: number, first: number, n: number, out: SpectrumOut): number {
