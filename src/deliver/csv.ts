@@ -13,7 +13,7 @@ export type Cell = string | number | Milli | null
  *
  * Numbers have the digits that rebuild the double. Null, NaN and the infinities give an empty cell. A text that a
  * spreadsheet could take for a formula (it starts with = + - @, a tab or a return) gets an apostrophe in front, the one mark
- * that every spreadsheet reads as "this is text"; names in a job start with a letter, so it is all but never seen.
+ * that every spreadsheet reads as "this is text"; names in a job start with a letter or a digit, so it is all but never seen.
  */
 export function csv(header: readonly string[], rows: Iterable<readonly Cell[]>): string {
   return stringify([[...header], ...rows], {

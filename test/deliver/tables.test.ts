@@ -1,6 +1,7 @@
 import { parse } from 'csv-parse/sync'
 import { describe, expect, it } from 'vitest'
 import { candidatesCsv, layersCsv, profileCsv, resonancesCsv, spectrumCsv } from '../../src/deliver/index.js'
+import { parseLayers } from '../../src/job/index.js'
 import { demands, peak, sampleCandidate, sampleLayers, sampleSpectrum } from './sampleNight.js'
 
 const ids = demands.map(({ id }) => id)
@@ -86,6 +87,17 @@ describe('layersCsv', () => {
       expect([Number(row.ml), Number(row.width_nm)]).toEqual([count, widthNm])
       const { potentialEv, massRel, alphaPerEv } = resolved.region
       expect([row.potential_eV, row.mass_rel, row.alpha_per_eV].map(Number)).toEqual([potentialEv, massRel, alphaPerEv])
+    }
+  })
+
+  it('is read back from entry to exit, whatever the direction of growth', () => {
+    const layers = sampleLayers()
+    const fromEntry = layers.map((each, i) => ({ ...each, fromSubstrate: i + 1 }))
+    for (const text of [layersCsv(layers), layersCsv(fromEntry)]) {
+      const rows = parseLayers(text, 'layers.csv')
+      expect(rows.map(({ id }) => id)).toEqual(layers.map(({ id }) => id))
+      expect(rows.map(({ ml, widthNm }) => [ml, widthNm])).toEqual(layers.map(({ count, widthNm }) => [count, widthNm]))
+      expect(rows.map(({ medium }) => medium)).toEqual(layers.map(({ choice }) => choice))
     }
   })
 
