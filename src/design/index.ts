@@ -1,1 +1,3 @@
+export { DesignError } from './DesignError.js'
+export { designOf } from './designOf.js'
 export type * from './types.js'

@@ -31,10 +31,14 @@ export interface Design {
   /** Every feasible assignment, in the order of the places; the array is reused. */
   assignments(): Iterable<Int32Array>
   feasible(assignment: Int32Array): boolean
+  /** The assignment itself when it is feasible, else a feasible one near it. */
+  repair(assignment: Int32Array): Int32Array
   /** The one of a stack and its mirror image that is listed (design 5); may be the argument itself. */
   canonical(assignment: Int32Array): Int32Array
   layers(assignment: Int32Array): GrownLayer[]
+  /** Row i of each is layer i of `layers`. */
   systems(assignment: Int32Array): WaveSystem[]
+  totalNm(assignment: Int32Array): number
   /** First 12 hex digits of SHA-256 over the canonical JSON of the stack. */
   id(assignment: Int32Array): string
   /** The readable text of a stack: `AlGaAs(0.35) 12 / GaAs 18 / AlGaAs(0.35) 12 ML`. */
@@ -48,6 +52,7 @@ export interface Relaxed {
   readonly start: Float64Array
   readonly lower: Float64Array
   readonly upper: Float64Array
+  /** Rows are the layers as written, none merged or dropped. */
   systems(variables: Float64Array): WaveSystem[]
   /** d(layer parameter)/d(variable): row v holds layers * (1 + parameters) entries, [width, then the medium's own] a layer. */
   directions(variables: Float64Array): Float64Array

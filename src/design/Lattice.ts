@@ -1,0 +1,128 @@
+import type { Job } from '../job/index.js'
+import { type MediumChoice, type Situation, situationOf } from '../model/index.js'
+import { DesignError } from './DesignError.js'
+import { expandLayers, type Slot } from './expandLayers.js'
+import { alloyOf, type Candidate, type Cell, LayerLattice, mediumKey } from './LayerLattice.js'
+import { repaired } from './repair.js'
+import type { Place } from './types.js'
+
+/** A stretch of one medium as it is grown. */
+export interface Stretch extends Cell {
+  readonly id: string
+}
+
+/** The places of a job and what they mean, layer by layer: the ground on which the functions of this folder stand. */
+export class Lattice {
+  readonly layers: readonly LayerLattice[]
+  readonly slots: readonly Slot[]
+  readonly places: readonly Place[]
+  readonly situations: readonly Situation[]
+  /** At most so many different alloys in a stack, those of the leads free. */
+  readonly compositions: number | null
+  /** A stack and its mirror image are one: equal lossless leads and no bias. */
+  readonly reversible: boolean
+  readonly leadAlloys: ReadonlySet<string>
+  /** The lead or material that the layers are strained to; null: none. */
+  readonly strainedTo: MediumChoice | null
+
+  /** Throws DesignError where no stack is makeable, and as resolveMedium does. */
+  constructor(job: Job) {
+    const { stack, growth } = job
+    this.situations = job.conditions.map((condition) => situationOf(job, condition))
+    const { described, slots } = expandLayers(stack)
+    const layers: LayerLattice[] = []
+    let offset = 0
+    for (const spec of described) {
+      const layer = new LayerLattice(spec, offset, this.situations[0], growth.stepNm)
+      offset += layer.places.length
+      layers.push(layer)
+    }
+    this.layers = layers
+    this.slots = slots
+    this.places = layers.flatMap((layer) => layer.places)
+    this.compositions = growth.compositions
+    const { entry, exit } = this.situations[0]
+    const leads = exit === 'hard wall' ? [entry] : [entry, exit]
+    this.leadAlloys = new Set(leads.map(alloyOf).filter((alloy) => alloy !== null))
+    this.reversible =
+      exit !== 'hard wall' && mediumKey(entry) === mediumKey(exit) && job.conditions.every(({ biasV }) => biasV === 0)
+    this.strainedTo = strainedTo(stack.strainedTo, growth.startsAt === 'entry' ? entry : exit)
+    if (!this.feasible(repaired(this, new Int32Array(this.places.length)))) {
+      throw new DesignError(
+        `No stack holds at most ${growth.compositions} different alloys with these compositions. ` +
+          'Raise growth.compositions, or give the layers compositions in common.',
+      )
+    }
+  }
+
+  feasible(assignment: Int32Array): boolean {
+    if (this.compositions === null) return this.layers.every((layer) => layer.cell(assignment) !== null)
+    const alloys = new Set<string>()
+    for (const layer of this.layers) {
+      const cell = layer.cell(assignment)
+      if (cell === null) return false
+      const alloy = this.countedAlloy(cell)
+      if (alloy !== null) alloys.add(alloy)
+    }
+    return alloys.size <= this.compositions
+  }
+
+  /** Every feasible assignment, the last place fastest; one array, reused. */
+  *assignments(): Iterable<Int32Array> {
+    const { places } = this
+    const assignment = new Int32Array(places.length)
+    for (;;) {
+      if (this.feasible(assignment)) yield assignment
+      let place = places.length - 1
+      while (place >= 0 && ++assignment[place] === places[place].choices) assignment[place--] = 0
+      if (place < 0) return
+    }
+  }
+
+  /** The alloy of a cell that counts against the limit; a layer of no width needs none. */
+  countedAlloy({ medium, count }: Cell): string | null {
+    return count > 0 && this.countsAsAlloy(medium) ? medium.alloy : null
+  }
+
+  countsAsAlloy({ alloy }: Candidate): boolean {
+    return alloy !== null && !this.leadAlloys.has(alloy)
+  }
+
+  /** The cells of a feasible assignment. */
+  cells(assignment: Int32Array): Cell[] {
+    return this.layers.map((layer) => {
+      const cell = layer.cell(assignment)
+      if (cell === null) throw new RangeError(`Assignment ${assignment.join(' ')} gives ${layer.spec.id} no width.`)
+      return cell
+    })
+  }
+
+  /** The stack as grown: equal neighbours merged, zero widths dropped. */
+  stretches(assignment: Int32Array): Stretch[] {
+    const cells = this.cells(assignment)
+    const stretches: Stretch[] = []
+    for (const { id, layer } of this.slots) {
+      const { medium, count } = cells[layer]
+      if (count * medium.widths.stepNm === 0) continue
+      const last = stretches.at(-1)
+      if (last?.medium.key !== medium.key) stretches.push({ id, medium, count })
+      else stretches[stretches.length - 1] = merged(last, { id, medium, count })
+    }
+    return stretches
+  }
+}
+
+/** A common step is kept; two steps make one width that is its own step. */
+function merged(a: Stretch, b: Stretch): Stretch {
+  const id = `${a.id}+${b.id}`
+  if (a.medium.widths.stepNm === b.medium.widths.stepNm) return { id, medium: a.medium, count: a.count + b.count }
+  const stepNm = a.count * a.medium.widths.stepNm + b.count * b.medium.widths.stepNm
+  const widths = { first: 1, last: 1, stride: 1, stepNm, monolayers: false }
+  return { id, medium: { ...a.medium, widths }, count: 1 }
+}
+
+function strainedTo(material: string | null, lead: MediumChoice | 'hard wall'): MediumChoice | null {
+  if (material === 'none') return null
+  if (material !== null) return { kind: 'material', material, x: null }
+  return lead === 'hard wall' || lead.kind === 'numbers' ? null : lead
+}

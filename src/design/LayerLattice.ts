@@ -1,0 +1,263 @@
+import type { LayerSpec, MediumOption } from '../job/index.js'
+import { needsX } from '../media/index.js'
+import { type MediumChoice, type ResolvedMedium, resolveMedium, type Situation } from '../model/index.js'
+import { DesignError } from './DesignError.js'
+import type { Place } from './types.js'
+import { type Widths, widthsOf } from './widthsOf.js'
+
+/** A medium that a layer may be of. */
+export interface Candidate {
+  readonly choice: MediumChoice
+  /** Equal for equal media, whatever their names. */
+  readonly key: string
+  /** The key of an alloy that counts against growth.compositions; null for binaries and numbers. */
+  readonly alloy: string | null
+  /** At the first condition. */
+  readonly resolved: ResolvedMedium
+  readonly widths: Widths
+  /** Number of the option and of the value in each list of `parameters`. */
+  readonly digits: readonly number[]
+}
+
+/** A layer with everything chosen. */
+export interface Cell {
+  readonly medium: Candidate
+  readonly count: number
+}
+
+/** The numbers that a medium may be free in, in the order of their places. */
+export const parameters = ['x', 'potential', 'mass', 'alpha'] as const
+
+/**
+ * The choices of one described layer. Its places stand together from `offset` on: the list of materials, the parameters, the
+ * width; each only where there is something to choose. The media are a table over all but the last, filled as it is used, for it
+ * can be large. A parameter's place has as many choices as the longest list among the options; the choices beyond a shorter list
+ * are not feasible.
+ */
+export class LayerLattice {
+  readonly places: readonly Place[]
+  readonly options: readonly MediumOption[]
+  /** Place of the option, of each parameter and of the width; -1 where nothing is to choose. */
+  readonly placeOf: Int32Array
+  private readonly longest: readonly number[]
+  private readonly table = new Map<number, Candidate>()
+  /** Least count over all media. */
+  readonly leastCount: number
+  private readonly stride: number
+
+  constructor(
+    readonly spec: LayerSpec,
+    readonly offset: number,
+    private readonly situation: Situation,
+    private readonly growthStepNm: number | null,
+  ) {
+    this.options = spec.media!
+    this.longest = parameters.map((_, p) => Math.max(...this.options.map((option) => valuesOf(option, p).length)))
+    const places: Place[] = []
+    const add = (what: string, choices: number, ordered: boolean): number =>
+      choices > 1 ? offset + places.push({ name: `${spec.id}.${what}`, choices, ordered }) - 1 : -1
+    const digits = [
+      add('material', this.options.length, false),
+      ...parameters.map((name, p) => add(name, this.longest[p], true)),
+    ]
+    const [first, last, stride] = this.countRange()
+    this.leastCount = first
+    this.stride = stride
+    const width = this.widthIsFixed ? -1 : add('width', (last - first) / stride + 1, true)
+    this.placeOf = Int32Array.from([...digits, width])
+    this.places = places
+  }
+
+  private get widthIsFixed(): boolean {
+    return this.spec.width!.from === this.spec.width!.to
+  }
+
+  /** The layer's medium and count; null where this medium has no such value or width. */
+  cell(assignment: Int32Array): Cell | null {
+    const medium = this.medium(assignment)
+    if (medium === null) return null
+    const { first, last } = medium.widths
+    const count = this.freeCount(assignment) ?? first
+    return count >= first && count <= last ? { medium, count } : null
+  }
+
+  /** The count that the width's place says, allowed or not; null where the width is fixed. */
+  freeCount(assignment: Int32Array): number | null {
+    const place = this.placeOf[widthRole]
+    return place < 0 ? null : this.leastCount + this.stride * assignment[place]
+  }
+
+  medium(assignment: Int32Array): Candidate | null {
+    const { placeOf } = this
+    const option = placeOf[0] < 0 ? 0 : assignment[placeOf[0]]
+    let code = option
+    for (let p = 0; p < parameters.length; p++) {
+      const place = placeOf[p + 1]
+      const digit = place < 0 ? 0 : assignment[place]
+      if (place >= 0 && digit >= valuesOf(this.options[option], p).length) return null
+      code = code * this.longest[p] + digit
+    }
+    return this.table.get(code) ?? this.fill(code)
+  }
+
+  /** Writes the choices of a medium; the width stays. */
+  writeMedium(medium: Candidate, assignment: Int32Array): void {
+    medium.digits.forEach((digit, role) => {
+      if (this.placeOf[role] >= 0) assignment[this.placeOf[role]] = digit
+    })
+  }
+
+  /** Writes the choice of the medium's width that is nearest to `count`. */
+  writeCount({ widths }: Candidate, count: number, assignment: Int32Array): void {
+    const place = this.placeOf[widthRole]
+    if (place < 0) return
+    const { first, last } = widths
+    const nearest = Math.round((count - first) / this.stride)
+    const most = Math.floor((last - first) / this.stride)
+    assignment[place] = (first - this.leastCount) / this.stride + Math.min(Math.max(nearest, 0), most)
+  }
+
+  /** Every medium that an option gives, in the order of the places; those without a width too. */
+  *media(option: number): Iterable<Candidate> {
+    const sizes = parameters.map((_, p) => valuesOf(this.options[option], p).length)
+    const total = sizes.reduce((product, size) => product * size, 1)
+    for (let n = 0; n < total; n++) {
+      let rest = n
+      let code = option
+      let stride = total
+      for (let p = 0; p < parameters.length; p++) {
+        stride /= sizes[p]
+        const digit = Math.floor(rest / stride)
+        rest -= digit * stride
+        code = code * this.longest[p] + digit
+      }
+      yield this.table.get(code) ?? this.fill(code)
+    }
+  }
+
+  /** Media whose widths stand for all of an option's: numbers have no monolayer, so that theirs are all the same. */
+  *widthMedia(option: number): Iterable<Candidate> {
+    for (const medium of this.media(option)) {
+      yield medium
+      if (this.options[option].kind === 'numbers') return
+    }
+  }
+
+  /** This layer's own candidate for a medium that another layer has; the steps must agree, so that counts may be compared. */
+  equalOf({ choice, widths }: Candidate): Candidate | null {
+    for (let option = 0; option < this.options.length; option++) {
+      const digits = digitsOfChoice(this.options[option], choice)
+      if (digits === null) continue
+      const code = digits.reduce((sum, digit, p) => sum * this.longest[p] + digit, option)
+      const own = this.table.get(code) ?? this.fill(code)
+      if (own.widths.stepNm === widths.stepNm) return own
+    }
+    return null
+  }
+
+  /** Whether a count is among the widths of a medium of this layer. */
+  allows({ widths }: Candidate, count: number): boolean {
+    const { first, last, stride } = widths
+    return count >= first && count <= last && (count - first) % stride === 0
+  }
+
+  private fill(code: number): Candidate {
+    const digits = this.digitsOf(code)
+    const choice = choiceOf(this.options[digits[0]], digits.slice(1))
+    const resolved = resolveMedium(choice, this.situation)
+    const widths = widthsOf(this.spec.width!, resolved.monolayerNm, this.growthStepNm)
+    const medium = { choice, key: mediumKey(choice), alloy: alloyOf(choice), resolved, widths, digits }
+    this.table.set(code, medium)
+    return medium
+  }
+
+  private digitsOf(code: number): number[] {
+    const digits = new Array<number>(1 + parameters.length)
+    for (let p = parameters.length - 1; p >= 0; p--) {
+      digits[p + 1] = code % this.longest[p]
+      code = (code - digits[p + 1]) / this.longest[p]
+    }
+    digits[0] = code
+    return digits
+  }
+
+  /** Least and greatest count over all media, and the stride, which they share. */
+  private countRange(): [first: number, last: number, stride: number] {
+    let range: [number, number, number] | null = null
+    for (let option = 0; option < this.options.length; option++) {
+      for (const { widths } of this.widthMedia(option)) {
+        const count = countsOf(widths)
+        if (count === 0) continue
+        const { first, stride } = widths
+        const end = first + stride * (count - 1)
+        range = range ? [Math.min(range[0], first), Math.max(range[1], end), stride] : [first, end, stride]
+      }
+    }
+    if (range) return range
+    const { from, to } = this.spec.width!
+    throw new DesignError(
+      `Layer ${this.spec.id}: ${from}..${to} nm holds no whole step of any of its media. Widen the range, or give a finer step.`,
+    )
+  }
+}
+
+/** Index of the width in `placeOf`, behind the option and the parameters. */
+export const widthRole = 1 + parameters.length
+
+/** The values that an option leaves open for parameter `p`; a single one where it has none. */
+export function valuesOf(option: MediumOption, p: number): readonly number[] {
+  if (option.kind === 'material') return p === 0 && option.x !== null ? option.x : none
+  return p === 0 ? none : p === 1 ? option.potentialEv : p === 2 ? option.massRel : option.alphaPerEv
+}
+
+const none: readonly number[] = [Number.NaN]
+
+/** Equal for equal media; a name given to numbers is no difference. */
+export function mediumKey(choice: MediumChoice): string {
+  if (choice.kind === 'material') return choice.x === null ? choice.material : `${choice.material}(${choice.x})`
+  return `[${choice.potentialEv} ${choice.massRel} ${choice.alphaPerEv}]`
+}
+
+/** The ends of an alloy are binaries. */
+export function alloyOf(choice: MediumChoice): string | null {
+  if (choice.kind !== 'material' || choice.x === null || choice.x === 0 || choice.x === 1) return null
+  return needsX(choice.material) ? mediumKey(choice) : null
+}
+
+/** How many widths there are. */
+export function countsOf({ first, last, stride }: Widths): number {
+  return Math.max(0, Math.floor((last - first) / stride) + 1)
+}
+
+function choiceOf(option: MediumOption, digits: readonly number[]): MediumChoice {
+  if (option.kind === 'material') {
+    const { material, x } = option
+    return { kind: 'material', material, x: x === null ? null : x[digits[0]] }
+  }
+  const { name, potentialEv, massRel, alphaPerEv } = option
+  return {
+    kind: 'numbers',
+    name,
+    potentialEv: potentialEv[digits[1]],
+    massRel: massRel[digits[2]],
+    alphaPerEv: alphaPerEv[digits[3]],
+  }
+}
+
+/** Number of the value in each list, or null where the option does not give this medium. */
+function digitsOfChoice(option: MediumOption, choice: MediumChoice): number[] | null {
+  let digits: number[]
+  if (option.kind === 'material') {
+    if (choice.kind !== 'material' || choice.material !== option.material) return null
+    digits = [option.x === null ? 0 : option.x.indexOf(choice.x!), 0, 0, 0]
+  } else {
+    if (choice.kind !== 'numbers') return null
+    digits = [
+      0,
+      option.potentialEv.indexOf(choice.potentialEv),
+      option.massRel.indexOf(choice.massRel),
+      option.alphaPerEv.indexOf(choice.alphaPerEv),
+    ]
+  }
+  return digits.includes(-1) ? null : digits
+}

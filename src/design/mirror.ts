@@ -1,0 +1,56 @@
+import type { Lattice, Stretch } from './Lattice.js'
+
+/**
+ * The one of a stack and its mirror image that is listed (design 5): at the first place where the two differ, the thicker layer; same
+ * widths: the larger x. The argument itself where reversal changes something, where it is the listed one, and where its mirror image
+ * is not on the lattice.
+ */
+export function canonicalOf(lattice: Lattice, assignment: Int32Array): Int32Array {
+  if (!lattice.reversible || !isBehind(lattice.stretches(assignment))) return assignment
+  return mirrored(lattice, assignment) ?? assignment
+}
+
+/** The described layers that take a layer's place when the stack is reversed, one entry a slot. */
+export function partners({ slots, layers }: Lattice): number[][] {
+  const found: number[][] = layers.map(() => [])
+  slots.forEach(({ layer }, i) => {
+    found[layer].push(slots[slots.length - 1 - i].layer)
+  })
+  return found
+}
+
+/** Whether the reversed stack is listed before this one. */
+function isBehind(stretches: readonly Stretch[]): boolean {
+  for (let i = 0, j = stretches.length - 1; j >= 0; i++, j--) {
+    const [ours, theirs] = [stretches[i], stretches[j]]
+    const thicker = ours.count * ours.medium.widths.stepNm - theirs.count * theirs.medium.widths.stepNm
+    if (Math.abs(thicker) > sameNm) return thicker < 0
+    const [a, b] = [ours.medium, theirs.medium]
+    if (a.key === b.key) continue
+    const [x, y] = [a, b].map(({ choice }) => (choice.kind === 'material' ? (choice.x ?? 0) : choice.potentialEv))
+    return x === y ? a.key < b.key : x < y
+  }
+  return false
+}
+
+const sameNm = 1e-9
+
+function mirrored(lattice: Lattice, assignment: Int32Array): Int32Array | null {
+  const cells = lattice.cells(assignment)
+  const out = new Int32Array(assignment.length)
+  for (const [i, from] of partners(lattice).entries()) {
+    const layer = lattice.layers[i]
+    const { medium, count } = cells[from[0]]
+    const agree = from.every((other) => {
+      const cell = cells[other]
+      return (
+        cell.medium.key === medium.key && cell.count === count && cell.medium.widths.stepNm === medium.widths.stepNm
+      )
+    })
+    const own = agree ? layer.equalOf(medium) : null
+    if (own === null || !layer.allows(own, count)) return null
+    layer.writeMedium(own, out)
+    layer.writeCount(own, count, out)
+  }
+  return out
+}

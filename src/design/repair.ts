@@ -1,0 +1,120 @@
+import type { Lattice } from './Lattice.js'
+import { type Candidate, countsOf, type LayerLattice, parameters, valuesOf } from './LayerLattice.js'
+
+/**
+ * The assignment itself when it is feasible, else a feasible one near it: choices beyond a list's end are taken back to it, widths
+ * go to the nearest of the medium's own, and where the stack holds too many alloys a depth-first search chooses the ones that move
+ * the compositions least. Infeasible only where no feasible assignment was found.
+ */
+export function repaired(lattice: Lattice, assignment: Int32Array): Int32Array {
+  if (lattice.feasible(assignment)) return assignment
+  const out = Int32Array.from(assignment)
+  for (const layer of lattice.layers) withinLists(layer, out)
+  if (!lattice.feasible(out)) limitAlloys(lattice, out)
+  return out
+}
+
+function withinLists(layer: LayerLattice, out: Int32Array): void {
+  const { placeOf, options } = layer
+  const option = options[placeOf[0] < 0 ? 0 : out[placeOf[0]]]
+  for (let p = 0; p < parameters.length; p++) {
+    const place = placeOf[p + 1]
+    if (place >= 0) out[place] = Math.min(out[place], valuesOf(option, p).length - 1)
+  }
+  moveTo(layer, widened(layer, layer.medium(out)!), out)
+}
+
+/** A medium of the same option that has a width at all, the nearest first; the medium itself where it has one. */
+function widened(layer: LayerLattice, medium: Candidate): Candidate {
+  if (countsOf(medium.widths) > 0) return medium
+  const all = layer.options.flatMap((_, option) => [...layer.widthMedia(option)])
+  return nearest(all, medium) ?? medium
+}
+
+/** Chooses a medium, and the width nearest to the one before. */
+function moveTo(layer: LayerLattice, medium: Candidate, out: Int32Array): void {
+  const count = layer.freeCount(out)
+  layer.writeMedium(medium, out)
+  if (count !== null) layer.writeCount(medium, count, out)
+}
+
+interface Step {
+  readonly layer: LayerLattice
+  readonly now: Candidate
+  /** The nearest medium of each alloy that counts. */
+  readonly byAlloy: ReadonlyMap<string, Candidate>
+  /** The nearest medium that counts as none. */
+  readonly free: Candidate | null
+}
+
+/**
+ * Layer by layer, the nearest medium among the alloys already in the stack, or one more alloy while the limit allows it. What is left
+ * once the limit is reached costs no branching, so that there are at most (alloys)^limit leaves; `mostNodes` ends it before.
+ */
+function limitAlloys(lattice: Lattice, out: Int32Array): void {
+  const steps = lattice.layers.map((layer) => stepOf(lattice, layer, layer.medium(out)!))
+  const chosen: Candidate[] = []
+  let best: Candidate[] | null = null
+  let bestCost = Number.POSITIVE_INFINITY
+  let nodes = 0
+  descend(0, 0, new Set())
+  if (best === null) return
+  ;(best as Candidate[]).forEach((medium, i) => {
+    if (medium !== steps[i].now) moveTo(steps[i].layer, medium, out)
+  })
+
+  function descend(i: number, cost: number, alloys: ReadonlySet<string>): void {
+    if (cost >= bestCost || (nodes++ > mostNodes && best !== null)) return
+    if (i === steps.length) {
+      best = [...chosen]
+      bestCost = cost
+      return
+    }
+    const { now, byAlloy, free } = steps[i]
+    const held = [...alloys].map((alloy) => byAlloy.get(alloy)).filter((medium) => medium !== undefined)
+    const old = nearest(free ? [free, ...held] : held, now)
+    const fresh = alloys.size < lattice.compositions! ? [...byAlloy].filter(([alloy]) => !alloys.has(alloy)) : []
+    const branches = fresh.map(([alloy, medium]) => ({
+      medium,
+      alloys: new Set([...alloys, alloy]) as ReadonlySet<string>,
+    }))
+    if (old) branches.push({ medium: old, alloys })
+    branches.sort((a, b) => distance(a.medium, now) - distance(b.medium, now))
+    for (const branch of branches) {
+      chosen[i] = branch.medium
+      descend(i + 1, cost + distance(branch.medium, now), branch.alloys)
+    }
+  }
+}
+
+/** Enough to be exact with two alloys out of a hundred. */
+const mostNodes = 20_000
+
+function stepOf(lattice: Lattice, layer: LayerLattice, now: Candidate): Step {
+  const byAlloy = new Map<string, Candidate>()
+  let free = lattice.countsAsAlloy(now) ? null : now
+  for (let option = 0; option < layer.options.length; option++) {
+    for (const medium of layer.widthMedia(option)) {
+      if (countsOf(medium.widths) === 0) continue
+      if (!lattice.countsAsAlloy(medium)) free = nearest(free ? [free, medium] : [medium], now)
+      else byAlloy.set(medium.alloy!, nearest([byAlloy.get(medium.alloy!) ?? medium, medium], now)!)
+    }
+  }
+  return { layer, now, byAlloy, free }
+}
+
+function nearest(media: readonly Candidate[], to: Candidate): Candidate | null {
+  let best: Candidate | null = null
+  for (const medium of media) {
+    if (countsOf(medium.widths) > 0 && (best === null || distance(medium, to) < distance(best, to))) best = medium
+  }
+  return best
+}
+
+/** Squared change of composition; another material of the list is further than any composition. */
+function distance({ choice: a, digits }: Candidate, { choice: b, digits: digitsB }: Candidate): number {
+  if (digits[0] !== digitsB[0]) return 4
+  if (a.kind === 'numbers' || b.kind === 'numbers') return 0
+  const change = (a.x ?? 0) - (b.x ?? 0)
+  return change * change
+}
