@@ -19,7 +19,7 @@ export interface LayerLabels {
 }
 
 /**
- * `AlGaAs 0.35` over `12 ML` in two level lines where every layer is wide enough for that, else upright and led to their layers. A stack of
+ * `AlGaAs 0.35` over `12 ML` in two level lines where neighbours leave room for that, else upright and led to their layers. A stack of
  * more layers than the picture has room for names none of them: layers.csv does.
  *
  * @param layers from entry to exit, the first at z = 0
@@ -27,8 +27,9 @@ export interface LayerLabels {
  */
 export function layerLabels(layers: readonly LayerReport[], scale: number, width: number): LayerLabels {
   const names = layers.map((layer) => [mediumText(layer.choice), widthText(layer)] as const)
-  const level = layers.every((layer, i) => names[i].every((name) => textWidth(name, size) + 6 <= layer.widthNm * scale))
   const middles = middlesNm(layers)
+  const rooms = names.map((lines) => Math.max(...lines.map((line) => textWidth(line, size))) + 8)
+  const level = rooms.every((room, i) => i === 0 || (rooms[i - 1] + room) / 2 <= (middles[i] - middles[i - 1]) * scale)
   if (level) {
     return {
       height: 34,
