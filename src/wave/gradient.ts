@@ -113,7 +113,7 @@ function startRow(table: MediaTable, stack: WaveStack, first: number, n: number,
   for (let i = 0; i < n; i++) {
     const near = entry * points + first + i
     const far = exit * points + first + i
-    if (!(q[near] > 0)) refuseClosed(first + i, q[near], entry)
+    if (!(q[near] > 0)) refuseClosed(table, first + i, entry)
     const Y = Math.sqrt(q[near]) / mu[near]
     const Yfar = exit >= 0 && q[far] > 0 ? Math.sqrt(q[far]) / mu[far] : 0
     const ar = Y * u1[i] + v2[i]

@@ -1,3 +1,4 @@
+export { type AmplitudesOptions, type AmplitudesOut, amplitudesInto } from './amplitudes.js'
 export { atan2, cos, exp, log, log1p, log10, sin, sinCos } from './elementary.js'
 export { extrema } from './extrema.js'
 export { extremeOver } from './extremeOver.js'

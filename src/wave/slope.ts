@@ -136,7 +136,7 @@ function finish(table: MediaTable, slope: MediaTable, stack: WaveStack, first: n
   for (let i = 0; i < n; i++) {
     const near = entry * points + first + i
     const far = exit * points + first + i
-    if (!(q[near] > 0)) refuseClosed(first + i, q[near], entry)
+    if (!(q[near] > 0)) refuseClosed(table, first + i, entry)
     if (exit < 0 || !(q[far] > 0)) {
       out.T[first + i] = 0
       out.dTdE[first + i] = 0

@@ -69,7 +69,7 @@ function finish(table: MediaTable, near: number, far: number, first: number, n: 
   let worst = 0
   for (let i = 0; i < n; i++) {
     const qn = q[tn + i]
-    if (!(qn > 0)) refuseClosed(first + i, qn, near)
+    if (!(qn > 0)) refuseClosed(table, first + i, near)
     const Y = Math.sqrt(qn) / mu[tn + i]
     const qf = far < 0 ? 0 : q[tf + i]
     const Yfar = qf > 0 ? Math.sqrt(qf) / mu[tf + i] : 0

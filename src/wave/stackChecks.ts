@@ -19,9 +19,12 @@ export function lead(stack: WaveStack, from: Side, near: boolean): number {
   return stack.exit
 }
 
-export function refuseClosed(point: number, q: number, medium: number): never {
+/** For a lead that can send no wave at this point: closed, on its edge, or absorbing. */
+export function refuseClosed(table: MediaTable, point: number, medium: number): never {
+  const t = medium * table.points + point
+  const absorbs = table.qIm !== undefined && table.qIm[t] !== 0
   throw new RangeError(
-    `Point ${point}: q is ${q} /nm² in medium ${medium}, the lead the wave comes from. It must be above 0: take energies above that lead's edge.`,
+    `Point ${point}: q is ${table.q[t]}${absorbs ? ` + ${table.qIm[t]} i` : ''} /nm² in medium ${medium}, the lead the wave comes from. It must be real and above 0: ${absorbs ? 'that lead must not absorb.' : "take energies above that lead's edge."}`,
   )
 }
 
