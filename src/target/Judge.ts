@@ -11,7 +11,9 @@ export interface Judge {
   /** How many parts a peak states, which the fit takes one by one; 0 for the others. */
   readonly parts: number
   judge(landscape: Landscape): Verdict
-  /** Whether the demand is met, without its figures; null for a curve. */
+  /** The energies that decide whether it is met; null for a curve. */
+  readonly rangeEv: readonly [number, number] | null
+  /** Whether the demand is met, from a landscape that spans `rangeEv` at least; null for a curve. */
   met(landscape: Landscape): boolean | null
   /** Writes a residual a part into `residuals` and returns the slopes of each, [width, then the medium's own] a layer. */
   fitParts(landscape: Landscape, residuals: Float64Array): Float64Array[]

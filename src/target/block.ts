@@ -18,6 +18,7 @@ export class BlockJudge implements Judge {
   readonly parts = 0
   readonly id: string
   readonly weight: number
+  readonly rangeEv: readonly [number, number]
   readonly terms: PointTerms
 
   constructor(
@@ -27,6 +28,7 @@ export class BlockJudge implements Judge {
   ) {
     this.id = demand.id
     this.weight = demand.weight
+    this.rangeEv = [demand.pointsEv[0], demand.pointsEv[demand.pointsEv.length - 1]]
     const { below, pointsEv } = demand
     this.terms = {
       energiesEv: pointsEv,
@@ -72,10 +74,8 @@ export class BlockJudge implements Judge {
 
   /** The greatest T that counts, and its energy. */
   private greatest(landscape: Landscape): { energyEv: number; T: number } {
-    const { pointsEv } = this.demand
-    const range = [pointsEv[0], pointsEv[pointsEv.length - 1]] as const
     const counted = landscape.extrema.map((e) => ({ ...e, T: e.T * this.factor(e) }))
-    return extremeOver(landscape.system, range, 'greatest', counted)
+    return extremeOver(landscape.system, this.rangeEv, 'greatest', counted)
   }
 
   private factor({ kind, poleWidthEv }: Extremum): number {

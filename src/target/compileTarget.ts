@@ -30,6 +30,8 @@ class CompiledTarget implements Target {
   private readonly weights: readonly number[]
   private readonly spectrum: PointSpectrum
   private readonly windowEv: readonly [number, number]
+  /** The part of the window that decides what is met. */
+  private readonly limitsEv: readonly [number, number]
   private readonly onlyCurves: boolean
   private readonly landscapes = new WeakMap<WaveSystem, Landscape>()
 
@@ -43,6 +45,11 @@ class CompiledTarget implements Target {
     this.weights = this.judges.map(({ weight }) => weight)
     this.spectrum = new PointSpectrum(points)
     this.windowEv = [0, 2 * scanEv[1] - scanEv[0]]
+    const ranges = this.judges.flatMap(({ rangeEv }) => (rangeEv ? [rangeEv] : []))
+    this.limitsEv = [
+      Math.max(this.windowEv[0], Math.min(...ranges.map(([from]) => from))),
+      Math.min(this.windowEv[1], Math.max(...ranges.map(([, to]) => to))),
+    ]
     this.onlyCurves = demands.every(({ kind }) => kind === 'curve')
     const rows = this.judges.map(({ terms, parts }) => parts + (terms?.energiesEv.length ?? 0))
     this.fitSize = conditions.length * rows.reduce((sum, size) => sum + size, 0)
@@ -67,7 +74,7 @@ class CompiledTarget implements Target {
   }
 
   meets(systems: readonly WaveSystem[]): boolean[] {
-    const landscapes = systems.map((system) => this.landscape(system))
+    const landscapes = systems.map((system) => new Landscape(system, this.spectrum.at(system).slice(), this.limitsEv))
     return this.judges.map((judge) => landscapes.every((landscape) => judge.met(landscape) !== false))
   }
 

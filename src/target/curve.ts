@@ -12,6 +12,7 @@ const floor = 1e-30
 export class CurveJudge implements Judge {
   readonly kind = 'curve'
   readonly parts = 0
+  readonly rangeEv = null
   readonly id: string
   readonly weight: number
   readonly terms: PointTerms

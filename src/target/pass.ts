@@ -11,6 +11,7 @@ export class PassJudge implements Judge {
   readonly parts = 0
   readonly id: string
   readonly weight: number
+  readonly rangeEv: readonly [number, number]
   readonly terms: PointTerms
 
   constructor(
@@ -19,6 +20,7 @@ export class PassJudge implements Judge {
   ) {
     this.id = demand.id
     this.weight = demand.weight
+    this.rangeEv = [demand.pointsEv[0], demand.pointsEv[demand.pointsEv.length - 1]]
     const { above, pointsEv } = demand
     this.terms = {
       energiesEv: pointsEv,
@@ -52,8 +54,7 @@ export class PassJudge implements Judge {
   }
 
   private least({ system, extrema }: Landscape): { energyEv: number; T: number } {
-    const { pointsEv } = this.demand
-    return extremeOver(system, [pointsEv[0], pointsEv[pointsEv.length - 1]], 'least', extrema)
+    return extremeOver(system, this.rangeEv, 'least', extrema)
   }
 
   private lack(T: number): number {

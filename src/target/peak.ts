@@ -14,10 +14,14 @@ export class PeakJudge implements Judge {
   readonly id: string
   readonly weight: number
   readonly parts: number
+  readonly rangeEv: readonly [number, number]
 
   constructor(private readonly demand: PeakDemand) {
     this.id = demand.id
     this.weight = demand.weight
+    // A width that is cut at twice its limit beyond the last allowed position is too wide for certain.
+    const reach = demand.withinEv + 2 * (demand.fwhmEv?.[1] ?? demand.withinEv)
+    this.rangeEv = [demand.energyEv - reach, demand.energyEv + reach]
     this.parts = 1 + (demand.fwhmEv ? 1 : 0) + (demand.height === null ? 0 : 1)
   }
 

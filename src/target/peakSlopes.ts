@@ -21,15 +21,23 @@ export interface PeakSlopes {
  * moves by half of the even part of d(ln T)/dp, as for a symmetric resonance.
  */
 export function peakSlopes(landscape: Landscape, peak: PeakFigures): PeakSlopes {
-  const { energyEv, lowEv, highEv, fwhmEv } = peak
+  const { energyEv, fwhmEv } = peak
+  const [from, to] = landscape.windowEv
+  const lowCut = peak.lowEv <= from
+  const highCut = peak.highEv >= to
+  // A side that is cut may end where a lead closes and T has no slope.
+  const lowEv = lowCut ? energyEv : peak.lowEv
+  const highEv = highCut ? energyEv : peak.highEv
   const n = landscape.layerParameters
-  const step = Math.max(1e-3 * fwhmEv, stepEv)
+  const side = Math.min(energyEv - peak.lowEv, peak.highEv - energyEv)
+  const step = Math.min(Math.max(2e-3 * side, stepEv), (energyEv - from) / 4)
   const around = [-2, -1, 1, 2].map((k) => energyEv + k * step)
   const { T, gradient } = landscape.gradient([...around, energyEv, lowEv, highEv])
   const slope = landscape.slope([...around, lowEv, highEv])
   const second = differences.reduce((sum, d, e) => sum + (d * slope[e]) / T[e], 0)
   const narrow = fwhmEv < narrowestEv
-  const [low, high] = [4, 5].map((i) => (isCut(landscape, peak, i) ? 0 : 1 / slope[i]))
+  const low = lowCut ? 0 : 1 / slope[4]
+  const high = highCut ? 0 : 1 / slope[5]
   const slopes = { energy: new Float64Array(n), height: new Float64Array(n), fwhm: new Float64Array(n) }
   for (let k = 0; k < n; k++) {
     const mixed = differences.reduce((sum, d, e) => sum + (d * gradient[e * n + k]) / T[e], 0)
@@ -50,8 +58,3 @@ const differences = [1, -8, 8, -1]
 
 const stepEv = 1e-7
 const narrowestEv = 1e-12
-
-/** Slope 4 belongs to the low side, 5 to the high one. */
-function isCut({ windowEv }: Landscape, { lowEv, highEv }: PeakFigures, i: number): boolean {
-  return i === 4 ? lowEv <= windowEv[0] : highEv >= windowEv[1]
-}

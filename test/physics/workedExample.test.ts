@@ -1,6 +1,7 @@
 import { describe, expect, test } from 'vitest'
+import { growthErrors, limitMargin, marginOf } from '../../src/growth/index.js'
 import { compileTarget } from '../../src/target/index.js'
-import { layersOf, spec, systemsOf } from '../target/coldCollector.js'
+import { growth, layersOf, situation, spec, systemsOf } from '../target/coldCollector.js'
 
 // The project's worked example: evaluated from the contract alone in 30-digit arithmetic by a script that shares nothing with
 // this engine. Peak and widths in meV. 1e-7 relative for merit and residuals, 1e-5 for margins.
@@ -93,12 +94,45 @@ describe('the worked example', () => {
     expect(target.pointMerit(systems)).toBeLessThanOrEqual(merit)
   })
 
+  test.each(rows.filter(({ margin }) => margin !== null))('AlGaAs($x) $ml has its margin', ({ x, ml, margin }) => {
+    const layers = layersOf(x, ml)
+    const systems = systemsOf(layers)
+    const limits = target.limits(systems, target.evaluate(systems))
+    close(marginOf(limits, growthErrors(layers, situation, growth)), margin!, 1e-5)
+  })
+
+  test('the margins of its first row are those listed limit by limit', () => {
+    const layers = layersOf(0.35, [12, 18, 12])
+    const systems = systemsOf(layers)
+    const limits = target.limits(systems, target.evaluate(systems))
+    const errors = growthErrors(layers, situation, growth)
+    const listed = [
+      ['d1', 'lowest energy', 1.7082],
+      ['d1', 'highest energy', 1.79952],
+      ['d1', 'least fwhm', 1.81545],
+      ['d1', 'greatest fwhm', 10.3313],
+      // A symmetric peak has no first-order loss of height.
+      ['d1', 'height', 99],
+      ['d2', 'greatest T', 8.89998],
+      ['d3', 'greatest T', 5.41992],
+    ] as const
+    expect(limits.map(({ demand, part }) => [demand, part])).toEqual(listed.map(([demand, part]) => [demand, part]))
+    for (const [i, limit] of limits.entries()) {
+      close(Math.min(99, limitMargin(limit, errors)), listed[i][2], 1e-5)
+    }
+    // The page says 110 meV for the second; its greatest T, 0.005054526586, and its margin are those at 200 meV, as here.
+    const { demands } = target.evaluate(systems)
+    expect(demands.slice(1).map(({ extremeEv }) => extremeEv)).toEqual([0.06, 0.2])
+  })
+
   test('exactly eight of the 630 stacks of its lattice meet all limits, in both alloys', () => {
     const met: string[] = []
     for (const x of [0.25, 0.35]) {
       for (let barrier = 6; barrier <= 20; barrier++) {
         for (let well = 10; well <= 30; well++) {
           const systems = systemsOf(layersOf(x, [barrier, well, barrier]))
+          const { demands } = target.evaluate(systems)
+          expect(target.meets(systems)).toEqual(demands.map((demand) => demand.met))
           if (target.verdict(systems).met) met.push(`${x} ${barrier} ${well}`)
         }
       }
