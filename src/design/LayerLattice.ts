@@ -84,7 +84,12 @@ export class LayerLattice {
   /** The count that the width's place says, allowed or not; null where the width is fixed. */
   freeCount(assignment: Int32Array): number | null {
     const place = this.placeOf[widthRole]
-    return place < 0 ? null : this.leastCount + this.stride * assignment[place]
+    return place < 0 ? null : this.countAt(assignment[place])
+  }
+
+  /** The count that a choice of the width's place means. */
+  countAt(choice: number): number {
+    return this.leastCount + this.stride * choice
   }
 
   medium(assignment: Int32Array): Candidate | null {

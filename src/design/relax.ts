@@ -39,6 +39,7 @@ class RelaxedStack implements Relaxed {
   readonly start: Float64Array
   readonly lower: Float64Array
   readonly upper: Float64Array
+  readonly place: Int32Array
   private readonly cells: readonly Cell[]
   private readonly variables: readonly Variable[]
 
@@ -51,6 +52,16 @@ class RelaxedStack implements Relaxed {
     this.start = Float64Array.from(this.variables, ({ start }) => start)
     this.lower = Float64Array.from(this.variables, ({ lower }) => lower)
     this.upper = Float64Array.from(this.variables, ({ upper }) => upper)
+    this.place = Int32Array.from(this.variables, ({ layer, what }) => lattice.layers[layer].placeOf[what + 1])
+  }
+
+  valueOf(variable: number, choice: number): number {
+    const { layer, what, unit } = this.variables[variable]
+    const { medium } = this.cells[layer]
+    const lattice = this.lattice.layers[layer]
+    if (what !== width) return (valuesOf(lattice.options[medium.digits[0]], what)[choice] ?? Number.NaN) / unit
+    const count = lattice.countAt(choice)
+    return lattice.allows(medium, count) ? count / unit : Number.NaN
   }
 
   systems(values: Float64Array): WaveSystem[] {

@@ -52,6 +52,10 @@ export interface Relaxed {
   readonly start: Float64Array
   readonly lower: Float64Array
   readonly upper: Float64Array
+  /** The place of each variable. */
+  readonly place: Int32Array
+  /** A variable's value at a choice of its place; NaN where the medium of the stack does not have it. */
+  valueOf(variable: number, choice: number): number
   /** Rows are the layers as written, none merged or dropped. */
   systems(variables: Float64Array): WaveSystem[]
   /** d(layer parameter)/d(variable): row v holds layers * (1 + parameters) entries, [width, then the medium's own] a layer. */

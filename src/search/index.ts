@@ -1,1 +1,3 @@
+export { Archive } from './Archive.js'
+export { runUnit } from './runUnit.js'
 export type * from './types.js'

@@ -4,10 +4,14 @@ import type { Score } from '../target/index.js'
 export interface SearchProblem {
   readonly places: readonly { readonly choices: number; readonly ordered: boolean }[]
   feasible(assignment: Int32Array): boolean
+  /** The assignment itself when it is feasible, else a feasible one near it. */
+  repair(assignment: Int32Array): Int32Array
   /** The assignment under which a stack is listed, for stacks that are one physical object. */
   canonical(assignment: Int32Array): Int32Array
   /** A lower bound of the merit that costs little. */
   bound(assignment: Int32Array): number
+  /** Whether a stack of this bound can't come before one of this score. */
+  outOfReach(bound: number, score: Score): boolean
   score(assignment: Int32Array): Score
   /** Negative when a comes first. */
   compare(a: Score, b: Score): number
@@ -20,6 +24,10 @@ export interface RelaxedProblem {
   readonly start: Float64Array
   readonly lower: Float64Array
   readonly upper: Float64Array
+  /** The place of each variable. */
+  readonly place: Int32Array
+  /** A variable's value at a choice of its place; NaN where it has none. */
+  valueOf(variable: number, choice: number): number
   /** Writes residuals and `jacobian[i * variables + v]`. */
   evaluate(variables: Float64Array, residuals: Float64Array, jacobian: Float64Array): void
   snap(variables: Float64Array): Int32Array

@@ -1,0 +1,93 @@
+import { type Design, designOf } from '../design/index.js'
+import { growthErrors, marginOf } from '../growth/index.js'
+import type { Job } from '../job/index.js'
+import type { RelaxedProblem, SearchProblem } from '../search/index.js'
+import { compareScores, compileTarget, type Score, type Target } from '../target/index.js'
+import type { WaveSystem } from '../wave/index.js'
+
+/** A job as the rooms see it: places and numbers for the search, and what they mean. */
+export interface BoundJob {
+  readonly problem: SearchProblem
+  readonly design: Design
+  readonly target: Target
+}
+
+/** Binds the rooms to a job. Throws as designOf does. */
+export function problemOf(job: Job): BoundJob {
+  const design = designOf(job)
+  const target = compileTarget(job)
+  const curves = job.demands.filter(({ kind }) => kind === 'curve').length
+  const onlyCurves = curves === job.demands.length
+  const limitsAndGoals = curves > 0 && !onlyCurves
+  const problem: SearchProblem = {
+    places: design.places,
+    feasible: (assignment) => design.feasible(assignment),
+    repair: (assignment) => design.repair(assignment),
+    canonical: (assignment) => design.canonical(assignment),
+    bound: (assignment) => target.pointMerit(design.systems(assignment)),
+    // Beside a goal, a stack that meets the limits comes before one that does not, whatever the merits.
+    outOfReach: (bound, score) => (score.met || !limitsAndGoals) && bound > score.merit * (1 + 1e-9) + 1e-9,
+    score: (assignment) => {
+      const systems = design.systems(assignment)
+      const { met, merit } = target.verdict(systems)
+      const margin = met && !onlyCurves ? leastMargin({ design, target }, job, assignment, systems) : null
+      return new StackScore(met, merit, margin, design.totalNm(assignment), assignment, design)
+    },
+    compare: compareScores(job),
+    relax: (assignment) => relax(design, target, assignment),
+  }
+  return { problem, design, target }
+}
+
+/** What the order compares of a stack; the id, a hash that few comparisons need, when it is asked for. */
+class StackScore implements Score {
+  private readonly assignment: Int32Array
+  private knownId: string | null = null
+
+  constructor(
+    readonly met: boolean,
+    readonly merit: number,
+    readonly margin: number | null,
+    readonly totalNm: number,
+    assignment: Int32Array,
+    private readonly design: Design,
+  ) {
+    this.assignment = Int32Array.from(assignment)
+  }
+
+  get id(): string {
+    this.knownId ??= this.design.id(this.assignment)
+    return this.knownId
+  }
+}
+
+/** The least over the conditions, each with the errors of growth as they change the media there. */
+function leastMargin(
+  { design, target }: Pick<BoundJob, 'design' | 'target'>,
+  job: Job,
+  assignment: Int32Array,
+  systems: readonly WaveSystem[],
+): number | null {
+  const layers = design.layers(assignment)
+  const evaluation = target.evaluate(systems)
+  const margins = systems.map((system, i) =>
+    marginOf(target.limits([system], evaluation), growthErrors(layers, design.situations[i], job.growth)),
+  )
+  return margins.reduce((least, margin) => (least === null || margin === null ? null : Math.min(least, margin)))
+}
+
+function relax(design: Design, target: Target, assignment: Int32Array): RelaxedProblem {
+  const relaxed = design.relax(assignment)
+  const variables = relaxed.start.length
+  return {
+    residuals: target.fitSize,
+    start: relaxed.start,
+    lower: relaxed.lower,
+    upper: relaxed.upper,
+    place: relaxed.place,
+    valueOf: (variable, choice) => relaxed.valueOf(variable, choice),
+    evaluate: (values, residuals, jacobian) =>
+      target.fit(relaxed.systems(values), relaxed.directions(values), variables, residuals, jacobian),
+    snap: (values) => relaxed.snap(values),
+  }
+}
