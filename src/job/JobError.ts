@@ -25,7 +25,7 @@ export class JobError extends Error {
 }
 
 /** More than this many are a broken file, not a list to work through. */
-const shown = 30
+const shown = 100
 
 function listed(problems: readonly JobProblem[]): string {
   const messages = problems.slice(0, shown).map((problem) => problem.message)

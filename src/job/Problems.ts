@@ -12,6 +12,11 @@ export class Problems {
     return this.list.length
   }
 
+  /** Nobody reads on after so many, and each costs a search through the text. */
+  get full(): boolean {
+    return this.list.length >= 1000
+  }
+
   /** At the value of a path, or at what should hold it. */
   add(path: Path, rule: string, remedy: string): void {
     const written = this.source.written(path)
@@ -24,11 +29,13 @@ export class Problems {
   }
 
   addAt(span: Span, rule: string, remedy: string, value?: string): void {
+    if (this.full) return
     this.list.push({ problem: problemAt(this.source, span, rule, remedy, value), order: span.start })
   }
 
   /** In a file that the job names at `path`. */
   addIn(source: Source, span: Span, rule: string, remedy: string, path: Path): void {
+    if (this.full) return
     this.list.push({ problem: problemAt(source, span, rule, remedy), order: this.source.span(path).start })
   }
 
@@ -41,7 +48,9 @@ export class Problems {
   /** Throws everything found so far, in the order of the file. */
   throwIfAny(): void {
     if (this.list.length === 0) return
-    const sorted = [...this.list].sort((a, b) => a.order - b.order)
+    // The parts of an alias are read once for each place that it stands in.
+    const once = new Map(this.list.map((entry) => [entry.problem.message, entry]))
+    const sorted = [...once.values()].sort((a, b) => a.order - b.order)
     throw new JobError(sorted.map(({ problem }) => problem))
   }
 }

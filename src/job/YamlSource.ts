@@ -6,6 +6,7 @@ export type Path = readonly (string | number)[]
 export class YamlSource implements Source {
   private readonly values = new Map<string, Span>()
   private readonly keys = new Map<string, Span>()
+  private readonly parts = new Map<string, number>()
 
   constructor(
     readonly file: string,
@@ -14,7 +15,15 @@ export class YamlSource implements Source {
 
   record(path: Path, value: Span, key?: Span): void {
     this.values.set(id(path), value)
-    if (key) this.keys.set(id(path), key)
+    if (!key) return
+    // An alias is recorded before and after what it stands for.
+    if (!this.keys.has(id(path))) this.parts.set(id(path.slice(0, -1)), this.keyCount(path.slice(0, -1)) + 1)
+    this.keys.set(id(path), key)
+  }
+
+  /** How many keys the map at a path was written with. */
+  keyCount(path: Path): number {
+    return this.parts.get(id(path)) ?? 0
   }
 
   /** The value at a path, else what would hold it. */
@@ -27,6 +36,11 @@ export class YamlSource implements Source {
   /** The key at a path, else its value. */
   keySpan(path: Path): Span {
     return this.keys.get(id(path)) ?? this.span(path)
+  }
+
+  /** Takes a misspelt key for the one that was meant, so that it is not missed as well. */
+  takeFor(path: Path, span: Span): void {
+    this.keys.set(id(path), span)
   }
 
   /** Whether the job says anything there, right or wrong. */

@@ -21,7 +21,9 @@ type Issue = z.core.$ZodIssue
 export function checkShape(value: unknown, problems: Problems): Loose<JobAsWritten> {
   const result = jobFormat.safeParse(value)
   if (!result.success) {
-    for (const issue of result.error.issues) report(issue, issue.path as Path, value, problems)
+    // Misspelt keys first: what they were meant for is not missing.
+    const unknownFirst = [...result.error.issues].sort((a, b) => order(a) - order(b))
+    for (const issue of unknownFirst) report(issue, issue.path as Path, value, problems)
   }
   return (value ?? {}) as Loose<JobAsWritten>
 }
@@ -30,7 +32,8 @@ function report(issue: Issue, path: Path, root: unknown, problems: Problems): vo
   if (issue.code === 'invalid_union') {
     const branch = closest(issue.errors, at(root, path))
     if (branch) {
-      for (const inner of branch) report(inner, [...path, ...(inner.path as Path)], root, problems)
+      for (const inner of [...branch].sort((a, b) => order(a) - order(b)))
+        report(inner, [...path, ...(inner.path as Path)], root, problems)
       return
     }
   }
@@ -41,7 +44,7 @@ function report(issue: Issue, path: Path, root: unknown, problems: Problems): vo
     }
     return
   }
-  const label = path.length > 0 ? String(path[path.length - 1]) : 'the job'
+  const label = labelOf(path)
   const missing = !has(root, path)
   if (missing) {
     // A value that was taken out earlier has its problem already.
@@ -56,8 +59,12 @@ function report(issue: Issue, path: Path, root: unknown, problems: Problems): vo
   else if (issue.code === 'invalid_value') oneOf(issue.values, label, path, problems)
   else if (issue.code === 'invalid_type')
     problems.add(path, ...wrongType(label, issue.expected, written, problems.quoted(path)))
-  else problems.add(path, `${label} ${problems.quoted(path)} does not fit.`, `Write ${example(label)}.`)
+  else problems.add(path, ...wrongType(label, '', written, problems.quoted(path)))
   remove(root, path)
+}
+
+function order(issue: Issue): number {
+  return issue.code === 'unrecognized_keys' ? 0 : 1
 }
 
 /** The branch of a union that the writer most likely meant: of the right type, then with the fewest complaints. */
@@ -73,9 +80,12 @@ function closest(branches: readonly (readonly Issue[])[], value: unknown): reado
 }
 
 function unknownKey(path: Path, known: readonly string[], problems: Problems): void {
+  if (problems.full) return
   const key = String(path[path.length - 1])
   const near = nearest(key, known)
   const spaced = known.find((name) => name.replaceAll(/[ -]/g, '') === key.toLowerCase().replaceAll(/[ _-]/g, ''))
+  const meant = spaced ?? near[0]
+  if (meant) problems.source.takeFor([...path.slice(0, -1), meant], problems.source.keySpan(path))
   const remedy = (spaced ?? near[0]) ? `Did you mean "${spaced ?? near[0]}"?` : `Known here: ${known.join(', ')}.`
   problems.addAtKey(path, `Unknown key "${shortened(key)}"${inside(path)}.`, remedy)
 }
@@ -98,8 +108,8 @@ function oneOf(values: readonly unknown[], label: string, path: Path, problems: 
 
 function wrongType(label: string, expected: string, value: unknown, quoted: string): [string, string] {
   const is = Array.isArray(value) ? 'a list' : typeof value === 'object' ? 'a map' : `${quoted}`
-  const what = names[expected] ?? expected
-  return [`${label} is ${is}, where ${what} is expected.`, `Write ${example(label)}.`]
+  const what = Object.hasOwn(names, expected) ? `where ${names[expected]} is expected` : 'which does not fit here'
+  return [`${label} is ${is}, ${what}.`, `Write ${example(label)}.`]
 }
 
 const names: Record<string, string> = {
@@ -117,6 +127,23 @@ const examples: Record<string, string> = {
   name: '"name: my-filter"',
   kind: '"kind: electron"',
   note: '"note: some text"',
+  temperature: '"temperature: 77 K"',
+  peak: '"peak: 80 meV"',
+  fwhm: '"fwhm: 1..4 meV"',
+  pass: '"pass: 78..82 meV"',
+  above: '"above: 0.8"',
+  block: '"block: 5..60 meV"',
+  below: '"below: 2e-2"',
+  potential: '"potential: 0.2 eV"',
+  mass: '"mass: 0.09"',
+  alpha: '"alpha: 1.2 /eV"',
+  like: '"like: outer", the id of another layer',
+  id: '"id: outer"',
+  growth: '"growth:" with sources and spread',
+  search: '"search: { effort: standard, seed: 1 }"',
+  deliver: '"deliver: { candidates: 10 }"',
+  step: '"step: 0.1 nm"',
+  resolution: '"resolution: 0.01 meV"',
   stack: '"stack:" with entry, layers and exit',
   target: '"target:" with scan and demands',
   entry: '"entry: GaAs"',
@@ -142,11 +169,22 @@ const examples: Record<string, string> = {
   compositions: '"compositions: 1"',
   sources: '"sources: { Ga: 0.70 ML/s, Al: 0.30 ML/s }"',
   spread: '"spread: { rate: 1 %, layer: 0.5 ML, x: 0.005 }"',
+  'each of layers': '"- { material: GaAs, width: 10..30 ML }"',
+  'each of period': '"- { material: GaAs, width: 10..30 ML }"',
+  'each of demands': '"- { peak: 80 meV, within: 5 meV }"',
+  'each of pick': 'one of the choices',
   media: '"media:" with one "name: { potential: 0.2 eV, mass: 0.09 }" a medium',
 }
 
 function example(label: string): string {
   return Object.hasOwn(examples, label) ? examples[label] : `a value for "${label}"`
+}
+
+/** The key of a value; of an item of a list, the list's. */
+function labelOf(path: Path): string {
+  const last = path[path.length - 1]
+  if (typeof last === 'string') return last
+  return last === undefined ? 'the job' : `each of ${labelOf(path.slice(0, -1))}`
 }
 
 /** ` in target.demands`, or nothing at the top: line and column tell which of a list. */

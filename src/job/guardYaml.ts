@@ -31,7 +31,7 @@ export function guardYaml(text: string): { span: Span; rule: string; remedy: str
   return null
 }
 
-export const most = { tokens: 60_000, depth: 40, indent: 160 }
+export const most = { tokens: 60_000, depth: 40, indent: 160, aliases: 100 }
 
 function refusal(span: Span, rule: string, fact: string) {
   return { span, rule: `${rule}; ${fact}.`, remedy: 'Is this the right file?' }

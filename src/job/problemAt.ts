@@ -21,7 +21,8 @@ export function problemAt(source: Source, span: Span, rule: string, remedy: stri
   const line = countLines(text, lineStart)
   const column = start - lineStart + 1
   const end = Math.max(start + 1, Math.min(span.end, lineEnd))
-  const head = `${file}:${line}:${column}  ${rule} ${remedy}`.trimEnd()
+  const head = `${file}:${line}:${column}  ${rule} ${remedy}`
+  const excerpt = text.slice(lineStart, lineEnd)
   return {
     file,
     line,
@@ -29,7 +30,7 @@ export function problemAt(source: Source, span: Span, rule: string, remedy: stri
     value: value ?? shortened(text.slice(start, Math.min(span.end, lineEnd))),
     rule,
     remedy,
-    message: `${head}\n${underlined(text.slice(lineStart, lineEnd), start - lineStart, end - lineStart)}`,
+    message: excerpt.trim() === '' ? head : `${head}\n${underlined(excerpt, start - lineStart, end - lineStart)}`,
   }
 }
 

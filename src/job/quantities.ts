@@ -31,7 +31,7 @@ interface Dimension {
 const lengths = { nm: 0, um: 3, '\u00b5m': 3, '\u03bcm': 3, mm: 6, pm: -3, '\u00c5': -1, '\u212b': -1, angstrom: -1 }
 
 export const dimensions = {
-  energy: { units: { eV: 0, meV: -3 }, examples: { single: '80 meV', range: '5..200 meV' } },
+  energy: { units: { meV: -3, eV: 0 }, examples: { single: '80 meV', range: '5..200 meV' } },
   nonparabolicity: {
     units: { '/eV': 0, '1/eV': 0 },
     examples: { single: '1.2 /eV', range: '0.8..1.2 /eV step 0.1 /eV' },
@@ -156,6 +156,8 @@ function withUnits(text: string, name: DimensionName, accepted: readonly string[
   if (name === 'width' && !text.includes('step')) {
     return `Write "${text} ML" or "${text.replace(new RegExp(number, 'g'), inNm)} nm".`
   }
+  if (name === 'percent' && single.test(text))
+    return `Write "${text} %", or "${shifted(text, 2)} %" if it is a fraction.`
   const [before, step] = text.split(/\s+step\s+/)
   const written = accepted.slice(0, 2).map((unit) => `"${before} ${unit}${step ? ` step ${step} ${unit}` : ''}"`)
   return `Write ${written.join(' or ')}.`

@@ -29,10 +29,11 @@ export function readMedia(media: Loose<JobAsWritten>['media'], reader: Reader): 
         `"${shortened(name)}" is no name of a medium.`,
         'Use letters, digits and dashes, a letter first.',
       )
-    } else if (isMaterial(name)) {
-      reader.problems.addAtKey(path, `${name} is a built-in material.`, `Choose another name, like "my-${name}".`)
     }
-    found.set(name, numbers === undefined ? null : readNumbers(numbers, path, name, reader))
+    const medium = numbers === undefined ? null : readNumbers(numbers, path, name, reader)
+    if (isMaterial(name)) {
+      reader.problems.addAtKey(path, `${name} is a built-in material.`, `Choose another name, like "my-${name}".`)
+    } else found.set(name, medium)
   }
   return found
 }
@@ -40,8 +41,10 @@ export function readMedia(media: Loose<JobAsWritten>['media'], reader: Reader): 
 /** A medium by numbers; every number may be a range with a step. Null where one is missing or wrong. */
 export function readNumbers(numbers: Numbers, path: Path, name: string | null, reader: Reader): NumbersOption | null {
   const { problems } = reader
+  // A key that was refused or unknown may have been meant for one of them.
+  const reported = problems.source.keyCount(path) > Object.keys(numbers).length
   for (const key of ['potential', 'mass'] as const) {
-    if (problems.source.has([...path, key])) continue
+    if (reported || problems.source.has([...path, key])) continue
     const what = key === 'mass' ? 'mass: 0.09' : 'potential: 0.2 eV'
     problems.add([...path, key], `"${key}" is missing: a medium by numbers needs potential and mass.`, `Add "${what}".`)
   }

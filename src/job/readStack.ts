@@ -69,7 +69,7 @@ export function readStack(
   }
 
   function readItem(item: Item, path: Path): StackItem {
-    const form = formOf(path)
+    const form = formOf(item, path)
     for (const key of Object.keys(item)) {
       if (form === null || forms[form].includes(key)) continue
       problems.addAtKey([...path, key], `"${key}" has no place in ${meaning[form]}.`, misplaced(form, key))
@@ -211,13 +211,14 @@ export function readStack(
     }
   }
 
-  function formOf(path: Path): Form | null {
+  function formOf(item: Item, path: Path): Form | null {
     const stated = (key: string) => problems.source.has([...path, key])
     if (stated('like')) return 'like'
     if (stated('period') || stated('repeat')) return 'period'
     if (stated('material')) return 'material'
     if (stated('potential') || stated('mass') || stated('alpha')) return 'numbers'
-    if (stated('index') || stated('extinction')) return null
+    // A key that was refused or unknown may have said it.
+    if (problems.source.keyCount(path) > Object.keys(item).length) return null
     problems.add(
       path,
       'This layer says nothing of what it is made of.',

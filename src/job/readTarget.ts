@@ -1,5 +1,5 @@
 import type { Loose } from './checkShape.js'
-import type { Demand } from './job.js'
+import type { CurveRow, Demand } from './job.js'
 import { shortened } from './problemAt.js'
 import { parseLevel, pointsOf, type Quantity } from './quantities.js'
 import { isComplaint, type Reader } from './Reader.js'
@@ -18,6 +18,8 @@ type Written = Loose<JobAsWritten['target']['demands'][number]>
 
 const defaultResolutionEv = 1e-5
 const defaultPoints = 64
+const mostDemands = 256
+const mostTables = 16
 
 /** Scan and demands; every demand has to lie within the scan. */
 export function readTarget(target: Target, tables: Tables, reader: Reader): ReadTarget {
@@ -43,12 +45,21 @@ export function readTarget(target: Target, tables: Tables, reader: Reader): Read
       'Write at least one, like "- { peak: 80 meV, within: 5 meV }".',
     )
   }
+  if (written && written.length > mostDemands) {
+    problems.addAtKey(
+      ['target', 'demands'],
+      `There are more than ${mostDemands} demands.`,
+      'A "curve" holds many points in one demand.',
+    )
+    return { scanEv: within && [within.from, within.to], resolutionEv, demands: [] }
+  }
   const demands: Demand[] = []
+  const curves = new Map<string, readonly CurveRow[] | null>()
   const ids = new Set<string>()
   written?.forEach((demand, i) => {
     if (demand === undefined) return
     const path = ['target', 'demands', i]
-    const read = readDemand(demand, path, `d${i + 1}`, within, tables, reader)
+    const read = readDemand(demand, path, `d${i + 1}`, within, curveOf, reader)
     if (demand.id !== undefined && ids.has(demand.id)) {
       problems.add(
         [...path, 'id'],
@@ -60,6 +71,19 @@ export function readTarget(target: Target, tables: Tables, reader: Reader): Read
     if (read) demands.push(read)
   })
   return { scanEv: within && [within.from, within.to], resolutionEv, demands }
+
+  /** A table may stand in several demands; it is read once. */
+  function curveOf(name: string, path: Path): readonly CurveRow[] | null {
+    const known = curves.get(name)
+    if (known !== undefined) return known
+    if (curves.size >= mostTables) {
+      problems.add(path, `The job names more than ${mostTables} tables.`, 'Join some of them.')
+      return null
+    }
+    const rows = readCurve(name, path, within, tables, reader)
+    curves.set(name, rows)
+    return rows
+  }
 }
 
 const forms = {
@@ -76,7 +100,7 @@ function readDemand(
   path: Path,
   defaultId: string,
   scan: Quantity | null,
-  tables: Tables,
+  curveOf: (name: string, path: Path) => readonly CurveRow[] | null,
   reader: Reader,
 ): Demand | null {
   const { problems } = reader
@@ -84,8 +108,9 @@ function readDemand(
   const kinds = (Object.keys(forms) as Form[]).filter(stated)
   const kind = kinds[0]
   if (kind === undefined) {
-    if (!stated('band'))
-      problems.add(path, 'This demand asks for nothing.', `Start it with one of ${Object.keys(forms).join(', ')}.`)
+    // A key that was refused or unknown may have said it.
+    if (problems.source.keyCount(path) > Object.keys(demand).length) return null
+    problems.add(path, 'This demand asks for nothing.', `Start it with one of ${Object.keys(forms).join(', ')}.`)
     return null
   }
   for (const key of Object.keys(demand)) {
@@ -105,7 +130,7 @@ function readDemand(
 
   if (kind === 'peak') return readPeak()
   if (kind === 'curve') {
-    const rows = demand.curve === undefined ? null : readCurve(demand.curve, [...path, 'curve'], scan, tables, reader)
+    const rows = demand.curve === undefined ? null : curveOf(demand.curve, [...path, 'curve'])
     return rows && { ...head, kind, file: demand.curve!, rows }
   }
   const range = reader.range(demand[kind], [...path, kind], 'energy')

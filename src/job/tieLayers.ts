@@ -24,6 +24,7 @@ export function tieLayers(
     taken.add(layer.writtenId)
     if (!byId.has(layer.writtenId)) byId.set(layer.writtenId, layer)
   }
+  const circled = new Set<PlacedLayer>()
   const tied = new Map<LayerSpec, LayerSpec>()
   layers.forEach((layer, i) => {
     const like = layer.spec.like === null ? null : rootOf(layer)
@@ -52,6 +53,8 @@ export function tieLayers(
       }
       if (next.spec.like === null) return id
       if (seen.has(next)) {
+        if (circled.has(next)) return null
+        for (const one of seen) circled.add(one)
         const circle = [...seen].map((one) => one.writtenId ?? 'this one').join(', ')
         problems.add(path, `The ties run in a circle: ${circle}.`, 'Describe one of these layers in full.')
         return null

@@ -1,0 +1,133 @@
+import { describe, expect, test } from 'vitest'
+import { JobError, jobSchema, readJobText } from '../../src/job/index.js'
+
+type Schema = {
+  properties?: Record<string, Schema>
+  additionalProperties?: Schema | boolean
+  items?: Schema
+  anyOf?: Schema[]
+  $ref?: string
+  $defs?: Record<string, Schema>
+  description?: string
+}
+
+describe('the JSON Schema', () => {
+  const schema = jobSchema() as Schema & { title: string }
+
+  test('is plain JSON with a title and knows the keys of both kinds', () => {
+    expect(JSON.parse(JSON.stringify(schema))).toEqual(schema)
+    expect(schema.title).toBe('tunnelwright job')
+    const keys = keysOf(schema, schema)
+    for (const key of [
+      ...['format', 'name', 'kind', 'note', 'temperature', 'stack', 'target', 'growth', 'search', 'deliver', 'media'],
+      ...['conditions', 'bias', 'bias over', 'in-plane', 'angle', 'polarisation'],
+      ...[
+        'entry',
+        'exit',
+        'layers',
+        'mirror',
+        'rising',
+        'mass',
+        'strained to',
+        'reference',
+        'back',
+        'thickness',
+        'then',
+      ],
+      ...['id', 'material', 'x', 'width', 'like', 'times', 'pick', 'from', 'repeat', 'period', 'between', 'potential'],
+      ...['alpha', 'index', 'extinction', 'table', 'scan', 'resolution', 'demands', 'weight', 'peak', 'band', 'within'],
+      ...['fwhm', 'height', 'alone', 'top', 'ripple', 'pass', 'above', 'block', 'below', 'points', 'curve', 'at'],
+      ...['quantity', 'accept', 'rms', 'starts at', 'sources', 'compositions', 'step', 'spread', 'rate', 'layer'],
+      ...['trials', 'thinnest', 'total', 'method', 'effort', 'seed', 'candidates'],
+    ]) {
+      expect(keys, key).toContain(key)
+    }
+  })
+
+  test('describes every key of the top and of its sections', () => {
+    for (const [name, section] of Object.entries(schema.properties ?? {})) {
+      expect(section.description, name).toBeTruthy()
+      for (const [key, inner] of Object.entries(section.properties ?? {})) {
+        expect(inner.description ?? inner.$ref, `${name}.${key}`).toBeTruthy()
+      }
+    }
+  })
+})
+
+describe('a key whose capability is not built', () => {
+  const text = `format: 1
+name: halm-80
+kind: electron
+stack:
+  entry: GaAs
+  layers: [{ id: b, material: AlAs, width: 5 ML }]
+  exit: GaAs
+target:
+  scan: 5..200 meV
+  demands: [{ peak: 80 meV, within: 5 meV }]
+`
+  const cases: Record<string, string> = {
+    conditions: `${text}conditions: { on: { temperature: 4 K } }\n`,
+    bias: `${text}bias: 10 mV\n`,
+    'bias over': `${text}bias over: [b, b]\n`,
+    'in-plane': `${text}in-plane: 10 meV\n`,
+    angle: `${text}angle: 5 deg\n`,
+    polarisation: `${text}polarisation: p\n`,
+    'kind: light': text.replace('electron', 'light'),
+    band: text.replace('peak:', 'band:'),
+    alone: text.replace('within:', 'alone: 0.1, within:'),
+    accept: text.replace('within:', 'accept: { within: 8 meV }, within:'),
+    at: text.replace('within:', 'at: on, within:'),
+    quantity: text.replace('within:', 'quantity: R, within:'),
+    table: `${text}media: { film: { table: film.csv } }\n`,
+    index: text.replace('material: AlAs', 'index: 2.1'),
+    'search chooses': text.replace('{ id: b', '{ repeat: 2..5, period: [{ material: GaAs, width: 5 ML }] }, { id: b'),
+    'tied count': text.replace(
+      '{ id: b',
+      '{ repeat: { like: a }, period: [{ material: GaAs, width: 5 ML }] }, { id: b',
+    ),
+    between: text.replace('{ id: b', '{ repeat: 2, between: [{ like: b }], period: [{ like: b }] }, { id: b'),
+    rising: text.replace('exit:', 'rising: [b]\n  exit:'),
+    'width: { like': text.replace('width: 5 ML', 'width: { like: b, times: 2 }'),
+    'x: { like': text.replace('material: AlAs', 'material: AlGaAs, x: { like: b }'),
+    'from: sources': text.replace('material: AlAs', 'material: AlGaAs, x: { from: sources }'),
+    reference: text.replace('exit:', 'reference: 633 nm\n  exit:'),
+    back: text.replace('exit:', 'back: { thickness: 1 mm, then: GaAs }\n  exit:'),
+    'width in qw': text.replace('5 ML', '1 qw'),
+    thinnest: `${text}growth: { thinnest: 8 nm }\n`,
+    total: `${text}growth: { total: ..6 um }\n`,
+    'method: complete': `${text}search: { method: complete }\n`,
+  }
+  for (const [key, job] of Object.entries(cases)) {
+    test(`${key} is refused with a sentence that says what to do instead`, () => {
+      const error = errorOf(job)
+      const refusal = error.problems.find(({ rule }) => rule.includes('part of the job format, but this version'))
+      expect(refusal?.rule, error.message).toContain(key)
+      expect(refusal?.remedy).not.toBe('')
+      expect(error.problems).toHaveLength(1)
+    })
+  }
+})
+
+function keysOf(schema: Schema, root: Schema, seen = new Set<Schema>()): string[] {
+  if (seen.has(schema)) return []
+  seen.add(schema)
+  const inner = [
+    ...Object.values(schema.properties ?? {}),
+    ...(schema.anyOf ?? []),
+    ...(schema.items ? [schema.items] : []),
+    ...(typeof schema.additionalProperties === 'object' ? [schema.additionalProperties] : []),
+    ...(schema.$ref ? [root.$defs?.[schema.$ref.replace('#/$defs/', '')] ?? {}] : []),
+  ]
+  return [...Object.keys(schema.properties ?? {}), ...inner.flatMap((one) => keysOf(one, root, seen))]
+}
+
+function errorOf(text: string): JobError {
+  try {
+    readJobText(text, 'halm.yaml')
+  } catch (error) {
+    if (error instanceof JobError) return error
+    throw error
+  }
+  throw new Error('The job was read.')
+}
