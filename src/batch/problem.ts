@@ -25,6 +25,8 @@ export function problemOf(job: Job): BoundJob {
     repair: (assignment) => design.repair(assignment),
     canonical: (assignment) => design.canonical(assignment),
     bound: (assignment) => target.pointMerit(design.systems(assignment)),
+    // The points of a peak are its maxima, which no bound knows.
+    boundGuides: job.demands.every(({ kind }) => kind !== 'peak'),
     // Beside a goal, a stack that meets the limits comes before one that does not, whatever the merits.
     outOfReach: (bound, score) => (score.met || !limitsAndGoals) && bound > score.merit * (1 + 1e-9) + 1e-9,
     score: (assignment) => {

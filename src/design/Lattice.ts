@@ -39,7 +39,7 @@ export class Lattice {
     }
     this.layers = layers
     this.slots = slots
-    this.places = layers.flatMap((layer) => layer.places)
+    this.places = placesOf(layers)
     this.compositions = growth.compositions
     const { entry, exit } = this.situations[0]
     const leads = exit === 'hard wall' ? [entry] : [entry, exit]
@@ -110,6 +110,19 @@ export class Lattice {
     }
     return stretches
   }
+}
+
+/** Families are numbered as they come. */
+function placesOf(layers: readonly LayerLattice[]): Place[] {
+  const families = new Map<string, number>()
+  return layers.flatMap(({ spec, places }) =>
+    places.map((place) => {
+      const what = place.name.slice(spec.id.length)
+      const key = JSON.stringify([spec.media, spec.width, what])
+      if (!families.has(key)) families.set(key, families.size)
+      return { ...place, family: families.get(key)! }
+    }),
+  )
 }
 
 /** A common step is kept; two steps make one width that is its own step. */

@@ -35,7 +35,7 @@ export const parameters = ['x', 'potential', 'mass', 'alpha'] as const
  * are not feasible.
  */
 export class LayerLattice {
-  readonly places: readonly Place[]
+  readonly places: readonly Omit<Place, 'family'>[]
   readonly options: readonly MediumOption[]
   /** Place of the option, of each parameter and of the width; -1 where nothing is to choose. */
   readonly placeOf: Int32Array
@@ -53,7 +53,7 @@ export class LayerLattice {
   ) {
     this.options = spec.media!
     this.longest = parameters.map((_, p) => Math.max(...this.options.map((option) => valuesOf(option, p).length)))
-    const places: Place[] = []
+    const places: Omit<Place, 'family'>[] = []
     const add = (what: string, choices: number, ordered: boolean): number =>
       choices > 1 ? offset + places.push({ name: `${spec.id}.${what}`, choices, ordered }) - 1 : -1
     const digits = [

@@ -7,6 +7,8 @@ export interface Place {
   readonly choices: number
   /** Neighbouring numbers are neighbouring values (widths, compositions, numbers), not a list of materials. */
   readonly ordered: boolean
+  /** Equal for places that decide the same of layers described alike: barriers of one kind, wells of one kind. */
+  readonly family: number
 }
 
 /** One layer as it is grown: equal neighbours merged, zero widths dropped, from entry to exit. */

@@ -1,6 +1,12 @@
 import type { Score } from '../target/index.js'
 import type { Found, SearchProblem } from './types.js'
 
+/** A stack with its score. */
+export interface Reached {
+  readonly stack: Int32Array
+  readonly score: Score
+}
+
 /** The most stacks that a unit leaves. */
 const mostFound = 64
 
@@ -55,15 +61,18 @@ export class Examiner {
     return this.problem.compare(score, than) < 0 ? score : null
   }
 
-  /** The one of least bound, the first of equals; null for none. */
-  leastBound(assignments: readonly Int32Array[]): Int32Array | null {
-    let best: Int32Array | null = null
-    let least = Number.POSITIVE_INFINITY
-    for (const assignment of assignments) {
-      const bound = this.bound(assignment)
-      if (bound < least) [best, least] = [assignment, bound]
-    }
-    return best
+  /** What a global phase goes by. */
+  guide(assignment: Int32Array): number {
+    return this.problem.boundGuides ? this.bound(assignment) : this.score(assignment).merit
+  }
+
+  /** The best of some stacks; only the most promising by bound, in their order where equal, pay for the whole score. */
+  best(assignments: readonly Int32Array[]): Reached {
+    const bounds = assignments.map((assignment) => ({ assignment, bound: this.bound(assignment) }))
+    const promising = bounds.sort((a, b) => a.bound - b.bound).slice(0, mostCompared)
+    return promising
+      .map(({ assignment }) => ({ stack: assignment, score: this.score(assignment) }))
+      .reduce((best, one) => (this.problem.compare(one.score, best.score) < 0 ? one : best))
   }
 
   /** The best stacks, as listed and each once: those scored, and the most promising of those only bounded, now scored too. */
@@ -92,6 +101,9 @@ export class Examiner {
     return { examined: this.scores.size, cut: this.bounds.size - this.scores.size }
   }
 }
+
+/** Stacks of which `best` asks the whole score. */
+const mostCompared = 6
 
 /** A whole merit in bounds: extremes and resonances cost five to ten times the points. */
 const scoreCost = 8

@@ -1,26 +1,19 @@
-import type { Score } from '../target/index.js'
-import type { Examiner } from './Examiner.js'
+import type { Examiner, Reached } from './Examiner.js'
 import { neighbours } from './neighbours.js'
 import { promisingMoves } from './promisingMoves.js'
 
-/** A stack with its score. */
-export interface Reached {
-  readonly stack: Int32Array
-  readonly score: Score
-}
-
 /**
- * Descends on the lattice under the full order of stacks until no move of one or two places helps, or the budget is spent. While the
+ * Descends on the lattice under the full order of stacks until no move of `neighbours` helps, or the budget is spent. While the
  * limits are unmet, the moves that the residuals' quadratic promises most are tried first, those of three places among them; stacks
  * that meet all limits go on by their margin. The first move that helps is taken.
  */
-export function descend(examiner: Examiner, from: Int32Array): Reached {
+export function descend(examiner: Examiner, from: Reached): Reached {
   const { problem } = examiner
-  let here: Reached = { stack: from, score: examiner.score(from) }
-  let next: Reached | null = here
+  let here = from
+  let next: Reached | null = from
   while (next !== null && !examiner.exhausted) {
     here = next
-    next = firstBetter(promising(here)) ?? firstBetter(neighbours(problem, here.stack))
+    next = firstBetter(promising(here)) ?? firstBetter(neighbours(problem, here.stack, mostNeighbours))
   }
   return here
 
@@ -43,6 +36,9 @@ export function descend(examiner: Examiner, from: Int32Array): Reached {
 
 /** Promising moves that are looked at before all neighbours are. */
 const mostTried = 48
+
+/** Neighbours of each kind: those with one, two and three places moved. */
+const mostNeighbours = 400
 
 /** Residuals and Jacobian in bounds. */
 export const fitCost = 4

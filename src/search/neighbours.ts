@@ -1,40 +1,52 @@
-import type { SearchProblem } from './types.js'
+import type { SearchPlace, SearchProblem } from './types.js'
 
 /**
- * The stacks one move away: one place up to two choices further, or to any other choice of an unordered list; and two places
- * together, the ordered ones by one choice. Feasible ones only; single moves first.
+ * The stacks around one, feasible ones only: those that differ in one place, then in two, then in three. Ordered places move as far as
+ * `most` stacks of each kind allow, so that few places are searched wide and many near; three at once only where they find room. Of
+ * unordered lists every other choice.
  */
-export function* neighbours({ places, feasible }: SearchProblem, stack: Int32Array): Iterable<Int32Array> {
+export function* neighbours(
+  { places, feasible }: SearchProblem,
+  stack: Int32Array,
+  most: number,
+): Iterable<Int32Array> {
   const moved = Int32Array.from(stack)
-  for (let a = 0; a < places.length; a++) {
-    for (const choice of choicesNear(places[a], stack[a], 2)) {
-      moved[a] = choice
-      if (feasible(moved)) yield Int32Array.from(moved)
-    }
-    moved[a] = stack[a]
+  for (const together of [1, 2, 3]) {
+    const reach = reachOf(places.length, together, most)
+    const near = places.map((place, i) => choicesNear(place, stack[i], reach))
+    if (reach > 0) yield* moves(0, together, near)
   }
-  for (let a = 0; a < places.length; a++) {
-    for (const one of choicesNear(places[a], stack[a], 1)) {
-      moved[a] = one
-      for (let b = a + 1; b < places.length; b++) {
-        for (const other of choicesNear(places[b], stack[b], 1)) {
-          moved[b] = other
-          if (feasible(moved)) yield Int32Array.from(moved)
-        }
-        moved[b] = stack[b]
+
+  function* moves(from: number, left: number, near: readonly number[][]): Iterable<Int32Array> {
+    for (let i = from; i <= places.length - left; i++) {
+      for (const choice of near[i]) {
+        moved[i] = choice
+        if (left > 1) yield* moves(i + 1, left - 1, near)
+        else if (feasible(moved)) yield Int32Array.from(moved)
       }
+      moved[i] = stack[i]
     }
-    moved[a] = stack[a]
   }
 }
 
-function choicesNear({ choices, ordered }: SearchProblem['places'][number], at: number, reach: number): number[] {
-  const near: number[] = []
-  if (!ordered) {
-    for (let choice = 0; choice < choices; choice++) if (choice !== at) near.push(choice)
-    return near
+/** The largest r with (places over together) (2 r)^together <= most; pairs always have their next choices. */
+function reachOf(places: number, together: number, most: number): number {
+  let ways = 1
+  for (let k = 0; k < together; k++) ways = (ways * (places - k)) / (k + 1)
+  if (ways === 0) return 0
+  let reach = 0
+  for (;;) {
+    const span = 2 * (reach + 1)
+    if (ways * (together === 1 ? span : together === 2 ? span * span : span * span * span) > most) break
+    reach++
   }
-  for (let by = 1; by <= reach; by++) {
+  return together === 3 ? reach : Math.max(reach, 1)
+}
+
+/** The nearest first. */
+function choicesNear({ choices, ordered }: SearchPlace, at: number, reach: number): number[] {
+  const near: number[] = []
+  for (let by = 1; by < choices && (by <= reach || !ordered); by++) {
     if (at + by < choices) near.push(at + by)
     if (at - by >= 0) near.push(at - by)
   }

@@ -1,67 +1,103 @@
-import { randomStream } from '../growth/index.js'
+import { type RandomStream, randomStream } from '../growth/index.js'
 import { corners } from './corners.js'
-import { descend, fitCost, type Reached } from './descend.js'
-import { Examiner } from './Examiner.js'
+import { descend, fitCost } from './descend.js'
+import { Examiner, type Reached } from './Examiner.js'
 import { leastSquares } from './leastSquares.js'
 import { LowDiscrepancy } from './lowDiscrepancy.js'
 import { evolve } from './population.js'
 import type { SearchProblem, UnitResult } from './types.js'
 
-/** The numbers of a unit: populations, evaluations of a fit, corners, all in one budget counted in bounds. */
-const population = 24
-const generations = 6
+/** What a unit may cost, in bounds; a fit of a start and of a kicked stack, in evaluations of residuals and Jacobian. */
+const budget = 12_000
 const fitEvaluations = 30
 const refitEvaluations = 12
+/** Members of the population that are fitted. */
+const fitted = 6
 const mostCorners = 48
-const budget = 12_000
+const kicks = 6
 
 /**
- * One independent start of the sampled method (design 7.2): the best of a short evolution from low-discrepancy points, a fit of the
- * continuous widths, compositions and numbers, the corners around it, descent on the lattice; then every other choice of each
- * unordered list, with a fit of its own, until none helps. The result depends on the problem, the seed and the unit's number alone.
+ * One independent start of the sampled method (design 7.2): the best of a short evolution from low-discrepancy points, each fitted in
+ * its continuous widths, compositions and numbers and taken to the best corner around the fit; the best of them descends on the
+ * lattice. Then the basins around: other choices of each unordered list, and a few kicks of one to three places, each with a fit of its
+ * own. The result depends on the problem, the seed and the unit's number alone; `seed` is the same for all units of a search.
  */
 export function runUnit(problem: SearchProblem, unit: number, seed: Uint32Array | string): UnitResult {
   const examiner = new Examiner(problem, budget)
-  const sequence = new LowDiscrepancy(problem.places.length, seed)
-  const start = evolve(examiner, sequence, unit, randomStream(seed, 'unit', unit), population, generations)
-  let here = descend(examiner, refined(examiner, start, fitEvaluations))
-  for (let next: Reached | null = here; next !== null; ) {
-    here = next
-    next = otherList(examiner, here)
-  }
-  const { exhausted } = examiner
+  const stream = randomStream(seed, 'unit', unit)
+  const members = distinct(evolve(examiner, new LowDiscrepancy(problem.places.length, seed), unit, stream))
+  const starts = members.slice(0, fitted).map((member) => refined(examiner, member, fitEvaluations))
+  const first = starts.reduce((best, one) => (problem.compare(one.score, best.score) < 0 ? one : best))
+  const listed = chooseLists(examiner, descend(examiner, first))
+  kicked(examiner, listed, stream)
   const found = examiner.found()
-  return { unit, found, ...examiner.account, stop: exhausted ? 'budget of evaluations' : 'no move helps' }
+  const stop = examiner.exhausted ? 'budget of evaluations' : 'no move helps'
+  return { unit, found, ...examiner.account, stop }
 }
 
-/** The best by bound among a stack and the corners around a fit from it. */
-function refined(examiner: Examiner, stack: Int32Array, evaluations: number): Int32Array {
+function distinct(stacks: readonly Int32Array[]): Int32Array[] {
+  return [...new Map(stacks.map((stack) => [stack.join(), stack])).values()]
+}
+
+/** The best among a stack and the corners around a fit from it. */
+function refined(examiner: Examiner, stack: Int32Array, evaluations: number): Reached {
   const { problem } = examiner
   const relaxed = problem.relax(stack)
-  if (relaxed.start.length === 0 || relaxed.residuals < 2) return stack
-  const fitted = leastSquares(relaxed, relaxed.start, evaluations)
-  examiner.charge(fitCost * fitted.evaluations)
-  const around = corners(problem.places, relaxed, fitted, stack, mostCorners).filter((corner) =>
-    problem.feasible(corner),
-  )
-  return examiner.leastBound([stack, relaxed.snap(fitted.variables), ...around])!
+  // The library under the fit takes no fewer than two residuals.
+  if (relaxed.start.length === 0 || relaxed.residuals < 2) return examiner.best([stack])
+  const fit = leastSquares(relaxed, relaxed.start, evaluations)
+  examiner.charge(fitCost * fit.evaluations)
+  const around = corners(problem.places, relaxed, fit, stack, mostCorners).filter((corner) => problem.feasible(corner))
+  return examiner.best([relaxed.snap(fit.variables), ...around, stack])
 }
 
-/** The first stack that helps with another choice of an unordered list, everything ordered fitted anew and descended from there. */
-function otherList(examiner: Examiner, here: Reached): Reached | null {
-  const { problem } = examiner
-  for (let place = 0; place < problem.places.length; place++) {
-    const { choices, ordered } = problem.places[place]
-    if (ordered) continue
-    for (let choice = 0; choice < choices; choice++) {
-      if (examiner.exhausted) return null
-      if (choice === here.stack[place]) continue
-      const other = Int32Array.from(here.stack)
-      other[place] = choice
-      const repaired = problem.repair(other)
-      const reached = descend(examiner, refined(examiner, repaired, refitEvaluations))
-      if (problem.compare(reached.score, here.score) < 0) return reached
+/** Tries every other choice of each unordered list until none helps. */
+function chooseLists(examiner: Examiner, from: Reached): Reached {
+  const { places } = examiner.problem
+  let here = from
+  let helped = true
+  while (helped) {
+    helped = false
+    for (let place = 0; place < places.length; place++) {
+      for (let choice = 0; choice < places[place].choices && !places[place].ordered; choice++) {
+        if (choice === here.stack[place] || examiner.exhausted) continue
+        const other = Int32Array.from(here.stack)
+        other[place] = choice
+        const reached = settled(examiner, other, here)
+        helped ||= reached !== here
+        here = reached
+      }
     }
   }
-  return null
+  return here
 }
+
+function kicked(examiner: Examiner, from: Reached, stream: RandomStream): Reached {
+  const { places } = examiner.problem
+  let here = from
+  for (let kick = 0; kick < kicks && !examiner.exhausted && places.length > 0; kick++) {
+    const other = Int32Array.from(here.stack)
+    for (let moves = 1 + stream.integer(3); moves > 0; moves--) {
+      const place = stream.integer(places.length)
+      const { choices, ordered } = places[place]
+      const by = (1 + stream.integer(farthestKick)) * (stream.integer(2) === 0 ? -1 : 1)
+      other[place] = ordered ? Math.min(Math.max(other[place] + by, 0), choices - 1) : stream.integer(choices)
+    }
+    here = settled(examiner, other, here)
+  }
+  return here
+}
+
+const farthestKick = 6
+
+/** Where a changed stack settles after a fit and, if it comes near, a descent; `here` where that is no better. */
+function settled(examiner: Examiner, changed: Int32Array, here: Reached): Reached {
+  const { problem } = examiner
+  const start = refined(examiner, problem.repair(changed), refitEvaluations)
+  if (problem.outOfReach(examiner.bound(start.stack) / near, here.score)) return here
+  const reached = descend(examiner, start)
+  return problem.compare(reached.score, here.score) < 0 ? reached : here
+}
+
+/** A start with a bound this many times the merit to beat may still descend below it. */
+const near = 3

@@ -1,8 +1,16 @@
 import type { Score } from '../target/index.js'
 
+export interface SearchPlace {
+  readonly choices: number
+  /** Neighbouring numbers are neighbouring values. */
+  readonly ordered: boolean
+  /** Places of one family have the same choices, and a start in which they agree is a good one to try. */
+  readonly family: number
+}
+
 /** Places with numbered choices, and an evaluator: all that a search may know. An assignment has one choice a place. */
 export interface SearchProblem {
-  readonly places: readonly { readonly choices: number; readonly ordered: boolean }[]
+  readonly places: readonly SearchPlace[]
   feasible(assignment: Int32Array): boolean
   /** The assignment itself when it is feasible, else a feasible one near it. */
   repair(assignment: Int32Array): Int32Array
@@ -10,6 +18,8 @@ export interface SearchProblem {
   canonical(assignment: Int32Array): Int32Array
   /** A lower bound of the merit that costs little. */
   bound(assignment: Int32Array): number
+  /** Whether the bound tells good starts from bad ones; where it leaves out what matters most, the merit must. */
+  readonly boundGuides: boolean
   /** Whether a stack of this bound can't come before one of this score. */
   outOfReach(bound: number, score: Score): boolean
   score(assignment: Int32Array): Score
