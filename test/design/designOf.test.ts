@@ -21,9 +21,9 @@ describe('the lattice of a job', () => {
     const design = designOf(coldCollector())
     expect(design.stackCount()).toBe(630)
     expect(design.places).toEqual([
-      { name: 'outer.x', choices: 2, ordered: true },
-      { name: 'outer.width', choices: 15, ordered: true },
-      { name: 'well.width', choices: 21, ordered: true },
+      { name: 'outer.x', choices: 2, ordered: true, family: 0 },
+      { name: 'outer.width', choices: 15, ordered: true, family: 1 },
+      { name: 'well.width', choices: 21, ordered: true, family: 2 },
     ])
     expect([...design.assignments()].length).toBe(630)
     expect(distinctIds(coldCollector()).size).toBe(630)
@@ -42,6 +42,19 @@ describe('the lattice of a job', () => {
   it('names a stack readably', () => {
     const design = designOf(coldCollector())
     expect(design.text(Int32Array.of(1, 6, 8))).toBe('AlGaAs(0.35) 12 / GaAs 18 / AlGaAs(0.35) 12 ML')
+  })
+})
+
+describe('families of places', () => {
+  it('hold what layers described alike decide alike', () => {
+    const barrier = 'material: AlGaAs, x: { pick: [0.2, 0.3] }, width: 4..9 ML'
+    const job = jobWith(`  layers:
+    - { ${barrier} }
+    - { material: GaAs, width: 4..9 ML }
+    - { ${barrier} }
+    - { material: GaAs, width: 4..9 ML }
+    - { ${barrier.replace('4..9', '4..8')} }`)
+    expect(designOf(job).places.map(({ family }) => family)).toEqual([0, 1, 2, 0, 1, 2, 3, 4])
   })
 })
 
@@ -142,10 +155,10 @@ describe('lists of materials', () => {
 
   it('has a place for the list, one for each range of numbers, one for the width', () => {
     expect(designOf(job).places).toEqual([
-      { name: 'a.material', choices: 2, ordered: false },
-      { name: 'a.potential', choices: 3, ordered: true },
-      { name: 'a.width', choices: 11, ordered: true },
-      { name: 'b.potential', choices: 3, ordered: true },
+      { name: 'a.material', choices: 2, ordered: false, family: 0 },
+      { name: 'a.potential', choices: 3, ordered: true, family: 1 },
+      { name: 'a.width', choices: 11, ordered: true, family: 2 },
+      { name: 'b.potential', choices: 3, ordered: true, family: 3 },
     ])
   })
 
