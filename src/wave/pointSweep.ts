@@ -15,12 +15,29 @@ export const wave = { uRe: 0, uIm: 0, vRe: 0, vIm: 0, duRe: 0, duIm: 0, dvRe: 0,
 export const lead = { re: 0, im: 0, dRe: 0, dIm: 0 }
 
 /**
- * The vector at the far face of each layer, four numbers a layer (Re u, Im u, Re v, Im v), and its exponent. Held by who
- * wants them; entry j is layer j whichever side the wave comes from.
+ * The vector at every interface, four numbers each (Re u, Im u, Re v, Im v), and its exponent. Interface 0 is the
+ * entry's face, interface j the one behind layer j - 1, whichever side the wave comes from.
  */
-export interface Faces {
-  readonly vectors: Float64Array
-  readonly exponents: Float64Array
+export class Faces {
+  vectors = new Float64Array(4)
+  exponents = new Float64Array(1)
+
+  /** Makes room for the interfaces of so many layers. */
+  grow(layers: number): void {
+    if (this.exponents.length > layers) return
+    this.vectors = new Float64Array(4 * (layers + 1))
+    this.exponents = new Float64Array(layers + 1)
+  }
+
+  /** Takes `wave` as it is. */
+  keep(interfaceNumber: number): void {
+    const o = 4 * interfaceNumber
+    this.vectors[o] = wave.uRe
+    this.vectors[o + 1] = wave.uIm
+    this.vectors[o + 2] = wave.vRe
+    this.vectors[o + 3] = wave.vIm
+    this.exponents[interfaceNumber] = wave.exponent
+  }
 }
 
 /**
@@ -38,16 +55,11 @@ export function sweepPoint(
   const { medium, width } = stack
   const layers = medium.length
   start(table, slope, far, e)
+  if (faces !== null) faces.keep(from === 'entry' ? layers : 0)
   for (let step = 0; step < layers; step++) {
     const j = from === 'entry' ? layers - 1 - step : step
-    if (faces !== null) {
-      faces.vectors[4 * j] = wave.uRe
-      faces.vectors[4 * j + 1] = wave.uIm
-      faces.vectors[4 * j + 2] = wave.vRe
-      faces.vectors[4 * j + 3] = wave.vIm
-      faces.exponents[j] = wave.exponent
-    }
     cross(table, slope, medium[j] * table.points + e, width[j])
+    if (faces !== null) faces.keep(from === 'entry' ? j : j + 1)
   }
 }
 

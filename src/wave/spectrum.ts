@@ -1,3 +1,4 @@
+import { absorbingSpectrum } from './absorbing.js'
 import { scaleByPowerOfTwo } from './bits.js'
 import { log10 } from './elementary.js'
 import { blockSize } from './layerBlock.js'
@@ -11,10 +12,14 @@ export interface SpectrumOut {
   readonly R: Float64Array
   /** -Infinity where T = 0; computed only when given. */
   readonly log10T?: Float64Array
+  /** Share of the incident flux absorbed between the leads, and in each layer (e * layers + j); written only when given. */
+  readonly A?: Float64Array
+  readonly absorbed?: Float64Array
 }
 
 /**
- * Transmission and reflection of a lossless stack at every point of the table.
+ * Transmission and reflection at every point of the table; absorption too where it has imaginary parts
+ * (`absorbingSpectrum`). For a lossless stack:
  *
  * Two real vectors (u, v) are swept from the far side to the side the wave comes from: they start as (1, 0) and
  * (0, Y) in an open lead, the wave being first + i second; as (1, -kappa/mu) alone in a closed one; as (0, 1) alone at
@@ -22,14 +27,17 @@ export interface SpectrumOut {
  * T + R = 1 is a test. A running power of two beside the vectors lets any width through. Layers run outside, blocks of
  * 128 energies inside. Allocates nothing once its scratch has seen as many media.
  *
- * `from` 'exit': the wave comes from the exit's side. Returns the largest |T + R - 1|.
- * Throws RangeError where the lead the wave comes from is closed (q <= 0), for a negative width, and for a result that
+ * `from` 'exit': the wave comes from the exit's side. Returns the largest |T + R + A - 1|.
+ * Throws RangeError where the lead the wave comes from is closed (q <= 0) or absorbs, for a negative width, and for a result that
  * is not finite, each with its number.
  */
 export function spectrumInto(table: MediaTable, stack: WaveStack, out: SpectrumOut, from: Side = 'entry'): number {
   checkStack(stack)
   const near = lead(stack, from, true)
   const far = lead(stack, from, false)
+  if (table.qIm) return absorbingSpectrum(table, stack, out, from, near, far)
+  out.A?.fill(0)
+  out.absorbed?.fill(0)
   media.assign(table, stack)
   let worst = 0
   for (let first = 0; first < table.points; first += blockSize) {
