@@ -27,8 +27,9 @@ export function problemOf(job: Job): BoundJob {
     bound: (assignment) => target.pointMerit(design.systems(assignment)),
     // The points of a peak are its maxima, which no bound knows.
     boundGuides: job.demands.every(({ kind }) => kind !== 'peak'),
-    // Beside a goal, a stack that meets the limits comes before one that does not, whatever the merits.
-    outOfReach: (bound, score) => (score.met || !limitsAndGoals) && bound > score.merit * (1 + 1e-9) + 1e-9,
+    // Beside a goal, a stack that meets the limits comes before one that does not, whatever the merits. Merits that are equal at
+    // 9 digits lie up to 1e-8 apart; limits are met up to 1e-9.
+    outOfReach: (bound, score) => (score.met || !limitsAndGoals) && bound > score.merit * (1 + 1e-8) + 1e-9,
     score: (assignment) => {
       const systems = design.systems(assignment)
       const { met, merit } = target.verdict(systems)
