@@ -1,7 +1,8 @@
+import { wasmAvailable } from './kernel/wasmSpectrum.js'
 import { spectrumInto } from './spectrum.js'
 
 /** Which code computes spectra here. Kernels of different names give the same bits, or the checksum below differs. */
-export const kernelName = 'plain'
+export const kernelName = wasmAvailable ? 'wasm-simd' : 'plain'
 
 /**
  * A number (eight hexadecimal digits) made of every bit of a fixed calculation: random-looking stacks with wells,

@@ -90,13 +90,17 @@ export class BlockMedia {
   }
 }
 
-const powers = new Float64Array(512)
-const inversePowers = new Float64Array(512)
-powers[0] = 1
-inversePowers[0] = 1
+// Adding and taking away 1.5 2^52 rounds to the nearest integer, ties to even.
+const rounder = 6755399441055744
+
+// 2^n/2 and 2^-n/2.
+const halfPowers = new Float64Array(512)
+const halfInverses = new Float64Array(512)
+halfPowers[0] = 0.5
+halfInverses[0] = 0.5
 for (let n = 1; n < 512; n++) {
-  powers[n] = powers[n - 1] * 2
-  inversePowers[n] = inversePowers[n - 1] * 0.5
+  halfPowers[n] = halfPowers[n - 1] * 2
+  halfInverses[n] = halfInverses[n - 1] * 0.5
 }
 
 /**
@@ -117,7 +121,7 @@ export function layerFunctions(
   for (let i = 0; i < n; i++) {
     const x = k[o + i] * w
     if (q[t + i] < 0) {
-      const turns = Math.floor(x * Math.LOG2E + 0.5)
+      const turns = x * Math.LOG2E + rounder - rounder
       const r = x - turns * 0.6931471805598903 - turns * 5.497923018708371e-14
       const a = r * r
       const a2 = a * a
@@ -134,36 +138,33 @@ export function layerFunctions(
       let up: number
       let down: number
       if (shift === null) {
-        up = powers[turns]
-        down = inversePowers[turns]
+        up = halfPowers[turns]
+        down = halfInverses[turns]
       } else {
-        up = 1
-        down = turns < 512 ? inversePowers[turns] * inversePowers[turns] : 0
+        up = 0.5
+        down = turns < 511 ? 2 * (halfInverses[turns] * halfInverses[turns]) : 0
         shift[i] += turns
       }
-      const h = 0.5 * (up + down)
-      const d = 0.5 * (up - down)
+      const h = up + down
+      const d = up - down
       c[i] = even * h + odd * d
       s[i] = even * d + odd * h
     } else {
-      const turns = Math.floor(x * 0.3183098861837907 + 0.5)
+      const turns = x * 0.3183098861837907 + rounder - rounder
       const r = x - turns * 3.1415926534682512 - turns * 1.2154201013012384e-10
       const a = r * r
       const a2 = a * a
-      const a4 = a2 * a2
+      // Even and odd powers of a apart, each in powers of a².
       const p =
         -0.16666666666666666 +
-        a * 0.008333333333333316 +
-        (-0.00019841269841254974 + a * 2.755731921916323e-6) * a2 +
-        (-2.505210761699557e-8 +
-          a * 1.605897731242445e-10 +
-          (-7.643970295533013e-13 + a * 2.7314447512062796e-15) * a2) *
-          a4
+        (-0.00019841269841254974 + (-2.505210761699557e-8 - 7.643970295533013e-13 * a2) * a2) * a2 +
+        a *
+          (0.008333333333333316 +
+            (2.755731921916323e-6 + (1.605897731242445e-10 + 2.7314447512062796e-15 * a2) * a2) * a2)
       const g =
-        0.04166666666666666 -
-        a * 0.0013888888888884767 +
-        (2.4801587298913547e-5 - a * 2.7557318573365657e-7) * a2 +
-        (2.0876681558822446e-9 - a * 1.1466252257937559e-11 + a2 * 4.646435932869834e-14) * a4
+        0.04166666666666666 +
+        (2.4801587298913547e-5 + (2.0876681558822446e-9 + 4.646435932869834e-14 * a2) * a2) * a2 +
+        a * (-0.0013888888888884767 + (-2.7557318573365657e-7 - 1.1466252257937559e-11 * a2) * a2)
       s[i] = r + r * a * p
       c[i] = 1 - (0.5 * a - a2 * g)
     }

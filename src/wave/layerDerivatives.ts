@@ -19,7 +19,7 @@ export function slopeOfSine(q: number, w: number, c: number, a: number, divided:
                     z *
                       (9.635426302092969e-10 +
                         z * (-5.353014612273871e-12 + z * (2.2491658034764165e-14 - z * 7.398571721961897e-17)))))))
-  // n is 0 or 1 here, as kw < 1; `layerFunctions` rounds kw/ln 2.
-  const scale = divided && q < 0 && Math.floor(Math.sqrt(-q) * w * Math.LOG2E + 0.5) > 0 ? 0.5 : 1
+  // n is 0 or 1 here, as kw < 1; `layerFunctions` rounds kw/ln 2, ties to even.
+  const scale = divided && q < 0 && Math.sqrt(-q) * w * Math.LOG2E > 0.5 ? 0.5 : 1
   return w * w * w * series * scale
 }

@@ -68,6 +68,6 @@ describe('T of random stacks against decimal arithmetic', () => {
 describe('the bits of the kernel', () => {
   it('are those of every other machine and Node version', () => {
     // Frozen: changes only with the arithmetic itself, and then journals of both kinds must not be mixed.
-    expect(kernelChecksum()).toBe('841572df')
+    expect(kernelChecksum()).toBe('c8fd25b4')
   })
 })
