@@ -1,24 +1,7 @@
-import { scaleByPowerOfTwo } from './bits.js'
-import { blockSize } from './layerBlock.js'
-import { slopeOfSine } from './layerDerivatives.js'
-import { checkStack, refuseClosed, refuseResult } from './stackChecks.js'
-import {
-  applyLayer,
-  c,
-  computeLayer,
-  factor,
-  growth,
-  isThick,
-  media,
-  renormalise,
-  s,
-  shift,
-  startVectors,
-  u1,
-  u2,
-  v1,
-  v2,
-} from './sweep.js'
+import { wasmAvailable } from './kernel/instance.js'
+import { wasmGradient } from './kernel/wasmGradient.js'
+import { plainGradient } from './plainGradient.js'
+import { checkStack } from './stackChecks.js'
 import type { MediaTable, WaveStack } from './types.js'
 
 /** What `gradientInto` writes: T of `points` entries, the others of points x layers, entry e * layers + j. */
@@ -32,170 +15,17 @@ export interface GradientOut {
   readonly dTdMu: Float64Array
 }
 
-// For each layer and energy of a block: the vectors at its right face, and c, s. Six rows a layer, `stride` apart.
-const rows = 6
-let store = new Float64Array(0)
-// What the vectors were multiplied by just before a layer was crossed; read only where `rescaled` says so.
-let factors = new Float64Array(0)
-let rescaled = new Uint8Array(0)
-// The functional d ln D as a row: what an infinitesimal change of the vectors does to the logarithm of |A|².
-const gu1 = new Float64Array(blockSize)
-const gv1 = new Float64Array(blockSize)
-const gu2 = new Float64Array(blockSize)
-const gv2 = new Float64Array(blockSize)
-const transmission = new Float64Array(blockSize)
-
 /**
  * T and its derivatives by every layer's width, q and mu, for a lossless stack and a wave from the entry: one sweep
  * from exit to entry that keeps the vectors at every interface, one adjoint sweep back. With D = |2YA|² and
- * x(j - 1) = M(j) x(j), d ln T = - sum g(j - 1) dM(j) x(j), g(j) = g(j - 1) M(j), g(0) = (dD/dx)/D. It costs about two
+ * x(j - 1) = M(j) x(j), d ln T = - sum g(j - 1) dM(j) x(j), g(j) = g(j - 1) M(j), g(0) = (dD/dx)/D. It costs about three
  * spectra whatever the number of layers. The logarithm is differentiated, so that the derivatives of a T of 1e-250 are
  * right relative to it; where T underflows to 0 they are 0. Throws as `spectrumInto`.
  */
 export function gradientInto(table: MediaTable, stack: WaveStack, out: GradientOut): void {
   checkStack(stack)
-  media.assign(table, stack)
-  const layers = stack.medium.length
-  // The store of a block should stay in the second cache: 256 KiB.
-  const stride = Math.max(8, Math.min(blockSize, Math.floor(32768 / (rows * (layers + 1)))))
-  if (store.length < layers * rows * stride) store = new Float64Array(layers * rows * stride)
-  if (factors.length < (layers + 1) * stride) factors = new Float64Array((layers + 1) * stride)
-  if (rescaled.length <= layers) rescaled = new Uint8Array(layers + 1)
-  for (let first = 0; first < table.points; first += stride) {
-    const n = Math.min(stride, table.points - first)
-    forward(table, stack, first, n, stride)
-    startRow(table, stack, first, n, out.T)
-    backward(table, stack, first, n, stride, out)
-  }
-}
-
-function forward(table: MediaTable, stack: WaveStack, first: number, n: number, stride: number): void {
-  const { medium, width, exit } = stack
-  startVectors(table, exit, first, n)
-  let grown = 0
-  for (let j = medium.length - 1; j >= 0; j--) {
-    const slot = media.at(table, medium[j], first, n)
-    const bound = growth(slot, width[j])
-    rescaled[j + 1] = grown + bound > 400 ? 1 : 0
-    if (rescaled[j + 1] === 1) {
-      rescale(j + 1, n, stride)
-      grown = 0
-    }
-    grown += bound
-    computeLayer(table, medium[j], slot, width[j], first, n)
-    keep(j, n, stride)
-    applyLayer(table, medium[j], slot, first, n)
-  }
-  rescaled[0] = grown > 0 ? 1 : 0
-  if (grown > 0) rescale(0, n, stride)
-}
-
-function rescale(at: number, n: number, stride: number): void {
-  renormalise(n)
-  for (let i = 0; i < n; i++) factors[at * stride + i] = factor[i]
-}
-
-function keep(j: number, n: number, stride: number): void {
-  const o = j * rows * stride
-  for (let i = 0; i < n; i++) {
-    store[o + i] = u1[i]
-    store[o + stride + i] = v1[i]
-    store[o + 2 * stride + i] = u2[i]
-    store[o + 3 * stride + i] = v2[i]
-    store[o + 4 * stride + i] = c[i]
-    store[o + 5 * stride + i] = s[i]
-  }
-}
-
-function startRow(table: MediaTable, stack: WaveStack, first: number, n: number, T: Float64Array): void {
-  const { q, mu, points } = table
-  const { entry, exit } = stack
-  for (let i = 0; i < n; i++) {
-    const near = entry * points + first + i
-    const far = exit * points + first + i
-    if (!(q[near] > 0)) refuseClosed(table, first + i, entry)
-    const Y = Math.sqrt(q[near]) / mu[near]
-    const Yfar = exit >= 0 && q[far] > 0 ? Math.sqrt(q[far]) / mu[far] : 0
-    const ar = Y * u1[i] + v2[i]
-    const ai = Y * u2[i] - v1[i]
-    const a = ar * ar + ai * ai
-    const t = scaleByPowerOfTwo((4 * (Y * Yfar)) / a, -2 * shift[i])
-    if (!(t < Infinity)) refuseResult(table, first + i)
-    transmission[i] = t
-    T[first + i] = t
-    const twice = 2 / a
-    gu1[i] = twice * ar * Y
-    gv1[i] = -(twice * ai)
-    gu2[i] = twice * ai * Y
-    gv2[i] = twice * ar
-  }
-}
-
-function backward(
-  table: MediaTable,
-  stack: WaveStack,
-  first: number,
-  n: number,
-  stride: number,
-  out: GradientOut,
-): void {
-  const { medium, width } = stack
-  const layers = medium.length
-  const { dTdWidth, dTdQ, dTdMu } = out
-  if (rescaled[0] === 1) scaleRow(0, n, stride)
-  for (let j = 0; j < layers; j++) {
-    const m = medium[j]
-    const w = width[j]
-    const slot = media.at(table, m, first, n)
-    const { k, y, z } = media
-    const divided = isThick(slot, w)
-    const t = m * table.points + first
-    const o = slot * blockSize
-    const r = j * rows * stride
-    for (let i = 0; i < n; i++) {
-      const q = table.q[t + i]
-      const mu = table.mu[t + i]
-      const cos = store[r + 4 * stride + i]
-      const sin = store[r + 5 * stride + i]
-      const down = z[o + i] * sin
-      const up = q < 0 ? -(y[o + i] * sin) : y[o + i] * sin
-      const a = sin / k[o + i]
-      const gu = gu1[i]
-      const gv = gv1[i]
-      const hu = gu2[i]
-      const hv = gv2[i]
-      const a1 = store[r + i]
-      const b1 = store[r + stride + i]
-      const a2 = store[r + 2 * stride + i]
-      const b2 = store[r + 3 * stride + i]
-      // What a change of the matrix [cos, -down; up, cos] by one of its entries does to ln D.
-      const byCos = gu * a1 + gv * b1 + (hu * a2 + hv * b2)
-      const byDown = gu * b1 + hu * b2
-      const byUp = gv * a1 + hv * a2
-      const T = -transmission[i]
-      const e = (first + i) * layers + j
-      dTdWidth[e] = T === 0 ? 0 : T * (cos * ((q / mu) * byUp - mu * byDown) - mu * up * byCos)
-      dTdQ[e] =
-        T === 0
-          ? 0
-          : T *
-            ((0.5 * (a + w * cos) * byUp) / mu - 0.5 * w * a * byCos - mu * slopeOfSine(q, w, cos, a, divided) * byDown)
-      dTdMu[e] = T === 0 ? 0 : -T * (a * byDown + (up / mu) * byUp)
-      gu1[i] = gu * cos + gv * up
-      gv1[i] = gv * cos - gu * down
-      gu2[i] = hu * cos + hv * up
-      gv2[i] = hv * cos - hu * down
-    }
-    if (rescaled[j + 1] === 1) scaleRow(j + 1, n, stride)
-  }
-}
-
-function scaleRow(at: number, n: number, stride: number): void {
-  for (let i = 0; i < n; i++) {
-    const scale = factors[at * stride + i]
-    gu1[i] *= scale
-    gv1[i] *= scale
-    gu2[i] *= scale
-    gv2[i] *= scale
-  }
+  // As in `spectrumInto`: two kernels, the same bits; the plain one refuses with a reason what the other one only marks.
+  const wide = table.points * stack.medium.length >= 64
+  if (wide && wasmAvailable && wasmGradient(table, stack, out)) return
+  plainGradient(table, stack, out)
 }

@@ -1,4 +1,4 @@
-import { wasmAvailable } from './kernel/wasmSpectrum.js'
+import { wasmAvailable } from './kernel/instance.js'
 import { spectrumInto } from './spectrum.js'
 
 /** Which code computes spectra here. Kernels of different names give the same bits, or the checksum below differs. */

@@ -25,6 +25,11 @@ export class BlockMedia {
   k = new Float64Array(blockSize)
   y = new Float64Array(blockSize)
   z = new Float64Array(blockSize)
+  /** For derivatives: 1/k, 1/mu, q/mu and 1/(2q). */
+  perK = new Float64Array(blockSize)
+  perMu = new Float64Array(blockSize)
+  ratio = new Float64Array(blockSize)
+  halfPerQ = new Float64Array(blockSize)
   /** Largest k where q < 0, and a power of two above 1 + y and above mu, for each slot. */
   kappaMax = new Float64Array(1)
   yBound = new Float64Array(1)
@@ -47,6 +52,10 @@ export class BlockMedia {
       this.k = new Float64Array(this.slots * blockSize)
       this.y = new Float64Array(this.slots * blockSize)
       this.z = new Float64Array(this.slots * blockSize)
+      this.perK = new Float64Array(this.slots * blockSize)
+      this.perMu = new Float64Array(this.slots * blockSize)
+      this.ratio = new Float64Array(this.slots * blockSize)
+      this.halfPerQ = new Float64Array(this.slots * blockSize)
       this.kappaMax = new Float64Array(this.slots)
       this.yBound = new Float64Array(this.slots)
       this.muBound = new Float64Array(this.slots)
@@ -64,7 +73,7 @@ export class BlockMedia {
     const slot = this.slot[m]
     if (slot !== 0 && this.filled[slot] === 1) return slot
     this.filled[slot] = 1
-    const { k, y, z } = this
+    const { k, y, z, perK, perMu, ratio, halfPerQ } = this
     const o = slot * blockSize
     const { q, mu } = table
     const t = m * table.points + first
@@ -79,6 +88,11 @@ export class BlockMedia {
       k[o + i] = root
       y[o + i] = square * d
       z[o + i] = mass * mass * d
+      perK[o + i] = mass * d
+      perMu[o + i] = root * d
+      const sign = q[t + i] < 0 ? -1 : 1
+      ratio[o + i] = sign * (y[o + i] * root)
+      halfPerQ[o + i] = sign * (0.5 * (perK[o + i] * perK[o + i]))
       if (q[t + i] < 0) kappa = Math.max(kappa, root)
       yMax = Math.max(yMax, Math.abs(y[o + i]))
       muMax = Math.max(muMax, Math.abs(mass))
@@ -90,7 +104,7 @@ export class BlockMedia {
   }
 }
 
-// Adding and taking away 1.5 2^52 rounds to the nearest integer, ties to even.
+// Adding and taking away 1.5 2^52 rounds to the inverseest integer, ties to even.
 const rounder = 6755399441055744
 
 // 2^n/2 and 2^-n/2.
@@ -104,20 +118,27 @@ for (let n = 1; n < 512; n++) {
 }
 
 /**
- * c and s of one layer at n points into `c` and `s`. `shift` null: undivided, kw must stay below `thickest` where q < 0.
- * Else divided by 2^n, and n added to shift.
+ * c and s of one layer at n points into `c` and `s`; q from entry t on, the medium's slot from entry o on. `shift` null:
+ * undivided, kw must stay below `thickest` where q < 0. Else divided by 2^n, and n added to shift.
+ *
+ * `g`, where given, receives d/dq of S = sin(kw)/k (sinh for q < 0), divided as c and s are:
+ * dS/dq = (w c - S)/(2q), whose terms cancel for thin layers. Where the angle needed no reduction the polynomials have
+ * the difference: w³ (a G - P - 1/2)/2 with c = 1 - a/2 + a² G, s = r (1 + a P).
  */
 export function layerFunctions(
   q: Float64Array,
   t: number,
-  k: Float64Array,
+  slots: BlockMedia,
   o: number,
   w: number,
   n: number,
   c: Float64Array,
   s: Float64Array,
   shift: Float64Array | null,
+  g: Float64Array | null,
 ): void {
+  const { k, perK, halfPerQ } = slots
+  const halfCube = 0.5 * w * w * w
   for (let i = 0; i < n; i++) {
     const x = k[o + i] * w
     if (q[t + i] < 0) {
@@ -129,12 +150,12 @@ export function layerFunctions(
         0.16666666666666669 +
         a * 0.008333333333330065 +
         (0.00019841269863041851 + a * 2.7557268478279004e-6 + a2 * 2.51003767988125e-8) * a2
-      const g =
+      const f =
         0.041666666666666664 +
         a * 0.0013888888888886554 +
         (2.48015873171361e-5 + a * 2.755728298260548e-7 + a2 * 2.091123041977771e-9) * a2
       const odd = r + r * a * p
-      const even = 1 + (0.5 * a + a2 * g)
+      const even = 1 + (0.5 * a + a2 * f)
       let up: number
       let down: number
       if (shift === null) {
@@ -149,6 +170,9 @@ export function layerFunctions(
       const d = up - down
       c[i] = even * h + odd * d
       s[i] = even * d + odd * h
+      if (g !== null) {
+        g[i] = turns === 0 ? -halfCube * (a * f - p + 0.5) : (w * c[i] - s[i] * perK[o + i]) * halfPerQ[o + i]
+      }
     } else {
       const turns = x * 0.3183098861837907 + rounder - rounder
       const r = x - turns * 3.1415926534682512 - turns * 1.2154201013012384e-10
@@ -161,12 +185,15 @@ export function layerFunctions(
         a *
           (0.008333333333333316 +
             (2.755731921916323e-6 + (1.605897731242445e-10 + 2.7314447512062796e-15 * a2) * a2) * a2)
-      const g =
+      const f =
         0.04166666666666666 +
         (2.4801587298913547e-5 + (2.0876681558822446e-9 + 4.646435932869834e-14 * a2) * a2) * a2 +
         a * (-0.0013888888888884767 + (-2.7557318573365657e-7 - 1.1466252257937559e-11 * a2) * a2)
       s[i] = r + r * a * p
-      c[i] = 1 - (0.5 * a - a2 * g)
+      c[i] = 1 - (0.5 * a - a2 * f)
+      if (g !== null) {
+        g[i] = turns === 0 ? halfCube * (a * f - p - 0.5) : (w * c[i] - s[i] * perK[o + i]) * halfPerQ[o + i]
+      }
     }
   }
 }

@@ -43,7 +43,7 @@ function sweep(table: MediaTable, stack: WaveStack, from: Side, far: number, fir
       grown = 0
     }
     grown += bound
-    computeLayer(table, medium[j], slot, width[j], first, n)
+    computeLayer(table, medium[j], slot, width[j], first, n, false)
     applyLayer(table, medium[j], slot, first, n)
   }
   if (grown > 400) renormalise(n)

@@ -1,14 +1,13 @@
 import { scaleByPowerOfTwo } from './bits.js'
 import { blockSize } from './layerBlock.js'
-import { slopeOfSine } from './layerDerivatives.js'
 import { checkStack, refuseClosed, refuseResult } from './stackChecks.js'
 import {
   applyLayer,
   c,
   computeLayer,
   factor,
+  g,
   growth,
-  isThick,
   media,
   renormalise,
   s,
@@ -61,7 +60,7 @@ function sweep(table: MediaTable, slope: MediaTable, stack: WaveStack, first: nu
       grown = 0
     }
     grown += bound
-    computeLayer(table, medium[j], slot, width[j], first, n)
+    computeLayer(table, medium[j], slot, width[j], first, n, true)
     tangents(table, slope, medium[j], slot, width[j], first, n)
     applyLayer(table, medium[j], slot, first, n)
   }
@@ -90,21 +89,20 @@ function tangents(
   first: number,
   n: number,
 ): void {
-  const { k, y, z } = media
+  const { perK, y, z } = media
   const t = m * table.points + first
   const o = slot * blockSize
-  const divided = isThick(slot, w)
   for (let i = 0; i < n; i++) {
     const q = table.q[t + i]
     const mu = table.mu[t + i]
     const dq = slope.q[t + i]
     const dmu = slope.mu[t + i]
     const cos = c[i]
-    const a = s[i] / k[o + i]
+    const a = s[i] * perK[o + i]
     const down = z[o + i] * s[i]
     const up = q < 0 ? -(y[o + i] * s[i]) : y[o + i] * s[i]
     const dcos = -0.5 * w * a * dq
-    const ddown = a * dmu + mu * slopeOfSine(q, w, cos, a, divided) * dq
+    const ddown = a * dmu + mu * g[i] * dq
     const dup = ((0.5 * (a + w * cos)) / mu) * dq - (up / mu) * dmu
     const p1 = du1[i]
     const p2 = du2[i]

@@ -1,5 +1,6 @@
 import { absorbingSpectrum } from './absorbing.js'
-import { wasmAvailable, wasmSpectrum } from './kernel/wasmSpectrum.js'
+import { wasmAvailable } from './kernel/instance.js'
+import { wasmSpectrum } from './kernel/wasmSpectrum.js'
 import { plainSpectrum } from './plainSpectrum.js'
 import { checkStack, lead } from './stackChecks.js'
 import type { MediaTable, Side, WaveStack } from './types.js'

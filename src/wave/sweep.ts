@@ -16,6 +16,8 @@ export const shift = new Float64Array(blockSize)
 /** Layer functions of the layer that `computeLayer` saw last. */
 export const c = new Float64Array(blockSize)
 export const s = new Float64Array(blockSize)
+/** Its derivative of sin(kw)/k by q, where asked for. */
+export const g = new Float64Array(blockSize)
 /** What `renormalise` multiplied by. */
 export const factor = new Float64Array(blockSize)
 
@@ -55,10 +57,19 @@ export function growth(slot: number, w: number): number {
   return exponential + 4 + exponentOf(1 + media.muBound[slot] * w) + exponentOf(media.yBound[slot])
 }
 
-/** Fills c and s for a layer of width w in medium m, whose slot is given. */
-export function computeLayer(table: MediaTable, m: number, slot: number, w: number, first: number, n: number): void {
+/** Fills c and s for a layer of width w in medium m, whose slot is given; g too with `slopes`. */
+export function computeLayer(
+  table: MediaTable,
+  m: number,
+  slot: number,
+  w: number,
+  first: number,
+  n: number,
+  slopes: boolean,
+): void {
   const t = m * table.points + first
-  layerFunctions(table.q, t, media.k, slot * blockSize, w, n, c, s, isThick(slot, w) ? shift : null)
+  const scaled = isThick(slot, w) ? shift : null
+  layerFunctions(table.q, t, media, slot * blockSize, w, n, c, s, scaled, slopes ? g : null)
 }
 
 /** Carries the vectors across the layer that c and s hold. */

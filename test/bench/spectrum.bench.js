@@ -104,7 +104,7 @@ for (const distinct of [false, true]) {
 
 console.log('')
 show('all derivatives against one spectrum', 'gradient', 'spectrum', 'ratio')
-for (const layers of [10, 50, 200]) {
+for (const layers of [10, 50, 200, 1000]) {
   const p = problem(layers, 1024, false)
   const [gradient, spectrum] = measure(p, [gradientWay(p), spectrumWays(p).wasm])
   show(`${layers} layers, three media`, ns(gradient), ns(spectrum), times(gradient / spectrum))

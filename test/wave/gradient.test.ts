@@ -141,7 +141,7 @@ describe('the gradient of T by the widths, q and mu of all layers', () => {
   it('is zero behind a closed exit', () => {
     const system = regionSystem({ V: 0, m: 0.067 }, [{ d: 3, V: 0.3, m: 0.07 }], { V: 0.5, m: 0.067 })
     const out = gradientAt(system, 0.1)
-    expect([out.T[0], out.dTdWidth[0], out.dTdQ[0], out.dTdMu[0]]).toEqual([0, 0, 0, 0])
+    for (const row of [out.T, out.dTdWidth, out.dTdQ, out.dTdMu]) expect(Math.abs(row[0])).toBe(0)
   })
 
   it('gives dT/d(width, potential, mass, alpha) through the media', () => {

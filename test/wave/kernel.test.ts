@@ -2,7 +2,10 @@ import { execFileSync } from 'node:child_process'
 import { readFileSync } from 'node:fs'
 import { describe, expect, it } from 'vitest'
 import { hardWall, type Side } from '../../src/wave/index.js'
-import { wasmAvailable, wasmSpectrum } from '../../src/wave/kernel/wasmSpectrum.js'
+import { wasmAvailable } from '../../src/wave/kernel/instance.js'
+import { wasmGradient } from '../../src/wave/kernel/wasmGradient.js'
+import { wasmSpectrum } from '../../src/wave/kernel/wasmSpectrum.js'
+import { plainGradient } from '../../src/wave/plainGradient.js'
 import { plainSpectrum } from '../../src/wave/plainSpectrum.js'
 import { poisoned } from './regionSystem.js'
 import { seeded } from './seeded.js'
@@ -61,16 +64,34 @@ describe.skipIf(!wasmAvailable)('the WebAssembly kernel and its plain twin', () 
         continue
       }
       expect(plainSpectrum(table, stack, plain, from, near, far)).toBe(worst)
-      for (const row of ['T', 'R', 'log10T'] as const) {
-        const a = new BigInt64Array(plain[row].buffer)
-        const b = new BigInt64Array(wasm[row].buffer)
-        for (let e = 0; e < points; e++) {
-          if (a[e] !== b[e]) throw new Error(`${row} of point ${e}: ${plain[row][e]} plain, ${wasm[row][e]} wasm`)
-        }
-      }
+      for (const row of ['T', 'R', 'log10T'] as const) expectSameBits(row, plain[row], wasm[row])
       compared += points
     }
     expect(refused).toBeGreaterThan(10)
+  })
+
+  it('give the same bits of half a million derivatives of each kind', () => {
+    const random = seeded(4711)
+    let compared = 0
+    while (compared < 500_000) {
+      const { table, stack, points } = anyProblem(random)
+      const size = points * stack.medium.length
+      const rows = () => ({
+        T: poisoned(points),
+        dTdWidth: poisoned(size),
+        dTdQ: poisoned(size),
+        dTdMu: poisoned(size),
+      })
+      const plain = rows()
+      const wasm = rows()
+      if (!wasmGradient(table, stack, wasm)) {
+        expect(() => plainGradient(table, stack, plain)).toThrow(RangeError)
+        continue
+      }
+      plainGradient(table, stack, plain)
+      for (const row of ['T', 'dTdWidth', 'dTdQ', 'dTdMu'] as const) expectSameBits(row, plain[row], wasm[row])
+      compared += size
+    }
   })
 
   it('leave log10 T alone when it is not asked for', () => {
@@ -90,3 +111,11 @@ describe('the bytes of the kernel', () => {
     expect(compiled).toBe(before)
   })
 })
+
+function expectSameBits(name: string, plain: Float64Array, wasm: Float64Array): void {
+  const a = new BigInt64Array(plain.buffer)
+  const b = new BigInt64Array(wasm.buffer)
+  for (let i = 0; i < a.length; i++) {
+    if (a[i] !== b[i]) throw new Error(`${name} ${i}: ${plain[i]} plain, ${wasm[i]} wasm`)
+  }
+}

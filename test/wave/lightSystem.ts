@@ -5,7 +5,7 @@ const D = Decimal.clone({ precision: 60 })
 const degree = D.acos(-1).div(180)
 
 /** hc, eV nm: exact by definition, here to double precision. */
-export const hc = 1239.8419843320026
+export const hc = 1239.8419843320025
 
 export interface Film {
   n: number

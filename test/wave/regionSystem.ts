@@ -2,7 +2,7 @@ import type { MediaTable, WaveMedia, WaveSystem } from '../../src/wave/index.js'
 import { hardWall } from '../../src/wave/index.js'
 
 /** hbar²/2m0, eV nm² (CODATA 2022). */
-export const C = 0.0380998211096858373118528227024
+export const C = 0.038099821109685836
 
 export interface Region {
   V: number
