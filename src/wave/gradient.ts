@@ -1,3 +1,4 @@
+import { absorbingGradient } from './absorbingDerivatives.js'
 import { wasmAvailable } from './kernel/instance.js'
 import { wasmGradient } from './kernel/wasmGradient.js'
 import { plainGradient } from './plainGradient.js'
@@ -20,10 +21,15 @@ export interface GradientOut {
  * from exit to entry that keeps the vectors at every interface, one adjoint sweep back. With D = |2YA|² and
  * x(j - 1) = M(j) x(j), d ln T = - sum g(j - 1) dM(j) x(j), g(j) = g(j - 1) M(j), g(0) = (dD/dx)/D. It costs about three
  * spectra whatever the number of layers. The logarithm is differentiated, so that the derivatives of a T of 1e-250 are
- * right relative to it; where T underflows to 0 they are 0. Throws as `spectrumInto`.
+ * right relative to it; where T underflows to 0 they are 0. For media that absorb see `absorbingGradient`. Throws as
+ * `spectrumInto`.
  */
 export function gradientInto(table: MediaTable, stack: WaveStack, out: GradientOut): void {
   checkStack(stack)
+  if (table.qIm) {
+    absorbingGradient(table, stack, out)
+    return
+  }
   // As in `spectrumInto`: two kernels, the same bits; the plain one refuses with a reason what the other one only marks.
   const wide = table.points * stack.medium.length >= 64
   if (wide && wasmAvailable && wasmGradient(table, stack, out)) return

@@ -1,3 +1,4 @@
+import { absorbingSlope } from './absorbingDerivatives.js'
 import { scaleByPowerOfTwo } from './bits.js'
 import { blockSize } from './layerBlock.js'
 import { checkStack, refuseClosed, refuseResult } from './stackChecks.js'
@@ -32,13 +33,17 @@ const du2 = new Float64Array(blockSize)
 const dv2 = new Float64Array(blockSize)
 
 /**
- * T and dT/dE of a lossless stack, from the entry. `slope` holds dq/dE and dmu/dE where `table` holds q and mu, leads
+ * T and dT/dE, from the entry; for media that absorb see `absorbingSlope`. `slope` holds dq/dE and dmu/dE where `table` holds q and mu, leads
  * too. The sweep of `spectrumInto` with its tangent beside it (forward differentiation); the logarithmic derivative is
  * taken first, so that dT is right relative to however small a T. Both are 0 where the exit is closed. About twice a
  * spectrum. Throws as `spectrumInto`.
  */
 export function slopeInto(table: MediaTable, slope: MediaTable, stack: WaveStack, out: SlopeOut): void {
   checkStack(stack)
+  if (table.qIm) {
+    absorbingSlope(table, slope, stack, out)
+    return
+  }
   media.assign(table, stack)
   for (let first = 0; first < table.points; first += blockSize) {
     const n = Math.min(blockSize, table.points - first)
