@@ -41,7 +41,7 @@ describe('constants', () => {
     near(hbarEvFs, 0.6582119569, 1e-10)
     near(conductanceQuantumS, 7.748091729e-5, 2e-10)
     near(300 * boltzmannEvPerK, 0.0258519997864355, 1e-14)
-    near(hbar2Over2m0, 0.0380998211096858373, 1e-15)
+    near(hbar2Over2m0, 0.038099821109685836, 1e-15)
   })
 
   test('the mass of 2018 would move hbar²/2m0 by 1.4e-9', () => {
