@@ -1,0 +1,73 @@
+import type { Candidate, LayerReport } from '../deliver/index.js'
+import { sheetOf, type Yield } from '../growth/index.js'
+import type { Job } from '../job/index.js'
+import { resolveMedium } from '../model/index.js'
+import { resonances } from '../wave/index.js'
+import { pathError } from './audit.js'
+import type { BoundJob } from './problem.js'
+import { profileOf } from './profileOf.js'
+import type { Listed } from './ranking.js'
+import { reportEnergies } from './reportEnergies.js'
+import { spectrumOf } from './spectrumOf.js'
+import { stackNotes } from './stackNotes.js'
+
+/** A peak narrower than this (eV) is left out of the path's check: energies as doubles don't resolve it. */
+const needleEv = 1e-9
+
+/**
+ * Everything that the files say of one stack of the list. Figures that belong to one condition (poles, profile, sheet) are those of
+ * the job's first.
+ */
+export function candidateOf(job: Job, { design, target }: BoundJob, listed: Listed): Candidate {
+  const assignment = Int32Array.from(listed.found.assignment)
+  const layers = design.layers(assignment)
+  const systems = design.systems(assignment)
+  const [situation] = design.situations
+  const [system] = systems
+  const evaluation = target.evaluate(systems)
+  const limits = target.limits(systems, evaluation)
+  const { peak } = evaluation
+  const sheet = sheetOf({ layers, situation, growth: job.growth, target, evaluation, limits })
+  const poles = resonances(system, job.scanEv, { count: true })
+  const energyEv = reportEnergies(job.scanEv, poles.poles, peak)
+  const spectra = systems.map((one, i) => ({
+    condition: job.conditions[i].name,
+    energyEv,
+    ...spectrumOf(one, energyEv),
+  }))
+  const resolvable = peak !== null && peak.fwhmEv >= needleEv ? peak.energyEv : null
+  const exit = situation.exit === 'hard wall' ? null : resolveMedium(situation.exit, situation)
+  const alloys = new Set(
+    layers.flatMap(({ choice }) =>
+      choice.kind === 'material' && choice.x !== null ? [`${choice.material} ${choice.x}`] : [],
+    ),
+  )
+  return {
+    rank: listed.rank,
+    id: listed.found.score.id,
+    listedAs: listed.listedAs,
+    margin: listed.found.score.margin,
+    totalNm: listed.found.score.totalNm,
+    compositions: alloys.size,
+    evaluation,
+    yield: listed.yield,
+    limitingDemand: limiting(job, listed.yield),
+    worstLayer: sheet.worstLayer,
+    worstShiftEv: sheet.worstShiftEv,
+    fluxError: Math.max(...spectra.map(({ fluxError }) => fluxError)),
+    pathError: Math.max(...systems.map((one) => pathError(one, job.scanEv, resolvable))),
+    stack: design.text(assignment),
+    layers: layers.map((layer, j): LayerReport => ({ ...layer, ...sheet.rows[j] })),
+    spectra: spectra.map(({ fluxError: _, ...spectrum }) => spectrum),
+    resonances: poles.poles,
+    profile: profileOf(system, layers, exit, peak?.energyEv ?? null),
+    notes: stackNotes(job, layers, poles),
+  }
+}
+
+/** The demand that fails most often, the earlier where two do. */
+function limiting(job: Job, grown: Yield | null): string | null {
+  if (grown === null) return null
+  const most = Math.max(...grown.failures)
+  return most > 0 ? job.demands[grown.failures.indexOf(most)].id : null
+}

@@ -1,0 +1,7 @@
+export { engineVersion } from './engine.js'
+export { resumeHash } from './hashes.js'
+export { type BoundJob, problemOf } from './problem.js'
+export type { Progress } from './progress.js'
+export { RunError } from './RunError.js'
+export { type RunOptions, runJob } from './runJob.js'
+export { sampledUnits } from './units.js'

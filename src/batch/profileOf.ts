@@ -1,0 +1,46 @@
+import type { ProfileReport } from '../deliver/index.js'
+import type { GrownLayer } from '../design/index.js'
+import type { ResolvedMedium } from '../model/index.js'
+import { type WaveSystem, waveShape } from '../wave/index.js'
+
+/** Points of a lead and, at least, of a layer; a layer wider than this many steps gets one a step. */
+const leadPoints = 40
+const fewest = 8
+const stepNm = 0.1
+const mostPoints = 400
+
+/**
+ * The edge through the stack with a piece of each lead, every interface given twice, and abs(u)² at the peak. `exit` null: a hard
+ * wall, behind which there is nothing.
+ */
+export function profileOf(
+  system: WaveSystem,
+  layers: readonly GrownLayer[],
+  exit: ResolvedMedium | null,
+  peakEv: number | null,
+): ProfileReport {
+  const zNm: number[] = []
+  const edgeEv: number[] = []
+  const run = (from: number, to: number, points: number, edge: number) => {
+    for (let i = 0; i <= points; i++) {
+      zNm.push(i === points ? to : from + ((to - from) * i) / points)
+      edgeEv.push(edge)
+    }
+  }
+  const total = layers.reduce((sum, { widthNm }) => sum + widthNm, 0)
+  const leadNm = Math.max(3, 0.2 * total)
+  run(-leadNm, 0, leadPoints, 0)
+  let from = 0
+  for (const { widthNm, resolved } of layers) {
+    const points = Math.min(mostPoints, Math.max(fewest, Math.ceil(widthNm / stepNm)))
+    run(from, from + widthNm, points, resolved.region.potentialEv)
+    from += widthNm
+  }
+  if (exit) run(from, from + leadNm, leadPoints, exit.region.potentialEv)
+  const z = Float64Array.from(zNm)
+  return {
+    zNm: z,
+    edgeEv: Float64Array.from(edgeEv),
+    densityPerNm: peakEv === null || layers.length === 0 ? null : waveShape(system, peakEv, z),
+  }
+}

@@ -1,0 +1,25 @@
+import type { PeakFigures } from '../target/index.js'
+import type { Pole } from '../wave/index.js'
+
+const evenPoints = 1001
+const bend = [0.125, 0.25, 0.375, 0.5, 0.625, 0.75, 1, 1.25, 1.5, 2, 3, 4, 6, 8, 12, 16, 24, 32]
+
+/**
+ * Energies (eV) at which a reported spectrum is computed, ascending: 1001 evenly over the scan, and thickly around every line, so
+ * that a picture drawn through them shows each at its height, and the peak's own figures.
+ */
+export function reportEnergies(
+  [low, high]: readonly [number, number],
+  poles: readonly Pole[],
+  peak: PeakFigures | null,
+): Float64Array {
+  const energies = new Set<number>()
+  for (let i = 0; i < evenPoints; i++)
+    energies.add(i === evenPoints - 1 ? high : low + ((high - low) * i) / (evenPoints - 1))
+  for (const { energyEv, widthEv } of poles) {
+    energies.add(energyEv)
+    for (const part of bend) for (const sign of [-1, 1]) energies.add(energyEv + sign * part * widthEv)
+  }
+  if (peak) for (const energy of [peak.lowEv, peak.energyEv, peak.highEv]) energies.add(energy)
+  return Float64Array.from([...energies].filter((energy) => energy >= low && energy <= high)).sort()
+}
