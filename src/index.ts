@@ -1,4 +1,16 @@
-export { type LayerRow, readLayers } from './job/index.js'
+export { type Progress, RunError, type RunOptions, runJob } from './batch/index.js'
+export type { Candidate, JobResult, RunRecord } from './deliver/index.js'
+export { DesignError } from './design/index.js'
+export {
+  type Job,
+  JobError,
+  type JobProblem,
+  jobSchema,
+  type LayerRow,
+  LayersError,
+  readJob,
+  readLayers,
+} from './job/index.js'
 export {
   type ElectronStack,
   type LightStack,

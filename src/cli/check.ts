@@ -1,0 +1,103 @@
+import { availableParallelism } from 'node:os'
+import { performance } from 'node:perf_hooks'
+import { problemOf, sampledUnits } from '../batch/index.js'
+import type { Design } from '../design/index.js'
+import type { Job } from '../job/index.js'
+import { runUnit } from '../search/index.js'
+import { print, sayError } from './console.js'
+import { exitCode } from './exitCodes.js'
+import { jobFiles } from './jobFiles.js'
+import { readJobs } from './readJobs.js'
+
+/** Reads and explains jobs; writes nothing. */
+export async function check(args: readonly string[]): Promise<number> {
+  const { jobs, wrong } = await readJobs(jobFiles(args))
+  let failed = false
+  for (const job of jobs) {
+    try {
+      print(explanation(job))
+    } catch (error) {
+      failed = true
+      sayError(`${job.file}  ${(error as Error).message}`)
+    }
+  }
+  return wrong || failed ? exitCode.wrong : exitCode.done
+}
+
+function explanation(job: Job): string {
+  const { problem, design } = problemOf(job)
+  const units = sampledUnits[job.search.effort]
+  const start = performance.now()
+  runUnit(problem, 0, 'check')
+  const unitSeconds = (performance.now() - start) / 1000
+  const threads = availableParallelism()
+  const points = job.demands.reduce((sum, demand) => sum + pointsOf(demand), 0) * job.conditions.length
+  const [low, high] = job.scanEv
+  const rows: [string, string][] = [
+    ['conditions', job.conditions.map(conditionText).join('; ')],
+    ['scan', `${short(low * 1000)}..${short(high * 1000)} meV`],
+    ['demands', job.demands.map(({ id, kind }) => `${id} ${kind}`).join(', ')],
+    ...variableRows(design),
+    ['stacks', `${design.stackCount()} different ones on the lattice`],
+    ['monolayers', monolayers(design)],
+    ['method', `sampled, effort ${job.search.effort}: ${units} units, seed ${job.search.seed}`],
+    ['points', `${points} energies a stack, beside its extremes`],
+    [
+      'time',
+      `about ${duration((unitSeconds * units) / threads)} for the search with ${threads} threads (a unit took ${short(unitSeconds)} s here), then the yields`,
+    ],
+  ]
+  const notes = [...job.notes, ...design.notes].map((note) => `  note  ${note}`)
+  const width = Math.max(...rows.map(([name]) => name.length))
+  return [
+    `${job.name}  (${job.file})`,
+    ...(job.note === '' ? [] : [`  ${job.note}`]),
+    ...rows.filter(([, text]) => text !== '').map(([name, text]) => `  ${name.padEnd(width)}  ${text}`),
+    ...notes,
+    '',
+  ].join('\n')
+}
+
+function variableRows({ places }: Design): [string, string][] {
+  if (places.length === 0) return [['variables', 'none: everything is fixed']]
+  return places.map(({ name, choices }, i) => [i === 0 ? 'variables' : ' ', `${name}: ${choices} choices`])
+}
+
+/** nm per ML of every medium that the layers of the first and last choices have. */
+function monolayers(design: Design): string {
+  const found = new Map<string, number>()
+  const { places } = design
+  const most = Math.max(
+    1,
+    ...places.map(({ choices, ordered, name }) => (ordered && name.endsWith('width') ? 1 : choices)),
+  )
+  for (let choice = 0; choice < Math.min(most, 200); choice++) {
+    const assignment = Int32Array.from(places, ({ choices }) => Math.min(choice, choices - 1))
+    for (const { choice: medium, resolved } of design.layers(design.repair(assignment))) {
+      if (medium.kind !== 'material' || resolved.monolayerNm === null) continue
+      found.set(`${medium.material}${medium.x === null ? '' : `(${medium.x})`}`, resolved.monolayerNm)
+    }
+  }
+  return [...found].map(([name, nm]) => `${name} ${nm.toFixed(5)} nm`).join(', ')
+}
+
+function pointsOf(demand: Job['demands'][number]): number {
+  if (demand.kind === 'pass' || demand.kind === 'block') return demand.pointsEv.length
+  return demand.kind === 'curve' ? demand.rows.length : 0
+}
+
+function conditionText({ name, temperatureK, biasV, inPlaneEv }: Job['conditions'][number]): string {
+  const parts = [`${short(temperatureK)} K`]
+  if (biasV !== 0) parts.push(`${short(biasV * 1000)} mV`)
+  if (inPlaneEv !== 0) parts.push(`${short(inPlaneEv * 1000)} meV in plane`)
+  return name === '' ? parts.join(', ') : `${name}: ${parts.join(', ')}`
+}
+
+function duration(seconds: number): string {
+  if (seconds < 90) return `${short(seconds)} s`
+  return seconds < 5400 ? `${Math.round(seconds / 60)} min` : `${short(seconds / 3600)} h`
+}
+
+function short(value: number): string {
+  return String(Number(value.toPrecision(3)))
+}
