@@ -33,6 +33,7 @@ class CompiledTarget implements Target {
   /** The part of the window that decides what is met. */
   private readonly limitsEv: readonly [number, number]
   private readonly onlyCurves: boolean
+  private readonly scanEv: readonly [number, number]
   private readonly landscapes = new WeakMap<WaveSystem, Landscape>()
 
   constructor({ demands, scanEv, resolutionEv, conditions }: TargetSpec) {
@@ -44,6 +45,7 @@ class CompiledTarget implements Target {
     })
     this.weights = this.judges.map(({ weight }) => weight)
     this.spectrum = new PointSpectrum(points)
+    this.scanEv = scanEv
     this.windowEv = [0, 2 * scanEv[1] - scanEv[0]]
     const ranges = this.judges.flatMap(({ rangeEv }) => (rangeEv ? [rangeEv] : []))
     this.limitsEv = [
@@ -81,7 +83,7 @@ class CompiledTarget implements Target {
   evaluate(systems: readonly WaveSystem[]): Evaluation {
     const { merit, demands } = this.judgeAll(systems)
     const first = demands.find(({ kind }) => kind === 'peak')
-    const peak = first ? first.peak : highestPeak(this.landscape(systems[0]))
+    const peak = first ? first.peak : highestPeak(this.landscape(systems[0]), this.scanEv)
     return { merit, met: demands.every(({ met }) => met !== false), demands, peak }
   }
 
@@ -155,8 +157,13 @@ function resultOf({ id, kind }: Judge, square: number, verdicts: readonly Verdic
   return { id, kind, reached, rms: Math.sqrt(square), met, extremeEv, peak }
 }
 
-function highestPeak(landscape: Landscape): PeakFigures | null {
-  return greatest(landscape, ({ T }) => T)
+/**
+ * Of the maxima in the scan, where they are seen; of all where it has none. Heights compare at 9 digits, the lower energy first:
+ * maxima of T = 1 differ by rounding only.
+ */
+function highestPeak(landscape: Landscape, [low, high]: readonly [number, number]): PeakFigures | null {
+  const height = ({ energyEv, T }: Extremum) => Number(T.toPrecision(9)) + (energyEv >= low && energyEv <= high ? 2 : 0)
+  return greatest(landscape, height)
 }
 
 function nearestPeak(landscape: Landscape, energyEv: number): PeakFigures | null {

@@ -28,7 +28,7 @@ export interface Evaluation {
   /** All limits are met at every condition. */
   readonly met: boolean
   readonly demands: readonly DemandResult[]
-  /** Of the first peak demand, else the highest maximum of the window; null when there is none. */
+  /** Of the first peak demand, else the highest maximum of the scan (of the window where that has none); null when there is none. */
   readonly peak: PeakFigures | null
 }
 
