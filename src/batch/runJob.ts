@@ -199,7 +199,7 @@ class Run {
       cut: { 'point terms': archive.cut },
       statement:
         `sampled: ${archive.units} independent starts among ${stacks} stacks; ${archive.startsInBest} of them ended in the best stack. ` +
-        'Nothing is claimed of stacks that no start came to.',
+        'A stack that several starts looked at counts for each. Nothing is claimed of stacks that no start came to.',
       stopped_early: archive.units < this.total,
       seconds: Number(this.workSeconds.toFixed(3)),
     }
@@ -223,8 +223,10 @@ class Run {
     let reserve: number | null = null
     return () => {
       const best = this.archive.best(1).at(0)
-      if (reserve === null && best) reserve = limits ? this.yieldSeconds(best) : 5
-      return Date.now() + 1000 * (reserve ?? 0) >= until.getTime()
+      // Late by one unit is better than a morning without any candidate.
+      if (!best) return false
+      reserve ??= limits ? this.yieldSeconds(best) : 5
+      return Date.now() + 1000 * reserve >= until.getTime()
     }
   }
 

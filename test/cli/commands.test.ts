@@ -1,0 +1,47 @@
+import { readdirSync } from 'node:fs'
+import { fileURLToPath } from 'node:url'
+import { describe, expect, it } from 'vitest'
+import { materialNames } from '../../src/media/index.js'
+import { command, emptyFolder, withJob } from './commandLine.js'
+
+const jobs = fileURLToPath(new URL('../../jobs', import.meta.url))
+
+describe('check', () => {
+  it('explains every example job, its stacks counted, and writes nothing', async () => {
+    const folder = emptyFolder()
+    const { code, stdout, stderr } = await command(['check', jobs], folder)
+    expect(code, stderr).toBe(0)
+    expect(stdout).toContain('cold-collector-80')
+    expect(stdout).toMatch(/stacks +630 different ones/)
+    // Half of the lattice constant of GaAs at 300 K, 0.565325 nm (Vurgaftman et al., J. Appl. Phys. 89, 5815, 2001).
+    expect(stdout).toContain('GaAs 0.28266 nm')
+    expect(readdirSync(folder)).toEqual([])
+  })
+
+  it('exits with 2 where a job is wrong, and still explains the right ones', async () => {
+    const folder = withJob()
+    const { code, stdout, stderr } = await command(['check', 'job.yaml', 'absent.yaml'], folder)
+    expect(code).toBe(2)
+    expect(stdout).toContain('small')
+    expect(stderr).toContain('absent.yaml')
+  })
+})
+
+describe('materials', () => {
+  it('lists every material', async () => {
+    const { stdout } = await command(['materials'], emptyFolder())
+    for (const name of materialNames) expect(stdout).toContain(name)
+  })
+
+  it('gives each number of one with its source', async () => {
+    const { stdout } = await command(['materials', 'GaAs'], emptyFolder())
+    expect(stdout).toMatch(/lattice constant at 300 K +0\.565325 +nm +\S/)
+  })
+})
+
+describe('schema', () => {
+  it('is a JSON Schema', async () => {
+    const { stdout } = await command(['schema'], emptyFolder())
+    expect(JSON.parse(stdout)).toMatchObject({ $schema: expect.stringContaining('json-schema.org') })
+  })
+})
