@@ -1,10 +1,10 @@
-import { existsSync, readdirSync } from 'node:fs'
+import { readdirSync } from 'node:fs'
 import { fileURLToPath } from 'node:url'
 import { describe, expect, test } from 'vitest'
 import { type Job, JobError, type LayerSpec, type PeriodSpec, readJob, readJobText } from '../../src/job/index.js'
 
 const root = fileURLToPath(new URL('../../', import.meta.url))
-const bench = fileURLToPath(new URL('../../../shared/bench/', import.meta.url))
+const bench = fileURLToPath(new URL('../bench/tasks/', import.meta.url))
 
 const plain = `
 format: 1
@@ -180,7 +180,7 @@ describe('a job in order', () => {
     })
   }
 
-  test.skipIf(!existsSync(bench))('the shared bench jobs are read (needs ../shared)', async () => {
+  test('the bench jobs are read', async () => {
     for (const letter of 'abcdef') {
       const job = await readJob(`${bench}${letter}.yaml`)
       expect(job.growth.stepNm).toBe(0.283)

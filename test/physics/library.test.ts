@@ -1,6 +1,6 @@
 import { describe, expect, test } from 'vitest'
 import { type ElectronStack, type LightStack, spectrum } from '../../src/index.js'
-import { electronCases, opticalCases, type ReferencePoint, referenceIsHere, tolerance } from './reference.js'
+import { electronCases, opticalCases, type ReferencePoint, tolerance } from './reference.js'
 
 /** T, R and log10 T of one point within what doubles can keep. */
 function holds(
@@ -24,40 +24,35 @@ function holds(
   }
 }
 
-describe.skipIf(!referenceIsHere)(
-  'spectrum against the reference in 60 digits (../shared/reference, skipped when absent)',
-  () => {
-    test.each(electronCases)('$id $title', ({ left, layers, right, points, incidence }) => {
-      const region = ({ V, m, alpha }: typeof left) => ({ potentialEv: V, massRel: m, alphaPerEv: alpha })
-      for (const point of points) {
-        const stack: ElectronStack = {
-          kind: 'electron',
-          entry: region(left),
-          layers: layers.map((layer) => ({ ...region(layer), widthNm: layer.d })),
-          exit: right.hard_wall ? 'hard wall' : region(right),
-          inPlaneKPerNm: point.k_par,
-        }
-        holds(stack, point.E, point, incidence)
+describe('spectrum against the reference in 60 digits', () => {
+  test.each(electronCases)('$id $title', ({ left, layers, right, points, incidence }) => {
+    const region = ({ V, m, alpha }: typeof left) => ({ potentialEv: V, massRel: m, alphaPerEv: alpha })
+    for (const point of points) {
+      const stack: ElectronStack = {
+        kind: 'electron',
+        entry: region(left),
+        layers: layers.map((layer) => ({ ...region(layer), widthNm: layer.d })),
+        exit: right.hard_wall ? 'hard wall' : region(right),
+        inPlaneKPerNm: point.k_par,
       }
-    })
+      holds(stack, point.E, point, incidence)
+    }
+  })
 
-    const lossless = opticalCases.filter(({ left, layers, right }) =>
-      [left, ...layers, right].every(({ k }) => k === 0),
-    )
+  const lossless = opticalCases.filter(({ left, layers, right }) => [left, ...layers, right].every(({ k }) => k === 0))
 
-    test.each(lossless)('$id $title', ({ left, layers, right, points, incidence }) => {
-      const medium = ({ n, k }: typeof left) => ({ index: n, extinction: k })
-      for (const point of points) {
-        const stack: LightStack = {
-          kind: 'light',
-          entry: medium(left),
-          layers: layers.map((layer) => ({ ...medium(layer), widthNm: layer.d })),
-          exit: medium(right),
-          angleDeg: point.angle,
-          polarisation: point.pol,
-        }
-        holds(stack, point.wavelength, point, incidence)
+  test.each(lossless)('$id $title', ({ left, layers, right, points, incidence }) => {
+    const medium = ({ n, k }: typeof left) => ({ index: n, extinction: k })
+    for (const point of points) {
+      const stack: LightStack = {
+        kind: 'light',
+        entry: medium(left),
+        layers: layers.map((layer) => ({ ...medium(layer), widthNm: layer.d })),
+        exit: medium(right),
+        angleDeg: point.angle,
+        polarisation: point.pol,
       }
-    })
-  },
-)
+      holds(stack, point.wavelength, point, incidence)
+    }
+  })
+})

@@ -3,7 +3,7 @@ import { type ElectronStack, spectrum } from '../../src/index.js'
 import { type Job, parseLayers } from '../../src/job/index.js'
 import { stackOf } from '../../src/model/index.js'
 
-// The stacks of ../shared/worked-example.md, evaluated there from the published material numbers in 30-digit arithmetic.
+// The stacks of a worked example, evaluated there from the published material numbers in 30-digit arithmetic.
 const job = {
   kind: 'electron',
   conditions: [{ name: '', temperatureK: 77, biasV: 0, inPlaneEv: 0 }],

@@ -1,11 +1,11 @@
 import { describe, expect, it } from 'vitest'
 import { scatteringT, spectrumInto } from '../../src/wave/index.js'
-import { electronCases, referenceIsHere, tolerance } from '../physics/reference.js'
+import { electronCases, tolerance } from '../physics/reference.js'
 import { poisoned, type Region, regionSystem, tableOf } from './regionSystem.js'
 import { seeded } from './seeded.js'
 
 describe('scatteringT, the audit path', () => {
-  it.skipIf(!referenceIsHere)('holds the electron reference too (../shared/reference, skipped when absent)', () => {
+  it('holds the electron reference too', () => {
     for (const test of electronCases) {
       if (test.incidence !== 'left') continue
       const exit = test.right.hard_wall ? 'hard wall' : test.right
