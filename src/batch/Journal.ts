@@ -40,13 +40,7 @@ export class Journal {
     if (existsSync(path) && (fresh || old === null || old.resume_hash !== head.resume_hash)) {
       const kept = freeName(folder, old)
       renameSync(path, join(folder, kept))
-      notes.push(
-        fresh
-          ? `The old journal is kept as ${kept}.`
-          : old === null
-            ? `${journalName} had no whole first line; it is kept as ${kept}.`
-            : `The job has changed since its last run; what was searched before is kept as ${kept}.`,
-      )
+      notes.push(`${whyKept(old, head, fresh)} It is kept as ${kept}.`)
     }
     const earlier = join(folder, keptName(head.resume_hash))
     if (!fresh && !existsSync(path) && existsSync(earlier)) {
@@ -94,6 +88,14 @@ function refuseOther(path: string, found: JournalHead, wanted: JournalHead): voi
       `${wanted.checksum} (kernel ${wanted.kernel}). The same job would not give the same answer. Go on where it was begun, or ` +
       'start anew with --fresh.',
   )
+}
+
+function whyKept(old: JournalHead | null, head: JournalHead, fresh: boolean): string {
+  if (old === null) return `${journalName} had no whole first line.`
+  if (fresh) return 'The old journal is left aside, as asked.'
+  if (old.engine !== head.engine)
+    return `The old journal is of engine ${old.engine}, this is ${head.engine}: the search starts anew.`
+  return 'The job has changed since its last run, and the search starts anew. The old journal may be wanted again.'
 }
 
 /** Kept journals are named after their search, so that it can go on when the job is changed back. */
