@@ -3,6 +3,9 @@
  * Seeded, warmed; every number is the best of several rounds, kernels taking turns; ratios are within this run.
  */
 import { spawnSync } from 'node:child_process'
+import { mkdtempSync, rmSync } from 'node:fs'
+import { tmpdir } from 'node:os'
+import { join } from 'node:path'
 import { fileURLToPath } from 'node:url'
 
 const dist = new URL(process.env.BENCH_DIST ?? '../../dist/', import.meta.url)
@@ -86,6 +89,17 @@ function gradientWay({ table, stack, layers, points }) {
   }
 }
 
+/** ns of the same work by nativeSpectrum.c, few media and all distinct; null without a C compiler. */
+function native() {
+  const folder = mkdtempSync(join(tmpdir(), 'native-'))
+  const program = join(folder, 'spectrum')
+  const source = fileURLToPath(new URL('nativeSpectrum.c', import.meta.url))
+  const built = spawnSync('cc', ['-O3', '-march=native', '-ffast-math', source, '-o', program, '-lm'])
+  const ran = built.status === 0 ? spawnSync(program, { encoding: 'utf8' }) : null
+  rmSync(folder, { recursive: true })
+  return ran?.status === 0 ? ran.stdout.trim().split('\n').map(Number) : null
+}
+
 const show = (label, ...cells) => console.log(label.padEnd(44), ...cells.map((c) => String(c).padStart(12)))
 const ns = (x) => `${x.toFixed(2)} ns`
 const times = (x) => `${x.toFixed(1)} x`
@@ -93,13 +107,15 @@ const times = (x) => `${x.toFixed(1)} x`
 console.log(`Spectrum (T and R, no log10 T), ns per layer and energy; kernel in use: ${wave.kernelName}\n`)
 const numpy = spawnSync('python3', [fileURLToPath(new URL('numpySpectrum.py', import.meta.url))], { encoding: 'utf8' })
 const numpyNs = numpy.status === 0 ? Number(numpy.stdout) : null
-show('21 layers, 2048 energies', 'plain', 'wasm', 'numpy', 'numpy/wasm')
+const nativeNs = native()
+show('21 layers, 2048 energies', 'plain', 'wasm', 'numpy', 'numpy/wasm', 'native', 'wasm/native')
 for (const distinct of [false, true]) {
   const p = problem(21, 2048, distinct)
   const { plain, wasm } = spectrumWays(p)
   const [a, b] = measure(p, [plain, wasm])
-  const numpyCell = numpyNs === null ? 'no numpy' : distinct ? '' : ns(numpyNs)
-  show(distinct ? 'every layer its own medium' : 'three media', ns(a), ns(b), numpyCell, numpyNs === null ? '' : times(numpyNs / b))
+  const script = numpyNs === null ? ['no numpy', ''] : distinct ? ['', ''] : [ns(numpyNs), times(numpyNs / b)]
+  const limit = nativeNs === null ? ['no compiler', ''] : [ns(nativeNs[distinct ? 1 : 0]), times(b / nativeNs[distinct ? 1 : 0])]
+  show(distinct ? 'every layer its own medium' : 'three media', ns(a), ns(b), ...script, ...limit)
 }
 
 console.log('')
