@@ -5,17 +5,24 @@ import type { Design } from '../design/index.js'
 import type { Job } from '../job/index.js'
 import { runUnit } from '../search/index.js'
 import { print, sayError } from './console.js'
+import { countText } from './countText.js'
 import { exitCode } from './exitCodes.js'
+import { gradientRows } from './gradientRows.js'
 import { jobFiles } from './jobFiles.js'
 import { readJobs } from './readJobs.js'
 
+/** As commander hands them over. */
+export interface CheckArguments {
+  readonly gradients?: boolean
+}
+
 /** Reads and explains jobs; writes nothing. */
-export async function check(args: readonly string[]): Promise<number> {
+export async function check(args: readonly string[], { gradients }: CheckArguments): Promise<number> {
   const { jobs, wrong } = await readJobs(jobFiles(args))
   let failed = false
   for (const job of jobs) {
     try {
-      print(explanation(job))
+      print(explanation(job, gradients ?? false))
     } catch (error) {
       failed = true
       sayError(`${job.file}  ${(error as Error).message}`)
@@ -24,8 +31,9 @@ export async function check(args: readonly string[]): Promise<number> {
   return wrong || failed ? exitCode.wrong : exitCode.done
 }
 
-function explanation(job: Job): string {
-  const { problem, design } = problemOf(job)
+function explanation(job: Job, gradients: boolean): string {
+  const bound = problemOf(job)
+  const { problem, design } = bound
   const units = sampledUnits[job.search.effort]
   const start = performance.now()
   runUnit(problem, 0, 'check')
@@ -38,7 +46,7 @@ function explanation(job: Job): string {
     ['scan', `${short(low * 1000)}..${short(high * 1000)} meV`],
     ['demands', job.demands.map(({ id, kind }) => `${id} ${kind}`).join(', ')],
     ...variableRows(design),
-    ['stacks', `${design.stackCount()} different ones on the lattice`],
+    ['stacks', `${countText(design.stackCount())} different ones on the lattice`],
     ['monolayers', monolayers(design)],
     ['method', `sampled, effort ${job.search.effort}: ${units} units, seed ${job.search.seed}`],
     ['points', `${points} energies a stack, beside its extremes`],
@@ -46,6 +54,7 @@ function explanation(job: Job): string {
       'time',
       `about ${duration((unitSeconds * units) / threads)} for the search with ${threads} threads (a unit took ${short(unitSeconds)} s here), then the yields`,
     ],
+    ...(gradients ? gradientRows(bound, job.scanEv) : []),
   ]
   const notes = [...job.notes, ...design.notes].map((note) => `  note  ${note}`)
   const width = Math.max(...rows.map(([name]) => name.length))

@@ -1,7 +1,7 @@
 #!/usr/bin/env node
 import { Command, CommanderError } from 'commander'
 import { engineVersion } from '../batch/index.js'
-import { check } from './check.js'
+import { type CheckArguments, check } from './check.js'
 import { sayError } from './console.js'
 import { exitCode } from './exitCodes.js'
 import { materials } from './materials.js'
@@ -35,8 +35,9 @@ program
   .command('check')
   .description('read and explain jobs: variables, stacks on the lattice, time; writes nothing')
   .argument('<job...>', 'job files, or folders of them')
-  .action(async (jobs: string[]) => {
-    code = await check(jobs)
+  .option('--gradients', 'check the derivatives that the search goes by, in digits')
+  .action(async (jobs: string[], options: CheckArguments) => {
+    code = await check(jobs, options)
   })
 
 program

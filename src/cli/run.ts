@@ -79,7 +79,7 @@ function report(job: Job, result: JobResult, { json, quiet }: RunArguments): voi
     say(colours.bold(job.name))
     for (const note of notes) say(`note  ${note}`)
     if (candidates.length > 0) say(candidateTable(result))
-    say(`${met} of ${candidates.length} listed meet all limits. ${sentence(record.statement)}`)
+    say(`${limitsText(job, met, candidates.length)} ${sentence(record.statement)}`)
     if (record.stopped_early)
       say(`Stopped early, after ${record.units} units; the same command without --until goes on.`)
     say(`Results: ${folder}`)
@@ -106,6 +106,12 @@ function report(job: Job, result: JobResult, { json, quiet }: RunArguments): voi
       record,
     }),
   )
+}
+
+function limitsText(job: Job, met: number, listed: number): string {
+  if (job.demands.every(({ kind }) => kind === 'curve'))
+    return 'The job states goals and no limits: the list is in the order of the merit.'
+  return `${met} of ${listed} listed meet all limits.`
 }
 
 function sentence(text: string): string {

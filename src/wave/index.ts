@@ -3,6 +3,7 @@ export { atan2, cos, exp, log, log1p, log10, sin, sinCos } from './elementary.js
 export { extrema } from './extrema.js'
 export { extremeOver } from './extremeOver.js'
 export { type GradientOut, gradientInto } from './gradient.js'
+export { type GradientDigits, gradientDigits } from './gradientDigits.js'
 export { type HalfWidth, halfWidth } from './halfWidth.js'
 export { kernelChecksum, kernelName } from './kernelIdentity.js'
 export { type ParameterGradientOut, parameterGradient } from './parameterGradient.js'

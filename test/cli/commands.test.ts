@@ -18,6 +18,18 @@ describe('check', () => {
     expect(readdirSync(folder)).toEqual([])
   })
 
+  it('with --gradients tells the digits of every derivative', async () => {
+    const { code, stdout } = await command(['check', '--gradients', 'job.yaml'], withJob())
+    expect(code).toBe(0)
+    const [, energy, width] = /complex steps: energy ([\d.]+), width ([\d.]+)/.exec(stdout)!.map(Number)
+    expect(Math.min(energy, width)).toBeGreaterThan(11)
+    const fit = [.../\S+\.(?:x|width) ([\d.]+)/g[Symbol.matchAll](stdout.split('differences: ')[1])].map(([, digits]) =>
+      Number(digits),
+    )
+    expect(fit).toHaveLength(3)
+    expect(Math.min(...fit)).toBeGreaterThan(6)
+  })
+
   it('exits with 2 where a job is wrong, and still explains the right ones', async () => {
     const folder = withJob()
     const { code, stdout, stderr } = await command(['check', 'job.yaml', 'absent.yaml'], folder)
