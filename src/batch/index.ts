@@ -1,4 +1,5 @@
 export { engineVersion } from './engine.js'
+export { type FirstLook, firstLook } from './firstLook.js'
 export { resumeHash } from './hashes.js'
 export { type BoundJob, problemOf } from './problem.js'
 export type { Progress } from './progress.js'

@@ -198,7 +198,7 @@ class Run {
       examined: archive.examined,
       cut: { 'point terms': archive.cut },
       statement:
-        `sampled: ${archive.units} independent starts among ${Number(stacks.toPrecision(15))} stacks; ${archive.startsInBest} of them ended in the best stack. ` +
+        `sampled: ${archive.units} independent starts among ${stacks} stacks; ${archive.startsInBest} of them ended in the best stack. ` +
         'A stack that several starts looked at counts for each. Nothing is claimed of stacks that no start came to.',
       stopped_early: archive.units < this.total,
       seconds: Number(this.workSeconds.toFixed(3)),

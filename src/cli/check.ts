@@ -1,10 +1,10 @@
 import { availableParallelism } from 'node:os'
 import { performance } from 'node:perf_hooks'
-import { problemOf, sampledUnits } from '../batch/index.js'
+import { type FirstLook, firstLook, problemOf, sampledUnits } from '../batch/index.js'
 import type { Design } from '../design/index.js'
 import type { Job } from '../job/index.js'
-import { runUnit } from '../search/index.js'
-import { print, sayError } from './console.js'
+import { contradictions } from '../target/index.js'
+import { colours, print, sayError } from './console.js'
 import { countText } from './countText.js'
 import { exitCode } from './exitCodes.js'
 import { gradientRows } from './gradientRows.js'
@@ -33,10 +33,10 @@ export async function check(args: readonly string[], { gradients }: CheckArgumen
 
 function explanation(job: Job, gradients: boolean): string {
   const bound = problemOf(job)
-  const { problem, design } = bound
+  const { design } = bound
   const units = sampledUnits[job.search.effort]
   const start = performance.now()
-  runUnit(problem, 0, 'check')
+  const look = firstLook(job, bound)
   const unitSeconds = (performance.now() - start) / 1000
   const threads = availableParallelism()
   const points = job.demands.reduce((sum, demand) => sum + pointsOf(demand), 0) * job.conditions.length
@@ -54,9 +54,14 @@ function explanation(job: Job, gradients: boolean): string {
       'time',
       `about ${duration((unitSeconds * units) / threads)} for the search with ${threads} threads (a unit took ${short(unitSeconds)} s here), then the yields`,
     ],
+    ['first look', `${look.stack}: ${look.meets ? 'meets all limits' : `merit ${short(look.merit)}`}`],
     ...(gradients ? gradientRows(bound, job.scanEv) : []),
   ]
-  const notes = [...job.notes, ...design.notes].map((note) => `  note  ${note}`)
+  const warnings = [...contradictions(job).map(({ sentence }) => sentence), ...tooSensitive(job, look)]
+  const notes = [
+    ...warnings.map((warning) => `  ${colours.yellow('warning')}  ${warning}`),
+    ...[...job.notes, ...design.notes].map((note) => `  note  ${note}`),
+  ]
   const width = Math.max(...rows.map(([name]) => name.length))
   return [
     `${job.name}  (${job.file})`,
@@ -65,6 +70,16 @@ function explanation(job: Job, gradients: boolean): string {
     ...notes,
     '',
   ].join('\n')
+}
+
+/** One monolayer that moves the peak out of its window can't be grown reliably. */
+function tooSensitive({ demands }: Job, { mostSensitive, stack }: FirstLook): string[] {
+  const peak = demands.find((demand) => demand.kind === 'peak')
+  if (!peak || !mostSensitive || Math.abs(mostSensitive.shiftEv) <= peak.withinEv) return []
+  return [
+    `One monolayer (or step) more of layer ${mostSensitive.layer} moves the peak by ${short(mostSensitive.shiftEv * 1000)} meV, but ` +
+      `${peak.id} allows ${short(peak.withinEv * 1000)} meV (stack ${stack}). A wider window, or wider wells, would be grown more surely.`,
+  ]
 }
 
 function variableRows({ places }: Design): [string, string][] {

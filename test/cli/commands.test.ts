@@ -2,7 +2,7 @@ import { readdirSync } from 'node:fs'
 import { fileURLToPath } from 'node:url'
 import { describe, expect, it } from 'vitest'
 import { materialNames } from '../../src/media/index.js'
-import { command, emptyFolder, withJob } from './commandLine.js'
+import { command, emptyFolder, smallJob, withJob } from './commandLine.js'
 
 const jobs = fileURLToPath(new URL('../../jobs', import.meta.url))
 
@@ -16,6 +16,17 @@ describe('check', () => {
     // Half of the lattice constant of GaAs at 300 K, 0.565325 nm (Vurgaftman et al., J. Appl. Phys. 89, 5815, 2001).
     expect(stdout).toContain('GaAs 0.28266 nm')
     expect(readdirSync(folder)).toEqual([])
+  })
+
+  it('warns of demands that contradict one another, and of a peak that one monolayer moves out of its window', async () => {
+    const tight = smallJob.replace('within: 5 meV', 'within: 1 meV').replace('block: 5..60 meV', 'block: 5..90 meV')
+    const { code, stdout } = await command(['check', 'job.yaml'], withJob(tight))
+    expect(code).toBe(0)
+    expect(stdout).toContain('warning  d1 and d2 contradict one another.')
+    expect(stdout).toMatch(
+      /warning {2}One monolayer \(or step\) more of layer well moves the peak by -5\.\d+ meV, but d1 allows 1 meV/,
+    )
+    expect((await command(['check', 'job.yaml'], withJob())).stdout).not.toContain('contradict')
   })
 
   it('with --gradients tells the digits of every derivative', async () => {
