@@ -29,7 +29,7 @@ export class BoundWork {
   }
 
   private grow(assignment: readonly number[], trials: number): Yield {
-    const { design, target } = this.bound
+    const { design, accepted: target } = this.bound
     const { situations } = design
     const { growth } = this.job
     const layers = design.layers(Int32Array.from(assignment))

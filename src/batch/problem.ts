@@ -2,7 +2,7 @@ import { type Design, designOf } from '../design/index.js'
 import { growthErrors, marginOf } from '../growth/index.js'
 import type { Job } from '../job/index.js'
 import type { RelaxedProblem, SearchProblem } from '../search/index.js'
-import { compareScores, compileTarget, type Score, type Target } from '../target/index.js'
+import { acceptedDemands, compareScores, compileTarget, type Score, type Target } from '../target/index.js'
 import type { WaveSystem } from '../wave/index.js'
 
 /** A job as the rooms see it: places and numbers for the search, and what they mean. */
@@ -10,12 +10,16 @@ export interface BoundJob {
   readonly problem: SearchProblem
   readonly design: Design
   readonly target: Target
+  /** As the yield judges: with what the demands accept. */
+  readonly accepted: Target
 }
 
 /** Binds the rooms to a job. Throws as designOf does. */
 export function problemOf(job: Job): BoundJob {
   const design = designOf(job)
   const target = compileTarget(job)
+  const loosened = job.demands.some(({ accept }) => accept !== null)
+  const accepted = loosened ? compileTarget({ ...job, demands: acceptedDemands(job.demands) }) : target
   const curves = job.demands.filter(({ kind }) => kind === 'curve').length
   const onlyCurves = curves === job.demands.length
   const limitsAndGoals = curves > 0 && !onlyCurves
@@ -39,7 +43,7 @@ export function problemOf(job: Job): BoundJob {
     compare: compareScores(job),
     relax: (assignment) => relax(design, target, assignment),
   }
-  return { problem, design, target }
+  return { problem, design, target, accepted }
 }
 
 /** What the order compares of a stack; the id, a hash that few comparisons need, when it is asked for. */

@@ -207,7 +207,7 @@ class Run {
 
   /** Whether there is anything that growth can miss: a curve is a goal, not a limit. */
   private hasLimits(): boolean {
-    return this.job.demands.some(({ kind }) => kind !== 'curve')
+    return this.job.demands.some(({ kind, accept }) => kind !== 'curve' || accept?.rms !== undefined)
   }
 
   private workers(): WorkerPool {
@@ -236,7 +236,7 @@ class Run {
     const systems = () => bound.design.systems(Int32Array.from(best.assignment))
     const start = performance.now()
     const probes = 16
-    for (let i = 0; i < probes; i++) bound.target.meets(systems())
+    for (let i = 0; i < probes; i++) bound.accepted.meets(systems())
     const each = (performance.now() - start) / 1000 / probes
     const trials =
       grownFirst(job.search.effort) * trialsOf({ ...best.score, met: true }, job.growth.trials, job.search.effort)

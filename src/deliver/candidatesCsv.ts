@@ -2,7 +2,7 @@ import { type Cell, csv, meV } from './csv.js'
 import type { Candidate } from './types.js'
 
 /**
- * candidates.csv: one line a candidate, in the order of the list. `reached` of a demand is an energy in meV for a peak, the extreme T
+ * candidates.csv: one line a candidate, in the order of the list. `reached` of a demand is an energy in meV for a peak or a band (its centre), the extreme T
  * of a pass or block, the rms of a curve; `residual` is the root mean square of its residuals, 0 when met.
  */
 export function candidatesCsv(candidates: readonly Candidate[], demandIds: readonly string[]): string {
@@ -38,5 +38,5 @@ function row(candidate: Candidate, demandIds: readonly string[]): Cell[] {
 function demandCells(candidate: Candidate, id: string): Cell[] {
   const demand = candidate.evaluation.demands.find((result) => result.id === id)
   if (demand === undefined) return [null, null]
-  return [demand.kind === 'peak' ? meV(demand.reached) : demand.reached, demand.rms]
+  return [demand.kind === 'peak' || demand.kind === 'band' ? meV(demand.reached) : demand.reached, demand.rms]
 }

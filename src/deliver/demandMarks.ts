@@ -13,7 +13,7 @@ export interface DemandFrame {
   readonly key: string
 }
 
-/** The place of a demand in a plot of T: a window for a peak, a no-go region for a block or a pass, nothing for a curve. */
+/** The place of a demand in a plot of T: a window for a peak or the centre of a band, a no-go region for a block or a pass, nothing for a curve. */
 export function demandRegion({ plot, height, key }: DemandFrame, demand: Demand): string {
   if (demand.kind === 'curve') return ''
   // One pixel more than the box, so that only the inner edge shows as a line.
@@ -82,7 +82,8 @@ export function demandLabels({ plot }: DemandFrame, demands: readonly Demand[]):
 
 /** The energies that a demand speaks of. */
 export function rangeEv(demand: Demand): readonly [number, number] {
-  if (demand.kind === 'peak') return [demand.energyEv - demand.withinEv, demand.energyEv + demand.withinEv]
+  if (demand.kind === 'peak' || demand.kind === 'band')
+    return [demand.energyEv - demand.withinEv, demand.energyEv + demand.withinEv]
   const energies = demand.kind === 'curve' ? demand.rows.map(({ energyEv }) => energyEv) : demand.pointsEv
   return [energies[0], energies[energies.length - 1]]
 }

@@ -104,7 +104,7 @@ function partsOf(demand: Demand, result: DemandResult | undefined): [Part, ...Pa
   if (demand.kind === 'curve') {
     return [{ wanted: `curve ${demand.file}`, reached: reached === null ? '' : `rms ${short(reached)}` }]
   }
-  if (demand.kind !== 'peak') {
+  if (demand.kind === 'pass' || demand.kind === 'block') {
     const [from, to] = [demand.pointsEv[0], demand.pointsEv[demand.pointsEv.length - 1]].map(meVText)
     const limit = demand.kind === 'block' ? `T \u2264 ${short(demand.below)}` : `T \u2265 ${short(demand.above)}`
     const extreme = result?.extremeEv ?? null
@@ -119,10 +119,19 @@ function partsOf(demand: Demand, result: DemandResult | undefined): [Part, ...Pa
     const [least, most] = demand.fwhmEv.map(meVText)
     parts.push({ wanted: `fwhm ${least}..${most} meV`, reached: peak === null ? '' : energyText(peak.fwhmEv) })
   }
-  if (demand.height !== null)
-    parts.push({ wanted: `height ${short(demand.height)}`, reached: peak === null ? '' : short(peak.T) })
+  const figure = (wanted: string, limit: number | null, value: number | undefined) => {
+    if (limit !== null)
+      parts.push({ wanted: `${wanted} ${short(limit)}`, reached: value === undefined ? '' : short(value) })
+  }
+  if (demand.kind === 'peak') {
+    figure('height', demand.height, peak?.T)
+    if (demand.alone !== null) parts.push({ wanted: `alone ${short(demand.alone)}`, reached: '' })
+  } else {
+    figure('top', demand.top, result?.band?.top)
+    figure('ripple', demand.ripple, result?.band?.ripple)
+  }
   const nothing = result === undefined ? '' : 'no maximum'
-  const place = `peak ${meVText(demand.energyEv)} \u00b1 ${meVText(demand.withinEv)} meV`
+  const place = `${demand.kind} ${meVText(demand.energyEv)} \u00b1 ${meVText(demand.withinEv)} meV`
   return [{ wanted: place, reached: reached === null ? nothing : `${meVText(reached)} meV` }, ...parts]
 }
 

@@ -3,7 +3,7 @@ import type { Job } from '../job/index.js'
 import type { PeakFigures } from '../target/index.js'
 import { type DemandFrame, demandRegion, goalMarks, rangeEv, spanInside } from './demandMarks.js'
 import { energyAxis, heightUnit } from './focusAxes.js'
-import { focusRange } from './focusRange.js'
+import { focusRange, isLine } from './focusRange.js'
 import { type Box, type Frame, frame, roundAxis } from './frame.js'
 import { hatch } from './hatch.js'
 import { label, textWidth, wrapped } from './label.js'
@@ -38,7 +38,7 @@ export function focusPanel(job: Job, candidate: Candidate, box: Box, key: string
   const inMeV: Frame = { ...plot, x: (meV) => plot.x(at(meV / 1000)) }
   const marks: DemandFrame = { plot: inMeV, key, height: (T) => plot.y(T * unit.inverse) }
   const passes = job.demands.some(({ kind }) => kind === 'pass')
-  const marked = peak !== null && (!passes || job.demands.some(({ kind }) => kind === 'peak')) ? peak : null
+  const marked = peak !== null && (!passes || job.demands.some(isLine)) ? peak : null
   return {
     height: box.height + 44,
     defs: [plot.defs, hatch(key)],
@@ -97,6 +97,7 @@ function wantedHeights(job: Job, [from, to]: [number, number]): number[] {
     if (demand.kind === 'pass') return [demand.above]
     const near =
       demand.kind === 'peak' && demand.energyEv + demand.withinEv >= from && demand.energyEv - demand.withinEv <= to
+    if (demand.kind === 'band') return demand.top === null ? [] : [demand.top]
     return near && demand.height !== null ? [demand.height] : []
   })
 }

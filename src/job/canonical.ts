@@ -15,8 +15,8 @@ export function canonicalJson(value: unknown): string {
 }
 
 /**
- * What the search sees of a job, as canonical JSON: everything but `name`, `note`, `deliver`, `trials` and the layout of the
- * text; the rows of the files that it names stand in for the files.
+ * What the search sees of a job, as canonical JSON: everything but `name`, `note`, `deliver`, `trials`, `accept` and the layout of
+ * the text; the rows of the files that it names stand in for the files.
  */
 export function resumeContent(job: Job): string {
   const { trials: _trials, assumed: _assumed, ...growth } = job.growth
@@ -27,7 +27,7 @@ export function resumeContent(job: Job): string {
     stack: job.stack,
     scanEv: job.scanEv,
     resolutionEv: job.resolutionEv,
-    demands: job.demands.map(withoutFileName),
+    demands: job.demands.map(asSearched),
     growth,
     search: job.search,
   })
@@ -39,7 +39,7 @@ export function jobContent(job: Job): string {
   return canonicalJson(filled)
 }
 
-function withoutFileName(demand: Demand): unknown {
+function asSearched({ accept: _accept, ...demand }: Demand): unknown {
   if (demand.kind !== 'curve') return demand
   const { file: _file, ...rest } = demand
   return rest

@@ -95,6 +95,22 @@ export interface WidthSpec {
 interface DemandBase {
   readonly id: string
   readonly weight: number
+  /** Looser limits, for the yield only; absent ones are those of the demand. Null: the demand itself. */
+  readonly accept: Accepted | null
+}
+
+/** What `accept` states, in the demand's own terms. */
+export interface Accepted {
+  readonly withinEv?: number
+  readonly fwhmEv?: readonly [number, number]
+  readonly height?: number
+  readonly alone?: number
+  readonly top?: number
+  readonly ripple?: number
+  readonly above?: number
+  readonly below?: number
+  /** Of a curve, which without it has no part in the yield. */
+  readonly rms?: number
 }
 
 export interface PeakDemand extends DemandBase {
@@ -103,6 +119,20 @@ export interface PeakDemand extends DemandBase {
   readonly withinEv: number
   readonly fwhmEv: readonly [number, number] | null
   readonly height: number | null
+  /** No other maximum in the scan above this; null: not stated. */
+  readonly alone: number | null
+}
+
+/** A flat top. */
+export interface BandDemand extends DemandBase {
+  readonly kind: 'band'
+  readonly energyEv: number
+  readonly withinEv: number
+  readonly fwhmEv: readonly [number, number] | null
+  /** Least mean of T over the inner 80 % between the half-height points. */
+  readonly top: number | null
+  /** Greatest dip of T there. */
+  readonly ripple: number | null
 }
 
 export interface PassDemand extends DemandBase {
@@ -123,6 +153,8 @@ export interface CurveDemand extends DemandBase {
   /** The file's name as written. */
   readonly file: string
   readonly rows: readonly CurveRow[]
+  /** Greatest rms that passes; null: a goal that nothing can miss, as in a job. */
+  readonly mostRms: number | null
 }
 
 export interface CurveRow {
@@ -134,7 +166,7 @@ export interface CurveRow {
   readonly weight: number
 }
 
-export type Demand = PeakDemand | PassDemand | BlockDemand | CurveDemand
+export type Demand = PeakDemand | BandDemand | PassDemand | BlockDemand | CurveDemand
 
 export interface GrowthSpec {
   /** The side of the substrate. */

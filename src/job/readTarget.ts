@@ -87,10 +87,11 @@ export function readTarget(target: Target, tables: Tables, reader: Reader): Read
 }
 
 const forms = {
-  peak: ['peak', 'within', 'fwhm', 'height'],
-  pass: ['pass', 'above', 'points'],
-  block: ['block', 'below', 'points'],
-  curve: ['curve'],
+  peak: ['peak', 'within', 'fwhm', 'height', 'alone', 'accept'],
+  band: ['band', 'within', 'fwhm', 'top', 'ripple', 'accept'],
+  pass: ['pass', 'above', 'points', 'accept'],
+  block: ['block', 'below', 'points', 'accept'],
+  curve: ['curve', 'accept'],
 } as const
 
 type Form = keyof typeof forms
@@ -126,12 +127,12 @@ function readDemand(
   const weight = demand.weight ?? 1
   if (!(weight > 0))
     reader.complain([...path, 'weight'], 'is not above 0', 'Write a number above 0, or take the demand out.')
-  const head = { id, weight }
+  const head = { id, weight, accept: null }
 
-  if (kind === 'peak') return readPeak()
+  if (kind === 'peak' || kind === 'band') return readLine(kind)
   if (kind === 'curve') {
     const rows = demand.curve === undefined ? null : curveOf(demand.curve, [...path, 'curve'])
-    return rows && { ...head, kind, file: demand.curve!, rows }
+    return rows && accepting({ ...head, kind, file: demand.curve!, rows, mostRms: null })
   }
   const range = reader.range(demand[kind], [...path, kind], 'energy')
   if (range) inScan(range, [...path, kind])
@@ -144,38 +145,94 @@ function readDemand(
       `Add "${limitKey}: ${value}".`,
     )
   }
-  const limit = kind === 'pass' ? reader.share(demand.above, [...path, 'above']) : level(demand.below)
+  const limit =
+    kind === 'pass' ? reader.share(demand.above, [...path, 'above']) : level(demand.below, [...path, 'below'])
   const points =
     demand.points === undefined ? defaultPoints : reader.whole(demand.points, [...path, 'points'], 2, 10_000)
   if (range === null || limit === null || points === null) return null
   const pointsEv = pointsOf(range, points)
-  return kind === 'pass' ? { ...head, kind, pointsEv, above: limit } : { ...head, kind, pointsEv, below: limit }
+  return accepting(
+    kind === 'pass' ? { ...head, kind, pointsEv, above: limit } : { ...head, kind, pointsEv, below: limit },
+  )
 
-  function readPeak(): Demand | null {
-    const energyEv = reader.single(demand.peak, [...path, 'peak'], 'energy')
-    if (energyEv !== null && scan && (energyEv < scan.from || energyEv > scan.to)) {
-      outside([...path, 'peak'])
-    }
+  function readLine(kind: 'peak' | 'band'): Demand | null {
+    const energyEv = reader.single(demand[kind], [...path, kind], 'energy')
+    if (energyEv !== null && scan && (energyEv < scan.from || energyEv > scan.to)) outside([...path, kind])
     if (!stated('within')) {
       problems.add(
         [...path, 'within'],
-        '"within" is missing: a peak says how far it may lie off.',
+        `"within" is missing: a ${kind} says how far it may lie off.`,
         'Add "within: 5 meV".',
       )
     }
-    const withinEv = reader.single(demand.within, [...path, 'within'], 'energy')
-    if (withinEv !== null && !(withinEv > 0)) {
-      reader.complain([...path, 'within'], 'is not above 0', 'Write how far the peak may lie off, like "5 meV".')
+    const withinEv = readWithin(demand.within, [...path, 'within'])
+    const fwhm = readFwhm(demand.fwhm, [...path, 'fwhm'])
+    if (kind === 'peak') {
+      const height = reader.share(demand.height, [...path, 'height'])
+      const alone = level(demand.alone, [...path, 'alone'])
+      if (energyEv === null || withinEv === null) return null
+      return accepting({ ...head, kind, energyEv, withinEv, fwhmEv: fwhm, height, alone })
     }
-    const height = reader.share(demand.height, [...path, 'height'])
-    const fwhm = readFwhm()
+    const top = reader.share(demand.top, [...path, 'top'])
+    const ripple = reader.share(demand.ripple, [...path, 'ripple'])
     if (energyEv === null || withinEv === null) return null
-    return { ...head, kind: 'peak', energyEv, withinEv, fwhmEv: fwhm && [fwhm.from, fwhm.to], height }
+    return accepting({ ...head, kind, energyEv, withinEv, fwhmEv: fwhm, top, ripple })
   }
 
-  function readFwhm(): Quantity | null {
-    const here = [...path, 'fwhm']
-    const fwhm = reader.quantity(demand.fwhm, here, 'energy')
+  function readWithin(written: Written['within'], here: Path): number | null {
+    const withinEv = reader.single(written, here, 'energy')
+    if (withinEv !== null && !(withinEv > 0)) {
+      reader.complain(here, 'is not above 0', 'Write how far it may lie off, like "5 meV".')
+    }
+    return withinEv
+  }
+
+  /** The demand with what its `accept` states; each must be looser than the demand's own, and stated there. */
+  function accepting(read: Demand): Demand {
+    const { accept } = demand
+    if (accept === undefined) return read
+    const here = [...path, 'accept']
+    const accepted: Record<string, unknown> = {}
+    const own = read as unknown as Readonly<Record<string, unknown>>
+    for (const key of Object.keys(accept) as (keyof typeof accept)[]) {
+      const place = [...here, key]
+      const name = acceptNames[key]
+      if (key === 'rms') {
+        if (kind !== 'curve') problems.addAtKey(place, '"rms" belongs to a curve.', 'Take it out.')
+        else if (!(accept.rms! > 0)) reader.complain(place, 'is not above 0', 'Write the greatest rms, like 1.5.')
+        else accepted.rms = accept.rms
+        continue
+      }
+      if (own[name] === undefined || own[name] === null) {
+        problems.addAtKey(place, `The demand states no "${key}" that could be loosened.`, 'Take it out.')
+        continue
+      }
+      const value = acceptedValue(key, place)
+      if (value === null) continue
+      if (!isLooser(key, value, own[name])) {
+        reader.complain(place, 'is tighter than the demand', 'accept loosens a demand for the yield.')
+      }
+      accepted[name] = value
+    }
+    return { ...read, accept: accepted }
+  }
+
+  function acceptedValue(key: Exclude<keyof NonNullable<Written['accept']>, 'rms'>, place: Path): unknown {
+    const { accept } = demand
+    if (key === 'within') return readWithin(accept?.within, place)
+    if (key === 'fwhm') return readFwhm(accept?.fwhm, place)
+    if (key === 'below') return level(accept?.below, place)
+    if (key === 'alone') return level(accept?.alone, place)
+    return reader.share(accept?.[key], place)
+  }
+
+  function readFwhm(written: Written['fwhm'], here: Path): readonly [number, number] | null {
+    const fwhm = fwhmRange(written, here)
+    return fwhm && [fwhm.from, fwhm.to]
+  }
+
+  function fwhmRange(asWritten: Written['fwhm'], here: Path): Quantity | null {
+    const fwhm = reader.quantity(asWritten, here, 'energy')
     if (fwhm === null) return null
     const { unit, written } = fwhm
     const around = `"${Number((written[1] / 2).toPrecision(3))}..${Number((written[1] * 1.5).toPrecision(3))} ${unit}"`
@@ -191,10 +248,9 @@ function readDemand(
     return fwhm
   }
 
-  function level(below: number | string | undefined): number | null {
-    if (below === undefined) return null
-    const here = [...path, 'below']
-    const read = parseLevel('below', below)
+  function level(written: number | string | undefined, here: Path): number | null {
+    if (written === undefined) return null
+    const read = parseLevel(String(here[here.length - 1]), written)
     if (!isComplaint(read)) return read
     problems.add(here, read.rule, read.remedy)
     return null
@@ -208,4 +264,26 @@ function readDemand(
     const limits = problems.quoted(['target', 'scan'])
     reader.complain(here, `lies outside the scan, ${limits}`, 'Widen "scan", or move the demand into it.')
   }
+}
+
+/** Names of `Accepted`, by the key that states them. */
+const acceptNames = {
+  within: 'withinEv',
+  fwhm: 'fwhmEv',
+  height: 'height',
+  alone: 'alone',
+  top: 'top',
+  ripple: 'ripple',
+  above: 'above',
+  below: 'below',
+  rms: 'rms',
+} as const
+
+function isLooser(key: keyof typeof acceptNames, value: unknown, own: unknown): boolean {
+  if (key === 'fwhm') {
+    const [[from, to], [ownFrom, ownTo]] = [value, own] as [readonly [number, number], readonly [number, number]]
+    return from <= ownFrom && to >= ownTo
+  }
+  const upwards = key === 'within' || key === 'alone' || key === 'ripple' || key === 'below'
+  return upwards ? (value as number) >= (own as number) : (value as number) <= (own as number)
 }

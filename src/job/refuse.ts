@@ -30,13 +30,8 @@ const refused: Readonly<Record<Room, Readonly<Record<string, string>>>> = {
     extinction: 'Electrons need potential and mass instead.',
   },
   demand: {
-    band: 'State a flat top by "pass: a..b, above: t" and a "block" on each side.',
-    alone: 'Keep other maxima down by a "block" over the ranges where they would be.',
-    top: 'State a flat top by "pass: a..b, above: t".',
-    ripple: 'State a flat top by "pass: a..b, above: t".',
     at: 'Take it out: the job has one operating point.',
     quantity: 'Take it out: demands are on T. R is 1 - T here.',
-    accept: 'Take it out: the yield is judged by the demand itself.',
   },
   growth: {
     thinnest: 'Take it out: it belongs to jobs with kind: light. Set the least width on the layers.',

@@ -125,9 +125,12 @@ const demand = z
         within: z.union([z.string(), z.number()]).optional(),
         fwhm: z.union([z.string(), z.number()]).optional(),
         height: z.number().optional(),
+        alone: z.union([z.number(), z.string()]).optional(),
+        top: z.number().optional(),
+        ripple: z.number().optional(),
         above: z.number().optional(),
         below: z.union([z.number(), z.string()]).optional(),
-        rms: z.number().optional(),
+        rms: z.number().optional().describe('Of a curve, which without it has no part in the yield.'),
       })
       .optional()
       .describe('Looser limits for the yield only.'),

@@ -6,9 +6,9 @@ export interface Judge {
   readonly id: string
   readonly kind: DemandResult['kind']
   readonly weight: number
-  /** What it reads at fixed energies; null for a peak. */
+  /** What it reads at fixed energies; null for a peak or band. */
   readonly terms: PointTerms | null
-  /** How many parts a peak states, which the fit takes one by one; 0 for the others. */
+  /** How many parts a peak or band states, which the fit takes one by one; 0 for the others. */
   readonly parts: number
   judge(landscape: Landscape): Verdict
   /** The energies that decide whether it is met; null for a curve. */
@@ -21,7 +21,7 @@ export interface Judge {
 }
 
 /** What a demand says of a stack at one condition. */
-export interface Verdict extends Pick<DemandResult, 'reached' | 'met' | 'extremeEv' | 'peak'> {
+export interface Verdict extends Pick<DemandResult, 'reached' | 'met' | 'extremeEv' | 'peak' | 'band'> {
   /** Mean square of the residuals. */
   readonly square: number
 }

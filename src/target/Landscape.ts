@@ -7,6 +7,7 @@ import {
   slopeInto,
   type WaveSystem,
 } from '../wave/index.js'
+import { PointSpectrum } from './PointSpectrum.js'
 import type { PeakFigures } from './types.js'
 
 /** T(E) of one stack at one condition: what several demands ask of it is found once. Made for a `window` of maxima. */
@@ -40,6 +41,11 @@ export class Landscape {
   get layerParameters(): number {
     const { media, stack } = this.system
     return stack.medium.length * (1 + media.parameters)
+  }
+
+  /** T at each energy (eV). */
+  transmission(energiesEv: readonly number[]): Float64Array {
+    return new PointSpectrum(energiesEv).at(this.system)
   }
 
   /** T and dT/d(layer parameter) at each energy (eV): entry e * layerParameters + k. */

@@ -1,13 +1,11 @@
 import type { BlockDemand } from '../job/index.js'
 import { type Extremum, extremeOver, log10 } from '../wave/index.js'
+import { decibelSlope, excess, unitDb } from './decibels.js'
 import { type Judge, nothing, type PointTerms, type Verdict } from './Judge.js'
 import type { Landscape } from './Landscape.js'
 import { meanSquare } from './meanSquare.js'
 import { peakSlopes } from './peakSlopes.js'
 import type { Limit } from './types.js'
-
-/** Decibels that count as a residual of 1. */
-const unitDb = 3
 
 /**
  * T at most t over a closed range: 10 log10(T/t) over 3 dB at its points and at the greatest T. `resolutionEv`: a maximum with a
@@ -44,7 +42,7 @@ export class BlockJudge implements Judge {
     const { energyEv, T } = this.greatest(landscape)
     const extreme = excess(T, this.demand.below)
     const met = this.pointsMet(landscape) && extreme <= nothing
-    return { square: points + extreme * extreme, reached: T, met, extremeEv: energyEv, peak: null }
+    return { square: points + extreme * extreme, reached: T, met, extremeEv: energyEv, peak: null, band: null }
   }
 
   met(landscape: Landscape): boolean {
@@ -87,14 +85,4 @@ export class BlockJudge implements Judge {
     const { below, pointsEv } = this.demand
     return pointsEv.every((_, i) => excess(T[this.terms.first + i], below) <= nothing)
   }
-}
-
-/** 10 log10(T/t) over 3 dB; 0 at or below t. */
-function excess(T: number, t: number): number {
-  return T > t ? (10 * log10(T / t)) / unitDb : 0
-}
-
-/** d(10 log10 T)/dT. */
-function decibelSlope(T: number): number {
-  return 10 / (Math.LN10 * T)
 }

@@ -1,5 +1,6 @@
 import type { Demand, Job } from '../job/index.js'
 import type { Extremum, WaveSystem } from '../wave/index.js'
+import { BandJudge } from './band.js'
 import { BlockJudge } from './block.js'
 import { CurveJudge } from './curve.js'
 import { fitInto } from './fitInto.js'
@@ -39,7 +40,7 @@ class CompiledTarget implements Target {
   constructor({ demands, scanEv, resolutionEv, conditions }: TargetSpec) {
     const points: number[] = []
     this.judges = demands.map((demand) => {
-      const judge = judgeOf(demand, points.length, resolutionEv)
+      const judge = judgeOf(demand, points.length, { scanEv, resolutionEv })
       if (judge.terms) points.push(...judge.terms.energiesEv)
       return judge
     })
@@ -82,7 +83,7 @@ class CompiledTarget implements Target {
 
   evaluate(systems: readonly WaveSystem[]): Evaluation {
     const { merit, demands } = this.judgeAll(systems)
-    const first = demands.find(({ kind }) => kind === 'peak')
+    const first = demands.find(({ kind }) => kind === 'peak' || kind === 'band')
     const peak = first ? first.peak : highestPeak(this.landscape(systems[0]), this.scanEv)
     return { merit, met: demands.every(({ met }) => met !== false), demands, peak }
   }
@@ -137,10 +138,16 @@ class CompiledTarget implements Target {
   }
 }
 
-function judgeOf(demand: Demand, first: number, resolutionEv: number | null): Judge {
+function judgeOf(
+  demand: Demand,
+  first: number,
+  { scanEv, resolutionEv }: Pick<TargetSpec, 'scanEv' | 'resolutionEv'>,
+): Judge {
   switch (demand.kind) {
     case 'peak':
-      return new PeakJudge(demand)
+      return new PeakJudge(demand, scanEv)
+    case 'band':
+      return new BandJudge(demand)
     case 'pass':
       return new PassJudge(demand, first)
     case 'block':
@@ -152,9 +159,11 @@ function judgeOf(demand: Demand, first: number, resolutionEv: number | null): Ju
 
 /** Figures are those of the worst condition; met means met at each. */
 function resultOf({ id, kind }: Judge, square: number, verdicts: readonly Verdict[]): DemandResult {
-  const { reached, extremeEv, peak } = verdicts.reduce((worst, next) => (next.square > worst.square ? next : worst))
+  const { reached, extremeEv, peak, band } = verdicts.reduce((worst, next) =>
+    next.square > worst.square ? next : worst,
+  )
   const met = verdicts[0].met === null ? null : verdicts.every((verdict) => verdict.met)
-  return { id, kind, reached, rms: Math.sqrt(square), met, extremeEv, peak }
+  return { id, kind, reached, rms: Math.sqrt(square), met, extremeEv, peak, band }
 }
 
 /**

@@ -1,6 +1,6 @@
 import type { CurveDemand, CurveRow } from '../job/index.js'
 import { log10 } from '../wave/index.js'
-import type { Judge, PointTerms, Verdict } from './Judge.js'
+import { type Judge, nothing, type PointTerms, type Verdict } from './Judge.js'
 import type { Landscape } from './Landscape.js'
 import { meanSquare } from './meanSquare.js'
 import type { Limit } from './types.js'
@@ -8,7 +8,7 @@ import type { Limit } from './types.js'
 /** T below this counts as this on a scale of decades. */
 const floor = 1e-30
 
-/** Least squares to a table: the violation on the row's scale over its tolerance. A goal: it has no limits and no met state. */
+/** Least squares to a table: the violation on the row's scale over its tolerance. A goal: it has no limits, and a met state only under a greatest rms. */
 export class CurveJudge implements Judge {
   readonly kind = 'curve'
   readonly parts = 0
@@ -17,7 +17,10 @@ export class CurveJudge implements Judge {
   readonly weight: number
   readonly terms: PointTerms
 
-  constructor({ id, weight, rows }: CurveDemand, first: number) {
+  private readonly mostRms: number | null
+
+  constructor({ id, weight, rows, mostRms }: CurveDemand, first: number) {
+    this.mostRms = mostRms
     this.id = id
     this.weight = weight
     const total = rows.reduce((sum, row) => sum + row.weight, 0)
@@ -33,11 +36,12 @@ export class CurveJudge implements Judge {
 
   judge(landscape: Landscape): Verdict {
     const square = meanSquare(this.terms, landscape.T)
-    return { square, reached: Math.sqrt(square), met: null, extremeEv: null, peak: null }
+    return { square, reached: Math.sqrt(square), met: this.met(landscape), extremeEv: null, peak: null, band: null }
   }
 
-  met(): null {
-    return null
+  met(landscape: Landscape): boolean | null {
+    if (this.mostRms === null) return null
+    return Math.sqrt(meanSquare(this.terms, landscape.T)) <= this.mostRms + nothing
   }
 
   fitParts(): Float64Array[] {

@@ -1,3 +1,4 @@
+export { acceptedDemands } from './acceptedDemands.js'
 export { compileTarget, type TargetSpec } from './compileTarget.js'
 export { type Contradiction, contradictions } from './contradictions.js'
 export { compareScores } from './order.js'

@@ -36,7 +36,7 @@ export class PassJudge implements Judge {
     const { energyEv, T } = this.least(landscape)
     const extreme = this.lack(T)
     const met = this.pointsMet(landscape) && extreme <= nothing
-    return { square: points + extreme * extreme, reached: T, met, extremeEv: energyEv, peak: null }
+    return { square: points + extreme * extreme, reached: T, met, extremeEv: energyEv, peak: null, band: null }
   }
 
   met(landscape: Landscape): boolean {

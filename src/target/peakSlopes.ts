@@ -3,10 +3,12 @@ import type { PeakFigures } from './types.js'
 
 /** Slopes of a maximum in the layer parameters, [width, then the medium's own] a layer. */
 export interface PeakSlopes {
-  /** dE/dp, d(T at the maximum)/dp and d(full width at half height)/dp. */
+  /** dE/dp, d(T at the maximum)/dp, d(full width at half height)/dp and those of its two ends. */
   readonly energy: Float64Array
   readonly height: Float64Array
   readonly fwhm: Float64Array
+  readonly low: Float64Array
+  readonly high: Float64Array
 }
 
 /**
@@ -38,17 +40,22 @@ export function peakSlopes(landscape: Landscape, peak: PeakFigures): PeakSlopes 
   const narrow = fwhmEv < narrowestEv
   const low = lowCut ? 0 : 1 / slope[4]
   const high = highCut ? 0 : 1 / slope[5]
-  const slopes = { energy: new Float64Array(n), height: new Float64Array(n), fwhm: new Float64Array(n) }
+  const row = () => new Float64Array(n)
+  const slopes = { energy: row(), height: row(), fwhm: row(), low: row(), high: row() }
   for (let k = 0; k < n; k++) {
     const mixed = differences.reduce((sum, d, e) => sum + (d * gradient[e * n + k]) / T[e], 0)
     slopes.energy[k] = -mixed / second
     if (narrow) {
       slopes.fwhm[k] = 0.25 * fwhmEv * (gradient[n + k] / T[1] + gradient[2 * n + k] / T[2])
+      slopes.low[k] = slopes.energy[k] - 0.5 * slopes.fwhm[k]
+      slopes.high[k] = slopes.energy[k] + 0.5 * slopes.fwhm[k]
       continue
     }
     const height = gradient[4 * n + k]
     slopes.height[k] = height
-    slopes.fwhm[k] = (0.5 * height - gradient[6 * n + k]) * high - (0.5 * height - gradient[5 * n + k]) * low
+    slopes.low[k] = (0.5 * height - gradient[5 * n + k]) * low
+    slopes.high[k] = (0.5 * height - gradient[6 * n + k]) * high
+    slopes.fwhm[k] = slopes.high[k] - slopes.low[k]
   }
   return slopes
 }

@@ -9,10 +9,20 @@ export interface PeakFigures {
   readonly fwhmEv: number
 }
 
+/** A flat top, between the half-height points of its maximum. */
+export interface BandFigures {
+  /** Half way between them. */
+  readonly centreEv: number
+  /** Mean of T over the inner 80 %, and the greatest dip there: greatest less least T. */
+  readonly top: number
+  readonly ripple: number
+  readonly peak: PeakFigures
+}
+
 export interface DemandResult {
   readonly id: string
-  readonly kind: 'peak' | 'pass' | 'block' | 'curve'
-  /** Peak: its energy (eV), null without a maximum; pass, block: the extreme T; curve: the rms. */
+  readonly kind: 'peak' | 'band' | 'pass' | 'block' | 'curve'
+  /** Peak: its energy (eV), band: its centre, null without a maximum; pass, block: the extreme T; curve: the rms. */
   readonly reached: number | null
   /** Root mean square of the residuals. */
   readonly rms: number
@@ -20,7 +30,9 @@ export interface DemandResult {
   readonly met: boolean | null
   /** Energy of the extreme of a pass or block. */
   readonly extremeEv: number | null
+  /** Of a peak, or the maximum that a band was measured from. */
   readonly peak: PeakFigures | null
+  readonly band: BandFigures | null
 }
 
 export interface Evaluation {
@@ -28,7 +40,7 @@ export interface Evaluation {
   /** All limits are met at every condition. */
   readonly met: boolean
   readonly demands: readonly DemandResult[]
-  /** Of the first peak demand, else the highest maximum of the scan (of the window where that has none); null when there is none. */
+  /** Of the first peak or band demand, else the highest maximum of the scan (of the window where that has none); null when there is none. */
   readonly peak: PeakFigures | null
 }
 

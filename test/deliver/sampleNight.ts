@@ -16,9 +16,19 @@ export const peak: PeakFigures = {
 }
 
 export const demands: Demand[] = [
-  { id: 'd1', weight: 1, kind: 'peak', energyEv: 0.08, withinEv: 0.005, fwhmEv: [0.001, 0.004], height: 0.8 },
-  { id: 'd2', weight: 1, kind: 'block', pointsEv: evenly(0.005, 0.06, 64), below: 0.02 },
-  { id: 'd3', weight: 0.5, kind: 'block', pointsEv: evenly(0.11, 0.2, 64), below: 0.02 },
+  {
+    id: 'd1',
+    weight: 1,
+    kind: 'peak',
+    energyEv: 0.08,
+    withinEv: 0.005,
+    fwhmEv: [0.001, 0.004],
+    height: 0.8,
+    alone: null,
+    accept: null,
+  },
+  { id: 'd2', weight: 1, kind: 'block', accept: null, pointsEv: evenly(0.005, 0.06, 64), below: 0.02 },
+  { id: 'd3', weight: 0.5, kind: 'block', accept: null, pointsEv: evenly(0.11, 0.2, 64), below: 0.02 },
 ]
 
 export function sampleJob(changes: Partial<Job> = {}): Job {
@@ -118,8 +128,26 @@ export function sampleCandidate(changes: Partial<Candidate> = {}): Candidate {
       met: true,
       demands: [
         { id: 'd1', kind: 'peak', reached: peak.energyEv, rms: 0, met: true, extremeEv: null, peak },
-        { id: 'd2', kind: 'block', reached: 0.0006202906946, rms: 0, met: true, extremeEv: 0.06, peak: null },
-        { id: 'd3', kind: 'block', reached: 0.005054526586, rms: 0, met: true, extremeEv: 0.11, peak: null },
+        {
+          id: 'd2',
+          kind: 'block',
+          accept: null,
+          reached: 0.0006202906946,
+          rms: 0,
+          met: true,
+          extremeEv: 0.06,
+          peak: null,
+        },
+        {
+          id: 'd3',
+          kind: 'block',
+          accept: null,
+          reached: 0.005054526586,
+          rms: 0,
+          met: true,
+          extremeEv: 0.11,
+          peak: null,
+        },
       ],
       peak,
     },

@@ -45,6 +45,8 @@ describe('a job in order', () => {
     const [peak, low, high] = job.demands
     expect(peak).toEqual({
       kind: 'peak',
+      alone: null,
+      accept: null,
       id: 'd1',
       weight: 1,
       energyEv: 0.08,
@@ -159,6 +161,8 @@ describe('a job in order', () => {
     expect(job.demands).toEqual([
       {
         kind: 'curve',
+        accept: null,
+        mostRms: null,
         id: 'goal',
         weight: 2,
         file: 'goal.csv',

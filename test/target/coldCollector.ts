@@ -21,6 +21,8 @@ export const condition = { name: '', temperatureK: 77, biasV: 0, inPlaneEv: 0 }
 
 export const d1 = {
   kind: 'peak',
+  alone: null,
+  accept: null,
   id: 'd1',
   weight: 1,
   energyEv: 0.08,
@@ -54,7 +56,7 @@ export const growth: GrowthSpec = {
 }
 
 export function block(id: string, weight: number, from: number, to: number, below: number) {
-  return { kind: 'block', id, weight, pointsEv: evenly(from, to, 64), below } as const satisfies Demand
+  return { kind: 'block', accept: null, id, weight, pointsEv: evenly(from, to, 64), below } as const satisfies Demand
 }
 
 export function evenly(from: number, to: number, points: number): number[] {

@@ -142,6 +142,7 @@ describe('a block', () => {
 describe('a pass', () => {
   const pass = (from: number, to: number, above: number): Demand => ({
     kind: 'pass',
+    accept: null,
     id: 'p',
     weight: 1,
     pointsEv: evenly(from, to, 64),
@@ -171,7 +172,15 @@ describe('a pass', () => {
 
 function curve(rows: readonly Partial<CurveRow>[]): CurveDemand {
   const row = { energyEv: 0.1, T: 1, sense: 'equal', scale: 'linear', tolerance: 1, weight: 1 } as const
-  return { kind: 'curve', id: 'c', weight: 1, file: 'goal.csv', rows: rows.map((given) => ({ ...row, ...given })) }
+  return {
+    kind: 'curve',
+    accept: null,
+    mostRms: null,
+    id: 'c',
+    weight: 1,
+    file: 'goal.csv',
+    rows: rows.map((given) => ({ ...row, ...given })),
+  }
 }
 
 describe('a curve', () => {

@@ -38,7 +38,7 @@ describe('the extremes of a closed range', () => {
     resolutionEv: null,
     demands: [
       { ...block('b', 1, ...range, 1e-3), pointsEv: evenly(...range, 64) },
-      { kind: 'pass', id: 'p', weight: 1, above: 0.9, pointsEv: evenly(...range, 64) },
+      { kind: 'pass', accept: null, id: 'p', weight: 1, above: 0.9, pointsEv: evenly(...range, 64) },
     ],
   })
 
@@ -56,7 +56,9 @@ describe('the extremes of a closed range', () => {
       for (const { reached, extremeEv } of [greatest, least]) {
         const at = compileTarget({
           ...spec,
-          demands: [{ kind: 'curve', id: 'c', weight: 1, file: '', rows: [row(extremeEv!)] }],
+          demands: [
+            { kind: 'curve', accept: null, mostRms: null, id: 'c', weight: 1, file: '', rows: [row(extremeEv!)] },
+          ],
         })
         expect(at.evaluate([system]).demands[0].reached! / reached!, `stack ${number}`).toBeCloseTo(1, 9)
       }

@@ -4,7 +4,11 @@ import { buildSystem, regionDerivative } from '../../src/model/index.js'
 import { compileTarget } from '../../src/target/index.js'
 import { block, condition, d1, evenly, layersOf, situation, spec } from './coldCollector.js'
 
-const pass: Demand = { kind: 'pass', id: 'p', weight: 2, pointsEv: evenly(0.06, 0.08, 16), above: 0.7 }
+const pass: Demand = { kind: 'pass', accept: null, id: 'p', weight: 2, pointsEv: evenly(0.06, 0.08, 16), above: 0.7 }
+const band: Demand = {
+  ...{ kind: 'band', accept: null, id: 'flat', weight: 1, energyEv: 0.08, withinEv: 0.001 },
+  ...{ fwhmEv: [0.01, 0.02], top: 0.95, ripple: 0.05 },
+}
 const rows = evenly(0.01, 0.19, 12).map((energyEv, i) => ({
   energyEv,
   T: i % 2 === 0 ? 1e-4 : 0.5,
@@ -13,7 +17,7 @@ const rows = evenly(0.01, 0.19, 12).map((energyEv, i) => ({
   tolerance: 0.5,
   weight: 1 + (i % 4),
 }))
-const curve: CurveDemand = { kind: 'curve', id: 'c', weight: 0.3, file: 'goal.csv', rows }
+const curve: CurveDemand = { kind: 'curve', accept: null, mostRms: null, id: 'c', weight: 0.3, file: 'goal.csv', rows }
 
 /** Variables: the three widths (nm), and x of both barriers. */
 function stackAt([a, b, c, x]: readonly number[]) {
@@ -48,7 +52,7 @@ const starts = [
 ]
 
 describe('the fit', () => {
-  const everything = [d1, block('b', 0.5, 0.005, 0.06, 2e-2), block('b2', 1, 0.11, 0.2, 2e-3), pass, curve]
+  const everything = [d1, band, block('b', 0.5, 0.005, 0.06, 2e-2), block('b2', 1, 0.11, 0.2, 2e-3), pass, curve]
 
   test.each(starts)('has the slopes of its residuals at %d, %d, %d nm and x = %d', (...start) => {
     const { residuals, jacobian } = fitAt(everything, start)
@@ -77,7 +81,7 @@ describe('the fit', () => {
       const { target, residuals, systems } = fitAt([d1, curve], start)
       const sum = residuals.reduce((total, residual) => total + residual * residual, 0)
       expect(Math.sqrt(sum)).toBeCloseTo(target.evaluate(systems).merit, 12)
-      const points = fitAt([pass, everything[1], curve], start)
+      const points = fitAt([pass, everything[2], curve], start)
       const squares = points.residuals.reduce((total, residual) => total + residual * residual, 0)
       expect(Math.sqrt(squares)).toBeCloseTo(points.target.pointMerit(points.systems), 12)
     }
