@@ -1,7 +1,6 @@
 import type { Candidate, LayerReport } from '../deliver/index.js'
 import { sheetOf, type Yield } from '../growth/index.js'
 import type { Job } from '../job/index.js'
-import { resolveMedium } from '../model/index.js'
 import { resonances } from '../wave/index.js'
 import { pathError } from './audit.js'
 import type { BoundJob } from './problem.js'
@@ -16,15 +15,15 @@ const needleEv = 1e-9
 
 /**
  * Everything that the files say of one stack of the list. Figures that belong to one condition (poles, profile, sheet) are those of
- * the job's first.
+ * the condition at which its peak is.
  */
 export function candidateOf(job: Job, { design, target }: BoundJob, listed: Listed): Candidate {
   const assignment = Int32Array.from(listed.found.assignment)
   const layers = design.layers(assignment)
   const systems = design.systems(assignment)
-  const [situation] = design.situations
-  const [system] = systems
   const evaluation = target.evaluate(systems)
+  const situation = design.situations[evaluation.peakCondition]
+  const system = systems[evaluation.peakCondition]
   const limits = target.limits(systems, evaluation)
   const { peak } = evaluation
   const sheet = sheetOf({ layers, situation, growth: job.growth, target, evaluation, limits })
@@ -36,7 +35,6 @@ export function candidateOf(job: Job, { design, target }: BoundJob, listed: List
     ...spectrumOf(one, energyEv),
   }))
   const resolvable = peak !== null && peak.fwhmEv >= needleEv ? peak.energyEv : null
-  const exit = situation.exit === 'hard wall' ? null : resolveMedium(situation.exit, situation)
   const alloys = new Set(
     layers.flatMap(({ choice }) =>
       choice.kind === 'material' && choice.x !== null ? [`${choice.material} ${choice.x}`] : [],
@@ -60,7 +58,7 @@ export function candidateOf(job: Job, { design, target }: BoundJob, listed: List
     layers: layers.map((layer, j): LayerReport => ({ ...layer, ...sheet.rows[j] })),
     spectra: spectra.map(({ fluxError: _, ...spectrum }) => spectrum),
     resonances: poles.poles,
-    profile: profileOf(system, layers, exit, peak?.energyEv ?? null),
+    profile: profileOf(system, situation, layers, peak?.energyEv ?? null),
     notes: stackNotes(job, layers, poles),
   }
 }

@@ -20,7 +20,14 @@ export function firstLook(job: Job, { problem, design, target }: BoundJob): Firs
   const systems = design.systems(assignment)
   const evaluation = target.evaluate(systems)
   const limits = target.limits(systems, evaluation)
-  const { rows } = sheetOf({ layers, situation: design.situations[0], growth: job.growth, target, evaluation, limits })
+  const { rows } = sheetOf({
+    layers,
+    situation: design.situations[evaluation.peakCondition],
+    growth: job.growth,
+    target,
+    evaluation,
+    limits,
+  })
   let mostSensitive: FirstLook['mostSensitive'] = null
   rows.forEach(({ shiftEv }, j) => {
     if (shiftEv === null || Math.abs(shiftEv) <= Math.abs(mostSensitive?.shiftEv ?? 0)) return

@@ -77,10 +77,17 @@ function leastMargin(
 ): number | null {
   const layers = design.layers(assignment)
   const evaluation = target.evaluate(systems)
-  const margins = systems.map((system, i) =>
-    marginOf(target.limits([system], evaluation), growthErrors(layers, design.situations[i], job.growth)),
+  const limits = target.limits(systems, evaluation)
+  const margins = systems.map((_, i) =>
+    marginOf(
+      limits.filter(({ condition }) => condition === i),
+      growthErrors(layers, design.situations[i], job.growth),
+    ),
   )
-  return margins.reduce((least, margin) => (least === null || margin === null ? null : Math.min(least, margin)))
+  // No demand may hold at a condition.
+  return margins.reduce((least, margin) =>
+    least === null ? margin : margin === null ? least : Math.min(least, margin),
+  )
 }
 
 function relax(design: Design, target: Target, assignment: Int32Array): RelaxedProblem {

@@ -1,5 +1,5 @@
 import type { Job } from '../job/index.js'
-import { type MediumChoice, type Situation, situationOf } from '../model/index.js'
+import { type MediumChoice, type Situation, situationOf, slicePlan } from '../model/index.js'
 import { DesignError } from './DesignError.js'
 import { expandLayers, type Slot } from './expandLayers.js'
 import { alloyOf, type Candidate, type Cell, LayerLattice, mediumKey } from './LayerLattice.js'
@@ -9,12 +9,20 @@ import type { Place } from './types.js'
 /** A stretch of one medium as it is grown. */
 export interface Stretch extends Cell {
   readonly id: string
+  readonly slices: number
+  readonly biased: boolean
+}
+
+/** A layer where the wave meets it, and how a bias takes it. */
+export interface SlicedSlot extends Slot {
+  readonly slices: number
+  readonly biased: boolean
 }
 
 /** The places of a job and what they mean, layer by layer: the ground on which the functions of this folder stand. */
 export class Lattice {
   readonly layers: readonly LayerLattice[]
-  readonly slots: readonly Slot[]
+  readonly slots: readonly SlicedSlot[]
   readonly places: readonly Place[]
   readonly situations: readonly Situation[]
   /** At most so many different alloys in a stack, those of the leads free. */
@@ -38,7 +46,9 @@ export class Lattice {
       layers.push(layer)
     }
     this.layers = layers
-    this.slots = slots
+    const plan = job.conditions.every(({ biasV }) => biasV === 0) ? null : slicePlan(stack, this.situations[0])
+    const biased = plan?.biased(slots.map(({ id }) => id))
+    this.slots = slots.map((slot, i) => ({ ...slot, slices: plan?.slices(slot.id) ?? 1, biased: biased?.[i] ?? false }))
     this.places = placesOf(layers)
     this.compositions = growth.compositions
     const { entry, exit } = this.situations[0]
@@ -101,12 +111,13 @@ export class Lattice {
   stretches(assignment: Int32Array): Stretch[] {
     const cells = this.cells(assignment)
     const stretches: Stretch[] = []
-    for (const { id, layer } of this.slots) {
+    for (const { id, layer, slices, biased } of this.slots) {
       const { medium, count } = cells[layer]
       if (count * medium.widths.stepNm === 0) continue
       const last = stretches.at(-1)
-      if (last?.medium.key !== medium.key) stretches.push({ id, medium, count })
-      else stretches[stretches.length - 1] = merged(last, { id, medium, count })
+      const next = { id, medium, count, slices, biased }
+      if (last?.medium.key !== medium.key || last.biased !== biased) stretches.push(next)
+      else stretches[stretches.length - 1] = merged(last, next)
     }
     return stretches
   }
@@ -127,11 +138,11 @@ function placesOf(layers: readonly LayerLattice[]): Place[] {
 
 /** A common step is kept; two steps make one width that is its own step. */
 function merged(a: Stretch, b: Stretch): Stretch {
-  const id = `${a.id}+${b.id}`
-  if (a.medium.widths.stepNm === b.medium.widths.stepNm) return { id, medium: a.medium, count: a.count + b.count }
+  const rest = { id: `${a.id}+${b.id}`, slices: a.slices + b.slices, biased: a.biased }
+  if (a.medium.widths.stepNm === b.medium.widths.stepNm) return { ...rest, medium: a.medium, count: a.count + b.count }
   const stepNm = a.count * a.medium.widths.stepNm + b.count * b.medium.widths.stepNm
   const widths = { first: 1, last: 1, stride: 1, stepNm, monolayers: false }
-  return { id, medium: { ...a.medium, widths }, count: 1 }
+  return { ...rest, medium: { ...a.medium, widths }, count: 1 }
 }
 
 function strainedTo(material: string | null, lead: MediumChoice | 'hard wall'): MediumChoice | null {

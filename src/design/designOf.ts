@@ -39,13 +39,16 @@ const upperBoundNote =
   'The number of stacks is an upper bound: layers that could merge with a neighbour of the same medium or have no width count as apart.'
 
 function grownLayer(stretch: Stretch): GrownLayer {
-  const { id, medium, count } = stretch
+  const { id, medium, count, slices, biased } = stretch
   const { choice, resolved, widths } = medium
-  return { id, choice, resolved, count, stepNm: widths.stepNm, widthNm: widthNm(stretch) }
+  return { id, choice, resolved, count, stepNm: widths.stepNm, widthNm: widthNm(stretch), slices, biased }
 }
 
 function systemsOf({ situations }: Lattice, stretches: readonly Stretch[]): WaveSystem[] {
-  const rows = stretches.map((stretch) => ({ choice: stretch.medium.choice, widthNm: widthNm(stretch) }))
+  const rows = stretches.map((stretch) => {
+    const { medium, slices, biased } = stretch
+    return { choice: medium.choice, widthNm: widthNm(stretch), slices, biased }
+  })
   return situations.map((situation) => buildSystem(situation, rows))
 }
 

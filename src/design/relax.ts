@@ -66,17 +66,21 @@ class RelaxedStack implements Relaxed {
 
   systems(values: Float64Array): WaveSystem[] {
     const layers = this.layersAt(values).map(({ choice, count, stepNm }) => ({ choice, widthNm: count * stepNm }))
-    const rows = this.lattice.slots.map(({ layer }) => layers[layer])
+    const rows = this.lattice.slots.map(({ layer, slices, biased }) => ({ ...layers[layer], slices, biased }))
     return this.lattice.situations.map((situation) => buildSystem(situation, rows))
   }
 
-  directions(values: Float64Array): Float64Array {
-    const { slots, situations } = this.lattice
+  directions(values: Float64Array): Float64Array[] {
     const layers = this.layersAt(values)
+    return this.lattice.situations.map((situation) => this.directionsAt(layers, situation))
+  }
+
+  private directionsAt(layers: readonly FreeLayer[], situation: Situation): Float64Array {
+    const { slots } = this.lattice
     const row = slots.length * stride
     const out = new Float64Array(this.variables.length * row)
     this.variables.forEach((variable, v) => {
-      const change = this.changeOf(variable, layers[variable.layer], situations[0])
+      const change = this.changeOf(variable, layers[variable.layer], situation)
       slots.forEach(({ layer }, slot) => {
         if (layer === variable.layer) out.set(change, v * row + slot * stride)
       })

@@ -20,6 +20,9 @@ export interface GrownLayer {
   readonly count: number
   readonly stepNm: number
   readonly widthNm: number
+  /** Under a bias: into how many slices it is cut, and whether the bias falls over it. */
+  readonly slices: number
+  readonly biased: boolean
 }
 
 /** The makeable stacks of a job: an assignment gives each place one of its choices. */
@@ -60,8 +63,8 @@ export interface Relaxed {
   valueOf(variable: number, choice: number): number
   /** Rows are the layers as written, none merged or dropped. */
   systems(variables: Float64Array): WaveSystem[]
-  /** d(layer parameter)/d(variable): row v holds layers * (1 + parameters) entries, [width, then the medium's own] a layer. */
-  directions(variables: Float64Array): Float64Array
+  /** For each condition d(layer parameter)/d(variable): row v holds layers * (1 + parameters) entries, [width, then the medium's own] a layer. */
+  directions(variables: Float64Array): Float64Array[]
   /** The assignment nearest to the variables on the lattice; feasible. */
   snap(variables: Float64Array): Int32Array
 }

@@ -1,14 +1,11 @@
 import type { GrownLayer } from '../design/index.js'
 import type { GrowthSpec } from '../job/index.js'
-import type { MediumChoice } from '../model/index.js'
+import type { MediumChoice, ModelLayer } from '../model/index.js'
 import { ErrorModel } from './ErrorModel.js'
 import { type RandomStream, randomStream } from './random.js'
 
 /** A layer as a trial grew it. */
-export interface TrialLayer {
-  readonly choice: MediumChoice
-  readonly widthNm: number
-}
+export type TrialLayer = ModelLayer
 
 /**
  * One stack grown on paper again and again. Trial number k draws the same numbers for the same source name, place from the
@@ -38,14 +35,14 @@ export class Trials {
     const { model, growth } = this
     const rate = new Map(model.sources.map((source, i) => [source, growth.spread.rate * this.rates[i].normal()]))
     const x = this.alloys.map((stream) => growth.spread.x * stream.normal())
-    return model.layers.map(({ choice, widthNm }, j) => {
+    return model.layers.map(({ choice, widthNm, slices, biased }, j) => {
       const parts = model.feeds[j].map(({ source, share }) => share * (1 + rate.get(source)!))
       const grown = parts.reduce((sum, part) => sum + part, 0)
       const width = Math.max(0, widthNm * grown + model.layerSdNm[j] * this.widths[j].normal())
       const alloy = model.alloyOf[j]
-      if (alloy < 0) return { choice, widthNm: width }
+      if (alloy < 0) return { choice, widthNm: width, slices, biased }
       const share = Math.min(1, Math.max(0, parts[0] / grown + x[alloy]))
-      return { choice: { ...choice, x: share } as MediumChoice, widthNm: width }
+      return { choice: { ...choice, x: share } as MediumChoice, widthNm: width, slices, biased }
     })
   }
 }

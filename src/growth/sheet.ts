@@ -28,7 +28,7 @@ export interface Sheet {
 export interface SheetTask {
   /** From entry to exit. */
   readonly layers: readonly GrownLayer[]
-  /** That of the job's first condition. */
+  /** That of the condition at which the peak is. */
   readonly situation: Situation
   readonly growth: Pick<GrowthSpec, 'startsAt' | 'sources' | 'spread'>
   readonly target: Pick<Target, 'maximumNear' | 'maximumSlope'>

@@ -26,7 +26,7 @@ export interface Job {
   readonly notes: readonly string[]
 }
 
-/** One operating point. A job without `conditions:` has one, named ''. */
+/** One operating point. A job without `conditions:` has one, named ''. Positive bias lowers the edge of the exit. */
 export interface Condition {
   readonly name: string
   readonly temperatureK: number
@@ -43,6 +43,8 @@ export interface StackSpec {
   readonly massModel: 'two-band' | 'parabolic'
   /** A material's name, 'none', or null: the lead at the substrate's side. */
   readonly strainedTo: string | null
+  /** Ids of the first and last layer that a bias falls over; null: all layers. */
+  readonly biasOver: readonly [string, string] | null
 }
 
 export type StackItem = LayerSpec | PeriodSpec
@@ -97,6 +99,8 @@ interface DemandBase {
   readonly weight: number
   /** Looser limits, for the yield only; absent ones are those of the demand. Null: the demand itself. */
   readonly accept: Accepted | null
+  /** The condition at which it holds; null: at all of them. */
+  readonly at: string | null
 }
 
 /** What `accept` states, in the demand's own terms. */

@@ -39,6 +39,7 @@ export const dimensions = {
   width: { units: { ML: 0, ...lengths }, examples: { single: '12 ML', range: '6..20 ML' } },
   length: { units: lengths, examples: { single: '0.1 nm', range: '1..2 nm' } },
   layerError: { units: { ML: 0, ...lengths }, examples: { single: '0.5 ML', range: '0.5 ML' } },
+  voltage: { units: { mV: -3, V: 0 }, examples: { single: '350 mV', range: '0..350 mV' } },
   temperature: { units: { K: 0 }, examples: { single: '77 K', range: '300 K' } },
   rate: { units: { 'ML/s': 0 }, examples: { single: '0.70 ML/s', range: '0.70 ML/s' } },
   percent: { units: { '%': -2 }, examples: { single: '1 %', range: '1 %' } },

@@ -1,9 +1,11 @@
 import { materialNotes } from '../media/index.js'
-import { checkShape } from './checkShape.js'
-import type { Condition, Job } from './job.js'
+import { checkShape, type Loose } from './checkShape.js'
+import type { Job } from './job.js'
 import { Problems } from './Problems.js'
 import { shortened } from './problemAt.js'
 import { Reader } from './Reader.js'
+import { readBiasOver } from './readBiasOver.js'
+import { readConditions } from './readConditions.js'
 import type { Tables } from './readCurve.js'
 import { readGrowth, readStep } from './readGrowth.js'
 import { readMedia } from './readMedia.js'
@@ -11,6 +13,7 @@ import { readStack } from './readStack.js'
 import { readTarget } from './readTarget.js'
 import { readYaml } from './readYaml.js'
 import { refuse } from './refuse.js'
+import type { JobAsWritten } from './schema.js'
 import { largestFile, refusedName } from './tableFile.js'
 import { YamlSource } from './YamlSource.js'
 
@@ -60,11 +63,12 @@ export function assembleJob(text: string, file: string, tables: Tables): Job {
   const files: Record<string, string> = Object.create(null)
   const reader = new Reader(problems)
   const name = readName(written.name, problems)
-  const condition = readCondition(written.temperature, reader)
+  const conditions = readConditions(written, reader)
   const media = readMedia(written.media, reader)
   const stepNm = readStep(written.growth, reader)
   const stack = readStack(written.stack, media, stepNm, reader)
-  const target = readTarget(written.target, keeping(tables, files), reader)
+  const biasOver = readBiasOver(written['bias over'], stack.layers, reader)
+  const target = readTarget(written.target, conditions, keeping(tables, files), reader)
   const growth = readGrowth(written.growth, stepNm, stack.layers, reader)
   const seed =
     written.search?.seed === undefined ? 1 : reader.whole(written.search.seed, ['search', 'seed'], 0, 4294967295)
@@ -82,8 +86,8 @@ export function assembleJob(text: string, file: string, tables: Tables): Job {
     name,
     kind: 'electron' as const,
     note: written.note ?? '',
-    conditions: [condition],
-    stack: stack.spec!,
+    conditions,
+    stack: { ...stack.spec!, biasOver },
     scanEv: target.scanEv!,
     resolutionEv: target.resolutionEv,
     demands: target.demands,
@@ -95,7 +99,7 @@ export function assembleJob(text: string, file: string, tables: Tables): Job {
     },
     deliver: { candidates: candidates! },
   } as const
-  return { ...job, notes: notesOf(job, source.has(['temperature'])) }
+  return { ...job, notes: notesOf(job, statesTemperature(written)) }
 }
 
 function readName(name: string | undefined, problems: Problems): string {
@@ -110,12 +114,10 @@ function readName(name: string | undefined, problems: Problems): string {
   return ''
 }
 
-function readCondition(temperature: string | number | undefined, reader: Reader): Condition {
-  const temperatureK = reader.single(temperature, ['temperature'], 'temperature') ?? 300
-  if (temperatureK < 0 || temperatureK > 1000) {
-    reader.complain(['temperature'], 'is outside 0..1000 K', 'Write the temperature in operation, like "77 K".')
-  }
-  return { name: '', temperatureK, biasV: 0, inPlaneEv: 0 }
+/** Every operating point has a temperature that the job states. */
+function statesTemperature({ temperature, conditions }: Loose<JobAsWritten>): boolean {
+  const points = Object.values<{ readonly temperature?: unknown } | undefined>(conditions ?? {})
+  return temperature !== undefined || (points.length > 0 && points.every((point) => point?.temperature !== undefined))
 }
 
 function keeping(tables: Tables, files: Record<string, string>): Tables {
@@ -135,13 +137,16 @@ function notesOf(job: Omit<Job, 'notes'>, statesTemperature: boolean): string[] 
     const values = `rates ${rate * 100} %, layers ${layer.value} ${layer.unit}, x ${x}`
     notes.push(`The job states no growth.spread: ${values} (one standard deviation) are assumed.`)
   }
-  const [{ temperatureK }] = conditions
   const seen = new Set<string>()
   for (const option of optionsOf(stack)) {
     if (option.kind !== 'material') continue
     // The ends of a range tell all: what holds for one composition and not for its neighbours has a limit between them.
     const ends = option.x ? [option.x[0], option.x[option.x.length - 1]] : [null]
-    for (const x of ends) for (const note of materialNotes(option.material, x, temperatureK)) seen.add(note)
+    for (const x of ends) {
+      for (const { temperatureK } of conditions) {
+        for (const note of materialNotes(option.material, x, temperatureK)) seen.add(note)
+      }
+    }
   }
   return [...notes, ...seen]
 }

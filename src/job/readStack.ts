@@ -57,6 +57,7 @@ export function readStack(
     mirror,
     massModel: stack.mass ?? 'two-band',
     strainedTo,
+    biasOver: null,
   }
   return { spec, layers }
 

@@ -1,5 +1,6 @@
+import { nearest } from '../media/index.js'
 import type { Loose } from './checkShape.js'
-import type { CurveRow, Demand } from './job.js'
+import type { Condition, CurveRow, Demand } from './job.js'
 import { shortened } from './problemAt.js'
 import { parseLevel, pointsOf, type Quantity } from './quantities.js'
 import { isComplaint, type Reader } from './Reader.js'
@@ -22,12 +23,25 @@ const mostDemands = 256
 const mostTables = 16
 
 /** Scan and demands; every demand has to lie within the scan. */
-export function readTarget(target: Target, tables: Tables, reader: Reader): ReadTarget {
+export function readTarget(
+  target: Target,
+  conditions: readonly Condition[],
+  tables: Tables,
+  reader: Reader,
+): ReadTarget {
   const { problems } = reader
   const scan = reader.range(target?.scan, ['target', 'scan'], 'energy')
   if (scan && scan.from <= 0) {
     const remedy = `Start above 0: "${Math.min(5, scan.written[1] / 2)}..${scan.written[1]} ${scan.unit}".`
     reader.complain(['target', 'scan'], "starts at or below the entry's band edge, where nothing comes in", remedy)
+  }
+  const inPlane = conditions.find(({ inPlaneEv }) => scan && scan.from > 0 && scan.from <= inPlaneEv)
+  if (inPlane) {
+    reader.complain(
+      ['target', 'scan'],
+      `starts at or below the in-plane energy${inPlane.name && ` of "${inPlane.name}"`}, ${inPlane.inPlaneEv * 1000} meV, where nothing comes in`,
+      'Energies of the scan are total energies: start above it.',
+    )
   }
   const within = scan && scan.from > 0 ? scan : null
   const { resolution } = target ?? {}
@@ -59,7 +73,7 @@ export function readTarget(target: Target, tables: Tables, reader: Reader): Read
   written?.forEach((demand, i) => {
     if (demand === undefined) return
     const path = ['target', 'demands', i]
-    const read = readDemand(demand, path, `d${i + 1}`, within, curveOf, reader)
+    const read = readDemand(demand, path, `d${i + 1}`, within, conditions, curveOf, reader)
     if (demand.id !== undefined && ids.has(demand.id)) {
       problems.add(
         [...path, 'id'],
@@ -101,6 +115,7 @@ function readDemand(
   path: Path,
   defaultId: string,
   scan: Quantity | null,
+  conditions: readonly Condition[],
   curveOf: (name: string, path: Path) => readonly CurveRow[] | null,
   reader: Reader,
 ): Demand | null {
@@ -115,7 +130,7 @@ function readDemand(
     return null
   }
   for (const key of Object.keys(demand)) {
-    if (key === 'id' || key === 'weight' || (forms[kind] as readonly string[]).includes(key)) continue
+    if (key === 'id' || key === 'weight' || key === 'at' || (forms[kind] as readonly string[]).includes(key)) continue
     const owner = (Object.keys(forms) as Form[]).find((form) => (forms[form] as readonly string[]).includes(key))
     const remedy = owner === key ? 'Make it a demand of its own.' : `It belongs to "${owner}": take it out.`
     problems.addAtKey([...path, key], `"${key}" has no place beside "${kind}".`, remedy)
@@ -127,7 +142,7 @@ function readDemand(
   const weight = demand.weight ?? 1
   if (!(weight > 0))
     reader.complain([...path, 'weight'], 'is not above 0', 'Write a number above 0, or take the demand out.')
-  const head = { id, weight, accept: null }
+  const head = { id, weight, accept: null, at: readAt() }
 
   if (kind === 'peak' || kind === 'band') return readLine(kind)
   if (kind === 'curve') {
@@ -177,6 +192,23 @@ function readDemand(
     const ripple = reader.share(demand.ripple, [...path, 'ripple'])
     if (energyEv === null || withinEv === null) return null
     return accepting({ ...head, kind, energyEv, withinEv, fwhmEv: fwhm, top, ripple })
+  }
+
+  function readAt(): string | null {
+    const { at } = demand
+    if (at === undefined) return null
+    const names = conditions.map(({ name }) => name)
+    if (names.includes(at) && at !== '') return at
+    const near = nearest(at, names)
+    const given = names.filter((name) => name !== '')
+    const remedy =
+      near.length > 0
+        ? `Did you mean "${near[0]}"?`
+        : given.length > 0
+          ? `There are ${given.join(', ')}.`
+          : 'Add "conditions:" with it.'
+    problems.add([...path, 'at'], `There is no condition "${shortened(at)}".`, remedy)
+    return null
   }
 
   function readWithin(written: Written['within'], here: Path): number | null {

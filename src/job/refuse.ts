@@ -7,10 +7,6 @@ import type { Path } from './YamlSource.js'
  */
 const refused: Readonly<Record<Room, Readonly<Record<string, string>>>> = {
   job: {
-    conditions: 'Write one job for each operating point, with its own temperature.',
-    bias: 'Take it out: the job is run at zero bias.',
-    'bias over': 'Take it out: the job is run at zero bias.',
-    'in-plane': 'Take it out: the job is run for motion straight along the stack.',
     angle: 'Take it out: it belongs to jobs with kind: light.',
     polarisation: 'Take it out: it belongs to jobs with kind: light.',
   },
@@ -30,7 +26,6 @@ const refused: Readonly<Record<Room, Readonly<Record<string, string>>>> = {
     extinction: 'Electrons need potential and mass instead.',
   },
   demand: {
-    at: 'Take it out: the job has one operating point.',
     quantity: 'Take it out: demands are on T. R is 1 - T here.',
   },
   growth: {
@@ -46,7 +41,8 @@ type Map = Record<string, unknown>
 
 export function refuse(job: unknown, problems: Problems): void {
   visit(job, 'job', [])
-  const { media, stack, target, growth, search } = (job ?? {}) as Record<string, Map | undefined>
+  const { conditions, media, stack, target, growth, search } = (job ?? {}) as Record<string, Map | undefined>
+  for (const name of Object.keys(conditions ?? {})) visit(conditions?.[name], 'job', ['conditions', name])
   for (const name of Object.keys(media ?? {})) visit(media?.[name], 'medium', ['media', name])
   visit(stack, 'stack', ['stack'])
   for (const side of ['entry', 'exit']) visit(stack?.[side], 'medium', ['stack', side])

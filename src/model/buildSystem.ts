@@ -1,24 +1,30 @@
 import type { WaveSystem } from '../wave/index.js'
 import { systemOfRegions } from './electronSystem.js'
 import { resolveMedium } from './resolveMedium.js'
-import type { MediumChoice, Situation } from './types.js'
+import { slicedLayers } from './slicedLayers.js'
+import type { ModelLayer, Region, Situation } from './types.js'
 
 /**
- * Layers of a job, from entry to exit, as the wave core reads them; row i of the stack is layer i, zero widths kept.
- * Throws as resolveMedium does.
+ * Layers of a job, from entry to exit, as the wave core reads them, zero widths kept. Without a bias row i of the stack is layer i, else
+ * each layer is cut into its slices, and the system maps the slopes of the rows back to the layers. Throws as resolveMedium does.
  */
-export function buildSystem(
-  situation: Situation,
-  layers: readonly { readonly choice: MediumChoice; readonly widthNm: number }[],
-): WaveSystem {
-  const { entry, exit, inPlaneKPerNm } = situation
-  const widths = new Float64Array(layers.length)
-  for (let i = 0; i < widths.length; i++) widths[i] = layers[i].widthNm
-  return systemOfRegions(
+export function buildSystem(situation: Situation, layers: readonly ModelLayer[]): WaveSystem {
+  const { regions, width, rowMap } = slicedLayers(situation, layers)
+  const { entry, inPlaneKPerNm } = situation
+  const system = systemOfRegions(
     resolveMedium(entry, situation).region,
-    layers.map(({ choice }) => resolveMedium(choice, situation).region),
-    widths,
-    exit === 'hard wall' ? exit : resolveMedium(exit, situation).region,
+    regions,
+    width,
+    exitRegion(situation),
     inPlaneKPerNm,
   )
+  return rowMap ? { ...system, rowMap } : system
+}
+
+/** The exit, lowered by the bias. */
+export function exitRegion(situation: Situation): Required<Region> | 'hard wall' {
+  const { exit, biasV } = situation
+  if (exit === 'hard wall') return exit
+  const { region } = resolveMedium(exit, situation)
+  return { ...region, potentialEv: region.potentialEv - biasV }
 }

@@ -8,13 +8,10 @@ import type { MediumChoice, Situation } from './types.js'
  * The conditions and the strain of a job at one of its operating points. Layers are strained to `strained to`, else to the lead
  * at the substrate's side; a lead given by numbers, a hard wall and `none` strain nothing. The in-plane wave number is that of
  * the in-plane kinetic energy in the entry, of its own mass model. Throws StackError for a lead that leaves a
- * choice, and for a bias.
+ * choice.
  */
 export function situationOf(job: Pick<Job, 'stack' | 'growth'>, condition: Condition): Situation {
   const { stack, growth } = job
-  if (condition.biasV !== 0) {
-    throw new StackError(`Bias is ${condition.biasV} V: stacks under bias are not computed yet. Leave it out.`)
-  }
   const entry = onlyChoice(stack.entry, 'entry')
   const exit = stack.exit === 'hard wall' ? stack.exit : onlyChoice(stack.exit, 'exit')
   const rest: Situation = {
@@ -24,6 +21,7 @@ export function situationOf(job: Pick<Job, 'stack' | 'growth'>, condition: Condi
     entry,
     exit,
     inPlaneKPerNm: 0,
+    biasV: condition.biasV,
   }
   if (condition.inPlaneEv === 0) return rest
   const { massRel, alphaPerEv } = resolveMedium(entry, rest).region

@@ -1,25 +1,40 @@
 import type { Condition, Job, LayerRow } from '../job/index.js'
+import { exitRegion } from './buildSystem.js'
 import { resolveMedium } from './resolveMedium.js'
 import { StackError } from './StackError.js'
 import { situationOf } from './situationOf.js'
-import type { ElectronStack, LightStack, MediumChoice, Situation } from './types.js'
+import { slicedLayers } from './slicedLayers.js'
+import { ownSlices, slicePlan } from './slicePlan.js'
+import type { ElectronStack, LightStack, MediumChoice, ModelLayer, Situation } from './types.js'
 
 /**
  * A stack of rows, entry to exit, at a condition of a job: its leads, temperature, strain and mass model. A width is the count
- * of the layer's own monolayers where the row has one, else the nm as written. Without `condition` the job's only one, or its
+ * of the layer's own monolayers where the row has one, else the nm as written. Under a bias every layer is cut into its slices. Without `condition` the job's only one, or its
  * first. Throws StackError for a job of light, a condition that the job has not, and for a count and a width that contradict each other.
  */
 export function stackOf(job: Job, rows: readonly LayerRow[], condition?: string): ElectronStack | LightStack {
   if (job.kind !== 'electron') throw new StackError(`The job is of kind ${job.kind}: its stacks are not computed yet.`)
   const situation = situationOf(job, conditionOf(job, condition))
-  const { entry, exit, inPlaneKPerNm } = situation
+  const { entry, inPlaneKPerNm } = situation
+  const { regions, width } = slicedLayers(situation, modelLayers(job, rows, situation))
   return {
     kind: 'electron',
     entry: resolveMedium(entry, situation).region,
-    layers: rows.map((row) => layerOf(row, situation)),
-    exit: exit === 'hard wall' ? exit : resolveMedium(exit, situation).region,
+    layers: regions.map((region, s) => ({ ...region, widthNm: width[s] })),
+    exit: exitRegion(situation),
     inPlaneKPerNm,
   }
+}
+
+/** Rows with an id of the job are cut as the job cuts that layer, others by their own width. */
+function modelLayers(job: Job, rows: readonly LayerRow[], situation: Situation): ModelLayer[] {
+  const plan = situation.biasV === 0 ? null : slicePlan(job.stack, situation)
+  const biased = plan?.biased(rows.map(({ id }) => id ?? ''))
+  return rows.map((row, i) => {
+    const choice: MediumChoice = row.medium
+    const widthNm = widthOf(row, resolveMedium(choice, situation).monolayerNm)
+    return { choice, widthNm, slices: plan?.slices(row.id ?? '') || ownSlices(widthNm), biased: biased?.[i] ?? false }
+  })
 }
 
 function conditionOf({ conditions }: Job, name: string | undefined): Condition {
@@ -27,12 +42,6 @@ function conditionOf({ conditions }: Job, name: string | undefined): Condition {
   if (found) return found
   const names = conditions.map((condition) => `"${condition.name}"`).join(', ')
   throw new StackError(`The job has no condition "${name}". It has ${names}.`)
-}
-
-function layerOf(row: LayerRow, situation: Situation): ElectronStack['layers'][number] {
-  const choice: MediumChoice = row.medium
-  const { region, monolayerNm } = resolveMedium(choice, situation)
-  return { ...region, widthNm: widthOf(row, monolayerNm) }
 }
 
 function widthOf({ where, ml, widthNm }: LayerRow, monolayerNm: number | null): number {

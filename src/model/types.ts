@@ -54,6 +54,16 @@ export interface Situation {
   readonly exit: MediumChoice | 'hard wall'
   /** In-plane wave number, 1/nm. */
   readonly inPlaneKPerNm: number
+  /** Positive lowers the edge of the exit. */
+  readonly biasV: number
+}
+
+/** A layer of a job; slices and the share of a bias count only where there is one. */
+export interface ModelLayer {
+  readonly choice: MediumChoice
+  readonly widthNm: number
+  readonly slices: number
+  readonly biased: boolean
 }
 
 /** A medium at the job's situation. */

@@ -17,8 +17,11 @@ export interface Judge {
   met(landscape: Landscape): boolean | null
   /** Writes a residual a part into `residuals` and returns the slopes of each, [width, then the medium's own] a layer. */
   fitParts(landscape: Landscape, residuals: Float64Array): Float64Array[]
-  limits(landscape: Landscape): Limit[]
+  limits(landscape: Landscape): JudgeLimit[]
 }
+
+/** A limit at whatever condition the landscape is of. */
+export type JudgeLimit = Omit<Limit, 'condition'>
 
 /** What a demand says of a stack at one condition. */
 export interface Verdict extends Pick<DemandResult, 'reached' | 'met' | 'extremeEv' | 'peak' | 'band'> {

@@ -39,8 +39,8 @@ export class Landscape {
 
   /** How many numbers describe the layers: [width, then the medium's own] a layer. */
   get layerParameters(): number {
-    const { media, stack } = this.system
-    return stack.medium.length * (1 + media.parameters)
+    const { media, stack, rowMap } = this.system
+    return (rowMap?.layers ?? stack.medium.length) * (1 + media.parameters)
   }
 
   /** T at each energy (eV). */

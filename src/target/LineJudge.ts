@@ -1,7 +1,7 @@
 import type { Extremum } from '../wave/index.js'
-import { type Judge, nothing, type Verdict } from './Judge.js'
+import { type Judge, type JudgeLimit, nothing, type Verdict } from './Judge.js'
 import type { Landscape } from './Landscape.js'
-import type { Limit, PeakFigures } from './types.js'
+import type { PeakFigures } from './types.js'
 
 /** Every part of a line that has no maximum at all. */
 const none = 10
@@ -25,7 +25,7 @@ export abstract class LineJudge<Figures> implements Judge {
   protected abstract residuals(landscape: Landscape, figures: Figures): readonly number[]
   /** d(residual)/d(layer parameter) of each part, as if none were met. */
   protected abstract slopes(landscape: Landscape, figures: Figures): readonly Float64Array[]
-  protected abstract limitsOf(landscape: Landscape, figures: Figures): Limit[]
+  protected abstract limitsOf(landscape: Landscape, figures: Figures): JudgeLimit[]
   protected abstract verdict(
     figures: Figures,
   ): { readonly reached: number; readonly peak: PeakFigures } & Partial<Verdict>
@@ -59,12 +59,12 @@ export abstract class LineJudge<Figures> implements Judge {
     return this.slopes(landscape, best).map((row, i) => (parts[i] > 0 ? row : empty()))
   }
 
-  limits(landscape: Landscape): Limit[] {
+  limits(landscape: Landscape): JudgeLimit[] {
     const best = this.best(landscape)
     return best === null ? [] : this.limitsOf(landscape, best)
   }
 
-  protected limit(part: string, slack: number, gradient: Float64Array): Limit {
+  protected limit(part: string, slack: number, gradient: Float64Array): JudgeLimit {
     return { demand: this.id, part, slack, gradient }
   }
 

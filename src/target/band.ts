@@ -1,9 +1,9 @@
 import type { BandDemand } from '../job/index.js'
 import type { Extremum } from '../wave/index.js'
 import { type BandShape, bandShapeOf, bandSlopes } from './bandFigures.js'
+import type { JudgeLimit } from './Judge.js'
 import type { Landscape } from './Landscape.js'
 import { LineJudge, offPlace, offWidth, placeSlope, scaled, widthSlope } from './LineJudge.js'
-import type { Limit } from './types.js'
 
 /** A flat top: its centre, and what is stated of its width, its mean height and its greatest dip. */
 export class BandJudge extends LineJudge<BandShape> {
@@ -63,7 +63,7 @@ export class BandJudge extends LineJudge<BandShape> {
     return rows
   }
 
-  protected limitsOf(landscape: Landscape, band: BandShape): Limit[] {
+  protected limitsOf(landscape: Landscape, band: BandShape): JudgeLimit[] {
     const { energyEv, withinEv, fwhmEv, top, ripple } = this.demand
     const slopes = bandSlopes(landscape, band)
     const limits = [

@@ -1,11 +1,10 @@
 import type { BlockDemand } from '../job/index.js'
 import { type Extremum, extremeOver, log10 } from '../wave/index.js'
 import { decibelSlope, excess, unitDb } from './decibels.js'
-import { type Judge, nothing, type PointTerms, type Verdict } from './Judge.js'
+import { type Judge, type JudgeLimit, nothing, type PointTerms, type Verdict } from './Judge.js'
 import type { Landscape } from './Landscape.js'
 import { meanSquare } from './meanSquare.js'
 import { peakSlopes } from './peakSlopes.js'
-import type { Limit } from './types.js'
 
 /**
  * T at most t over a closed range: 10 log10(T/t) over 3 dB at its points and at the greatest T. `resolutionEv`: a maximum with a
@@ -53,7 +52,7 @@ export class BlockJudge implements Judge {
     return []
   }
 
-  limits(landscape: Landscape): Limit[] {
+  limits(landscape: Landscape): JudgeLimit[] {
     const { energyEv, T } = this.greatest(landscape)
     const slack = T > 0 ? 10 * log10(this.demand.below / T) : Infinity
     const { T: bare, gradient } = landscape.gradient([energyEv])

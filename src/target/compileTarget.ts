@@ -29,6 +29,8 @@ class CompiledTarget implements Target {
   readonly fitSize: number
   private readonly judges: readonly Judge[]
   private readonly weights: readonly number[]
+  /** Numbers of the conditions at which each demand holds. */
+  private readonly holds: readonly (readonly number[])[]
   private readonly spectrum: PointSpectrum
   private readonly windowEv: readonly [number, number]
   /** The part of the window that decides what is met. */
@@ -54,17 +56,21 @@ class CompiledTarget implements Target {
       Math.min(this.windowEv[1], Math.max(...ranges.map(([, to]) => to))),
     ]
     this.onlyCurves = demands.every(({ kind }) => kind === 'curve')
-    const rows = this.judges.map(({ terms, parts }) => parts + (terms?.energiesEv.length ?? 0))
-    this.fitSize = conditions.length * rows.reduce((sum, size) => sum + size, 0)
+    const all = conditions.map((_, i) => i)
+    this.holds = demands.map(({ at }) => (at === null ? all : all.filter((i) => conditions[i].name === at)))
+    const rows = this.judges.map(
+      ({ terms, parts }, d) => this.holds[d].length * (parts + (terms?.energiesEv.length ?? 0)),
+    )
+    this.fitSize = rows.reduce((sum, size) => sum + size, 0)
   }
 
   pointMerit(systems: readonly WaveSystem[]): number {
     const squares = new Float64Array(this.judges.length)
-    for (const system of systems) {
-      const T = this.spectrum.at(system)
+    for (let c = 0; c < systems.length; c++) {
+      const T = this.spectrum.at(systems[c])
       for (let d = 0; d < squares.length; d++) {
         const { terms } = this.judges[d]
-        if (terms) squares[d] += meanSquare(terms, T) / systems.length
+        if (terms && this.holds[d].includes(c)) squares[d] += meanSquare(terms, T) / this.holds[d].length
       }
     }
     return merit(squares, this.weights)
@@ -78,31 +84,33 @@ class CompiledTarget implements Target {
 
   meets(systems: readonly WaveSystem[]): boolean[] {
     const landscapes = systems.map((system) => new Landscape(system, this.spectrum.at(system).slice(), this.limitsEv))
-    return this.judges.map((judge) => landscapes.every((landscape) => judge.met(landscape) !== false))
+    return this.judges.map((judge, d) => this.holds[d].every((c) => judge.met(landscapes[c]) !== false))
   }
 
   evaluate(systems: readonly WaveSystem[]): Evaluation {
     const { merit, demands } = this.judgeAll(systems)
     const first = demands.find(({ kind }) => kind === 'peak' || kind === 'band')
     const peak = first ? first.peak : highestPeak(this.landscape(systems[0]), this.scanEv)
-    return { merit, met: demands.every(({ met }) => met !== false), demands, peak }
+    const met = demands.every((demand) => demand.met !== false)
+    return { merit, met, demands, peak, peakCondition: first?.condition ?? 0 }
   }
 
   fit(
     systems: readonly WaveSystem[],
-    directions: Float64Array,
+    directions: readonly Float64Array[],
     variables: number,
     residuals: Float64Array,
     jacobian: Float64Array,
   ): void {
     const landscapes = systems.map((system) => this.landscape(system))
-    fitInto(landscapes, this.judges, directions, variables, residuals, jacobian)
+    fitInto(landscapes, this.judges, this.holds, directions, variables, residuals, jacobian)
   }
 
   limits(systems: readonly WaveSystem[]): Limit[] {
-    return systems.flatMap((system) => {
+    return systems.flatMap((system, condition) => {
       const landscape = this.landscape(system)
-      return this.judges.flatMap((judge) => judge.limits(landscape))
+      const judges = this.judges.filter((_, d) => this.holds[d].includes(condition))
+      return judges.flatMap((judge) => judge.limits(landscape).map((limit) => ({ ...limit, condition })))
     })
   }
 
@@ -120,10 +128,10 @@ class CompiledTarget implements Target {
     const landscapes = systems.map((system) => this.landscape(system))
     const squares = new Float64Array(this.judges.length)
     const demands = this.judges.map((judge, d) => {
-      const verdicts = landscapes.map((landscape) => judge.judge(landscape))
+      const verdicts = this.holds[d].map((c) => judge.judge(landscapes[c]))
       // As in pointMerit: its sum is a lower bound of this one to the last bit.
-      for (const { square } of verdicts) squares[d] += square / systems.length
-      return resultOf(judge, squares[d], verdicts)
+      for (const { square } of verdicts) squares[d] += square / verdicts.length
+      return resultOf(judge, squares[d], verdicts, this.holds[d])
     })
     return { merit: merit(squares, this.weights), demands }
   }
@@ -158,12 +166,16 @@ function judgeOf(
 }
 
 /** Figures are those of the worst condition; met means met at each. */
-function resultOf({ id, kind }: Judge, square: number, verdicts: readonly Verdict[]): DemandResult {
-  const { reached, extremeEv, peak, band } = verdicts.reduce((worst, next) =>
-    next.square > worst.square ? next : worst,
-  )
+function resultOf(
+  { id, kind }: Judge,
+  square: number,
+  verdicts: readonly Verdict[],
+  conditions: readonly number[],
+): DemandResult {
+  const worst = verdicts.reduce((most, next, i) => (next.square > verdicts[most].square ? i : most), 0)
+  const { reached, extremeEv, peak, band } = verdicts[worst]
   const met = verdicts[0].met === null ? null : verdicts.every((verdict) => verdict.met)
-  return { id, kind, reached, rms: Math.sqrt(square), met, extremeEv, peak, band }
+  return { id, kind, reached, rms: Math.sqrt(square), met, extremeEv, peak, band, condition: conditions[worst] }
 }
 
 /**

@@ -1,9 +1,8 @@
 import type { CurveDemand, CurveRow } from '../job/index.js'
 import { log10 } from '../wave/index.js'
-import { type Judge, nothing, type PointTerms, type Verdict } from './Judge.js'
+import { type Judge, type JudgeLimit, nothing, type PointTerms, type Verdict } from './Judge.js'
 import type { Landscape } from './Landscape.js'
 import { meanSquare } from './meanSquare.js'
-import type { Limit } from './types.js'
 
 /** T below this counts as this on a scale of decades. */
 const floor = 1e-30
@@ -48,7 +47,7 @@ export class CurveJudge implements Judge {
     return []
   }
 
-  limits(): Limit[] {
+  limits(): JudgeLimit[] {
     return []
   }
 }

@@ -2,47 +2,50 @@ import type { Judge } from './Judge.js'
 import type { Landscape } from './Landscape.js'
 
 /**
- * The residuals of the fit and their slopes in the variables: for each condition and demand the points, or the parts of a peak,
- * scaled so that the sum of squares is merit² without the extremes. `directions` has a row a variable with
+ * The residuals of the fit and their slopes in the variables: for each condition and the demands that hold there the points, or the parts of a peak,
+ * scaled so that the sum of squares is merit² without the extremes. `directions` has, for each condition, a row a variable with
  * d(layer parameter)/d(variable); jacobian[i * variables + v]. The adjoint runs only at points that have a slope.
  */
 export function fitInto(
   landscapes: readonly Landscape[],
   judges: readonly Judge[],
-  directions: Float64Array,
+  holds: readonly (readonly number[])[],
+  directions: readonly Float64Array[],
   variables: number,
   residuals: Float64Array,
   jacobian: Float64Array,
 ): void {
-  const total = landscapes.length * judges.reduce((sum, { weight }) => sum + weight, 0)
+  const total = judges.reduce((sum, { weight }) => sum + weight, 0)
   let next = 0
-  for (const landscape of landscapes) {
+  for (let c = 0; c < landscapes.length; c++) {
+    const landscape = landscapes[c]
     const size = landscape.layerParameters
-    const points = pointGradients(landscape, judges)
-    for (const judge of judges) {
+    const held = judges.filter((_, d) => holds[d].includes(c))
+    const points = pointGradients(landscape, held)
+    for (const judge of held) {
       const { terms, parts, weight } = judge
-      const scale = Math.sqrt(weight / total)
+      const scale = Math.sqrt(weight / (total * holds[judges.indexOf(judge)].length))
       if (terms) {
         for (let i = 0; i < terms.energiesEv.length; i++) {
           const T = landscape.T[terms.first + i]
           const factor = scale * Math.sqrt(terms.share(i))
           residuals[next] = factor * terms.residual(i, T)
-          row(next++, factor * terms.slope(i, T), points.gradient, points.at(terms.first + i) * size, size)
+          row(next++, c, factor * terms.slope(i, T), points.gradient, points.at(terms.first + i) * size, size)
         }
       }
       const slopes = parts > 0 ? judge.fitParts(landscape, residuals.subarray(next, next + parts)) : []
       const factor = scale / Math.sqrt(parts)
       for (const slope of slopes) {
         residuals[next] *= factor
-        row(next++, factor, slope, 0, size)
+        row(next++, c, factor, slope, 0, size)
       }
     }
   }
 
-  function row(i: number, factor: number, gradient: Float64Array, first: number, size: number): void {
+  function row(i: number, c: number, factor: number, gradient: Float64Array, first: number, size: number): void {
     for (let v = 0; v < variables; v++) {
       let sum = 0
-      if (factor !== 0) for (let k = 0; k < size; k++) sum += gradient[first + k] * directions[v * size + k]
+      if (factor !== 0) for (let k = 0; k < size; k++) sum += gradient[first + k] * directions[c][v * size + k]
       jacobian[i * variables + v] = factor * sum
     }
   }

@@ -1,9 +1,8 @@
 import type { PassDemand } from '../job/index.js'
 import { extremeOver } from '../wave/index.js'
-import { type Judge, nothing, type PointTerms, type Verdict } from './Judge.js'
+import { type Judge, type JudgeLimit, nothing, type PointTerms, type Verdict } from './Judge.js'
 import type { Landscape } from './Landscape.js'
 import { meanSquare } from './meanSquare.js'
-import type { Limit } from './types.js'
 
 /** T at least t over a closed range: (t - T)/max(1 - t, 0.01) at its points and at the least T. */
 export class PassJudge implements Judge {
@@ -47,7 +46,7 @@ export class PassJudge implements Judge {
     return []
   }
 
-  limits(landscape: Landscape): Limit[] {
+  limits(landscape: Landscape): JudgeLimit[] {
     const { energyEv, T } = this.least(landscape)
     const { gradient } = landscape.gradient([energyEv])
     return [{ demand: this.id, part: 'least T', slack: T - this.demand.above, gradient }]

@@ -1,10 +1,11 @@
 import type { PeakDemand } from '../job/index.js'
 import type { Extremum } from '../wave/index.js'
 import { decibelSlope, excess, unitDb } from './decibels.js'
+import type { JudgeLimit } from './Judge.js'
 import type { Landscape } from './Landscape.js'
 import { LineJudge, offPlace, offWidth, placeSlope, scaled, widthSlope } from './LineJudge.js'
 import { peakSlopes } from './peakSlopes.js'
-import type { Limit, PeakFigures } from './types.js'
+import type { PeakFigures } from './types.js'
 
 /** A local maximum of T: its energy, and what is stated of its width, its height and the other maxima in the scan. */
 export class PeakJudge extends LineJudge<PeakFigures> {
@@ -66,7 +67,7 @@ export class PeakJudge extends LineJudge<PeakFigures> {
     return rows
   }
 
-  protected limitsOf(landscape: Landscape, peak: PeakFigures): Limit[] {
+  protected limitsOf(landscape: Landscape, peak: PeakFigures): JudgeLimit[] {
     const { energyEv, withinEv, fwhmEv, height, alone } = this.demand
     const slopes = peakSlopes(landscape, peak)
     const limits = [

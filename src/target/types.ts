@@ -33,6 +33,8 @@ export interface DemandResult {
   /** Of a peak, or the maximum that a band was measured from. */
   readonly peak: PeakFigures | null
   readonly band: BandFigures | null
+  /** Number of the condition that the figures are of: the worst of those at which the demand holds. */
+  readonly condition: number
 }
 
 export interface Evaluation {
@@ -42,12 +44,16 @@ export interface Evaluation {
   readonly demands: readonly DemandResult[]
   /** Of the first peak or band demand, else the highest maximum of the scan (of the window where that has none); null when there is none. */
   readonly peak: PeakFigures | null
+  /** Number of the condition at which that peak is. */
+  readonly peakCondition: number
 }
 
 /** A limit g >= 0 in natural units, with dg/d(layer parameter): [width, then the medium's own] a layer. */
 export interface Limit {
   readonly demand: string
   readonly part: string
+  /** Number of the condition at which it holds. */
+  readonly condition: number
   readonly slack: number
   readonly gradient: Float64Array
 }
@@ -65,11 +71,11 @@ export interface Target {
   evaluate(systems: readonly WaveSystem[]): Evaluation
   /**
    * The residuals that Levenberg-Marquardt minimises, scaled so that their sum of squares is the merit squared without its
-   * extremes. `jacobian[i * variables + v]`, from d(layer parameter)/d(variable) in `directions`.
+   * extremes. `jacobian[i * variables + v]`, from d(layer parameter)/d(variable) in `directions`, one a condition.
    */
   fit(
     systems: readonly WaveSystem[],
-    directions: Float64Array,
+    directions: readonly Float64Array[],
     variables: number,
     residuals: Float64Array,
     jacobian: Float64Array,

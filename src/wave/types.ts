@@ -53,10 +53,22 @@ export interface WaveStack {
   readonly width: Float64Array
 }
 
+/** Rows of a stack that hang on fewer layers: what is known by rows, told by layers. */
+export interface RowMap {
+  readonly layers: number
+  /**
+   * Adds the slopes of all rows of one energy up to those of the layers: `stride` numbers a row from entry `from` of `rows` on,
+   * [width, then the medium's own], as many a layer from entry `to` of `out` on.
+   */
+  toLayers(rows: Float64Array, from: number, stride: number, out: Float64Array, to: number): void
+}
+
 /** A stack with the media that its numbers mean. */
 export interface WaveSystem {
   readonly media: WaveMedia
   readonly stack: WaveStack
+  /** Absent: every row is a layer. */
+  readonly rowMap?: RowMap
 }
 
 export type Side = 'entry' | 'exit'

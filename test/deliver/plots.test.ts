@@ -228,7 +228,7 @@ function hostile(): [Job, Candidate] {
 }
 
 function passDemand(): Demand {
-  return { id: 'band', weight: 1, kind: 'pass', accept: null, pointsEv: evenly(0.075, 0.085, 64), above: 0.5 }
+  return { id: 'band', weight: 1, kind: 'pass', accept: null, at: null, pointsEv: evenly(0.075, 0.085, 64), above: 0.5 }
 }
 
 function curveDemand(): Demand {
@@ -236,7 +236,7 @@ function curveDemand(): Demand {
     ...({ energyEv, T: i % 7 === 0 ? 0 : 0.001, scale: 'decades', tolerance: 1, weight: 1 } as const),
     sense: (['equal', 'least', 'most'] as const)[i % 3],
   }))
-  return { id: 'goal', weight: 1, kind: 'curve', accept: null, mostRms: null, file: 'goal.csv', rows }
+  return { id: 'goal', weight: 1, kind: 'curve', accept: null, at: null, mostRms: null, file: 'goal.csv', rows }
 }
 
 function thirty(): Demand[] {
@@ -246,6 +246,7 @@ function thirty(): Demand[] {
       weight: 1,
       kind: 'block',
       accept: null,
+      at: null,
       pointsEv: evenly(from, from + 0.004, 64),
       below: 1e-3,
     },

@@ -26,9 +26,10 @@ export const demands: Demand[] = [
     height: 0.8,
     alone: null,
     accept: null,
+    at: null,
   },
-  { id: 'd2', weight: 1, kind: 'block', accept: null, pointsEv: evenly(0.005, 0.06, 64), below: 0.02 },
-  { id: 'd3', weight: 0.5, kind: 'block', accept: null, pointsEv: evenly(0.11, 0.2, 64), below: 0.02 },
+  { id: 'd2', weight: 1, kind: 'block', accept: null, at: null, pointsEv: evenly(0.005, 0.06, 64), below: 0.02 },
+  { id: 'd3', weight: 0.5, kind: 'block', accept: null, at: null, pointsEv: evenly(0.11, 0.2, 64), below: 0.02 },
 ]
 
 export function sampleJob(changes: Partial<Job> = {}): Job {
@@ -48,6 +49,7 @@ export function sampleJob(changes: Partial<Job> = {}): Job {
       mirror: false,
       massModel: 'two-band',
       strainedTo: null,
+      biasOver: null,
     },
     scanEv: [0.005, 0.2],
     resolutionEv: 1e-5,
@@ -132,6 +134,7 @@ export function sampleCandidate(changes: Partial<Candidate> = {}): Candidate {
           id: 'd2',
           kind: 'block',
           accept: null,
+          at: null,
           reached: 0.0006202906946,
           rms: 0,
           met: true,
@@ -142,6 +145,7 @@ export function sampleCandidate(changes: Partial<Candidate> = {}): Candidate {
           id: 'd3',
           kind: 'block',
           accept: null,
+          at: null,
           reached: 0.005054526586,
           rms: 0,
           met: true,

@@ -24,7 +24,7 @@ function predicted(system: WaveSystem, direction: Float64Array): number[] {
 function checkDirections(design: Design, assignment: Int32Array): void {
   const relaxed = design.relax(assignment)
   const at = relaxed.start.map((value, v) => 0.6 * value + 0.2 * relaxed.lower[v] + 0.2 * relaxed.upper[v])
-  const directions = relaxed.directions(at)
+  const [directions] = relaxed.directions(at)
   const [system] = relaxed.systems(at)
   const size = 4 * system.stack.width.length
   for (let v = 0; v < at.length; v++) {

@@ -39,6 +39,7 @@ describe('a job in order', () => {
       mirror: false,
       massModel: 'two-band',
       strainedTo: null,
+      biasOver: null,
     })
     expect(job.scanEv).toEqual([0.005, 0.2])
     expect(job.resolutionEv).toBe(1e-5)
@@ -47,6 +48,7 @@ describe('a job in order', () => {
       kind: 'peak',
       alone: null,
       accept: null,
+      at: null,
       id: 'd1',
       weight: 1,
       energyEv: 0.08,
@@ -162,6 +164,7 @@ describe('a job in order', () => {
       {
         kind: 'curve',
         accept: null,
+        at: null,
         mostRms: null,
         id: 'goal',
         weight: 2,

@@ -67,14 +67,9 @@ target:
   demands: [{ peak: 80 meV, within: 5 meV }]
 `
   const cases: Record<string, string> = {
-    conditions: `${text}conditions: { on: { temperature: 4 K } }\n`,
-    bias: `${text}bias: 10 mV\n`,
-    'bias over': `${text}bias over: [b, b]\n`,
-    'in-plane': `${text}in-plane: 10 meV\n`,
     angle: `${text}angle: 5 deg\n`,
     polarisation: `${text}polarisation: p\n`,
     'kind: light': text.replace('electron', 'light'),
-    at: text.replace('within:', 'at: on, within:'),
     quantity: text.replace('within:', 'quantity: R, within:'),
     table: `${text}media: { film: { table: film.csv } }\n`,
     index: text.replace('material: AlAs', 'index: 2.1'),

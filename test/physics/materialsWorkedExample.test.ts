@@ -12,6 +12,7 @@ const job = {
     exit: { kind: 'material', material: 'GaAs', x: null },
     massModel: 'two-band',
     strainedTo: null,
+    biasOver: null,
   },
   growth: { startsAt: 'exit' },
 } as unknown as Job

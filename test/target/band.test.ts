@@ -8,7 +8,7 @@ import { extrema, spectrumInto, type WaveSystem } from '../../src/wave/index.js'
 import { d1, layersOf, spec, systemsOf } from './coldCollector.js'
 
 const band: BandDemand = {
-  ...{ kind: 'band', id: 'b', weight: 1, accept: null },
+  ...{ kind: 'band', id: 'b', weight: 1, accept: null, at: null },
   ...{ energyEv: 0.08, withinEv: 0.002, fwhmEv: [0.006, 0.02], top: 0.9, ripple: 0.1 },
 }
 

@@ -15,6 +15,7 @@ export const situation: Situation = {
   entry: GaAs,
   exit: GaAs,
   inPlaneKPerNm: 0,
+  biasV: 0,
 }
 
 export const condition = { name: '', temperatureK: 77, biasV: 0, inPlaneEv: 0 }
@@ -23,6 +24,7 @@ export const d1 = {
   kind: 'peak',
   alone: null,
   accept: null,
+  at: null,
   id: 'd1',
   weight: 1,
   energyEv: 0.08,
@@ -56,7 +58,15 @@ export const growth: GrowthSpec = {
 }
 
 export function block(id: string, weight: number, from: number, to: number, below: number) {
-  return { kind: 'block', accept: null, id, weight, pointsEv: evenly(from, to, 64), below } as const satisfies Demand
+  return {
+    kind: 'block',
+    accept: null,
+    at: null,
+    id,
+    weight,
+    pointsEv: evenly(from, to, 64),
+    below,
+  } as const satisfies Demand
 }
 
 export function evenly(from: number, to: number, points: number): number[] {

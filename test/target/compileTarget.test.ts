@@ -58,6 +58,38 @@ describe('the merit', () => {
   })
 })
 
+describe('a demand at one of the conditions', () => {
+  const conditions = [condition, { ...condition, name: 'on' }]
+  const [good] = systemsOf(layersOf(0.35, [12, 18, 12]))
+  const [bad] = systemsOf(layersOf(0.25, [10, 20, 10]))
+  const at = (name: string | null) => compileTarget({ ...spec, conditions, demands: [{ ...d1, at: name }] })
+
+  test('is judged there and nowhere else', () => {
+    for (const [name, systems] of [
+      ['on', [bad, good]],
+      ['', [good, bad]],
+    ] as const) {
+      const { met, merit, peakCondition } = at(name).evaluate(systems)
+      expect([met, merit, peakCondition]).toEqual([true, 0, systems.indexOf(good)])
+      expect(at(name).meets(systems)).toEqual([true])
+      expect(at(null).evaluate(systems).met).toBe(false)
+      expect(at(null).meets(systems)).toEqual([false])
+    }
+  })
+
+  test('weighs as much as one at all of them, and has its limits there only', () => {
+    const one = at('on').evaluate([good, bad]).merit
+    expect(at(null).evaluate([good, bad]).merit).toBeCloseTo(one / Math.SQRT2, 12)
+    const target = at('on')
+    const limits = target.limits([good, bad], target.evaluate([good, bad]))
+    expect(limits).toHaveLength(5)
+    expect(limits.every((limit) => limit.condition === 1)).toBe(true)
+    expect(at(null).limits([good, bad], target.evaluate([good, bad]))).toHaveLength(10)
+    expect(at('on').fitSize).toBe(3)
+    expect(at(null).fitSize).toBe(6)
+  })
+})
+
 describe('a peak', () => {
   test('without any maximum has 10 in every part that it states', () => {
     const { rms, reached, met, peak } = only(d1, rising)
@@ -143,6 +175,7 @@ describe('a pass', () => {
   const pass = (from: number, to: number, above: number): Demand => ({
     kind: 'pass',
     accept: null,
+    at: null,
     id: 'p',
     weight: 1,
     pointsEv: evenly(from, to, 64),
@@ -175,6 +208,7 @@ function curve(rows: readonly Partial<CurveRow>[]): CurveDemand {
   return {
     kind: 'curve',
     accept: null,
+    at: null,
     mostRms: null,
     id: 'c',
     weight: 1,

@@ -38,7 +38,7 @@ describe('the extremes of a closed range', () => {
     resolutionEv: null,
     demands: [
       { ...block('b', 1, ...range, 1e-3), pointsEv: evenly(...range, 64) },
-      { kind: 'pass', accept: null, id: 'p', weight: 1, above: 0.9, pointsEv: evenly(...range, 64) },
+      { kind: 'pass', accept: null, at: null, id: 'p', weight: 1, above: 0.9, pointsEv: evenly(...range, 64) },
     ],
   })
 
@@ -57,7 +57,16 @@ describe('the extremes of a closed range', () => {
         const at = compileTarget({
           ...spec,
           demands: [
-            { kind: 'curve', accept: null, mostRms: null, id: 'c', weight: 1, file: '', rows: [row(extremeEv!)] },
+            {
+              kind: 'curve',
+              accept: null,
+              at: null,
+              mostRms: null,
+              id: 'c',
+              weight: 1,
+              file: '',
+              rows: [row(extremeEv!)],
+            },
           ],
         })
         expect(at.evaluate([system]).demands[0].reached! / reached!, `stack ${number}`).toBeCloseTo(1, 9)

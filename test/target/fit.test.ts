@@ -4,9 +4,17 @@ import { buildSystem, regionDerivative } from '../../src/model/index.js'
 import { compileTarget } from '../../src/target/index.js'
 import { block, condition, d1, evenly, layersOf, situation, spec } from './coldCollector.js'
 
-const pass: Demand = { kind: 'pass', accept: null, id: 'p', weight: 2, pointsEv: evenly(0.06, 0.08, 16), above: 0.7 }
+const pass: Demand = {
+  kind: 'pass',
+  accept: null,
+  at: null,
+  id: 'p',
+  weight: 2,
+  pointsEv: evenly(0.06, 0.08, 16),
+  above: 0.7,
+}
 const band: Demand = {
-  ...{ kind: 'band', accept: null, id: 'flat', weight: 1, energyEv: 0.08, withinEv: 0.001 },
+  ...{ kind: 'band', accept: null, at: null, id: 'flat', weight: 1, energyEv: 0.08, withinEv: 0.001 },
   ...{ fwhmEv: [0.01, 0.02], top: 0.95, ripple: 0.05 },
 }
 const rows = evenly(0.01, 0.19, 12).map((energyEv, i) => ({
@@ -17,7 +25,16 @@ const rows = evenly(0.01, 0.19, 12).map((energyEv, i) => ({
   tolerance: 0.5,
   weight: 1 + (i % 4),
 }))
-const curve: CurveDemand = { kind: 'curve', accept: null, mostRms: null, id: 'c', weight: 0.3, file: 'goal.csv', rows }
+const curve: CurveDemand = {
+  kind: 'curve',
+  accept: null,
+  at: null,
+  mostRms: null,
+  id: 'c',
+  weight: 0.3,
+  file: 'goal.csv',
+  rows,
+}
 
 /** Variables: the three widths (nm), and x of both barriers. */
 function stackAt([a, b, c, x]: readonly number[]) {
@@ -41,7 +58,13 @@ function fitAt(demands: readonly Demand[], variables: readonly number[], conditi
   const residuals = new Float64Array(target.fitSize).fill(Number.NaN)
   const jacobian = new Float64Array(4 * target.fitSize).fill(Number.NaN)
   const systems = conditions.map(() => stackAt(variables).system)
-  target.fit(systems, directionsAt(variables), 4, residuals, jacobian)
+  target.fit(
+    systems,
+    conditions.map(() => directionsAt(variables)),
+    4,
+    residuals,
+    jacobian,
+  )
   return { target, residuals, jacobian, systems }
 }
 

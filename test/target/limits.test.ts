@@ -46,7 +46,15 @@ function worst(demands: readonly Demand[], parameters: readonly number[], step: 
 }
 
 describe('the gradients of limits', () => {
-  const pass: Demand = { kind: 'pass', accept: null, id: 'p', weight: 1, pointsEv: evenly(0.06, 0.12, 64), above: 1e-3 }
+  const pass: Demand = {
+    kind: 'pass',
+    accept: null,
+    at: null,
+    id: 'p',
+    weight: 1,
+    pointsEv: evenly(0.06, 0.12, 64),
+    above: 1e-3,
+  }
 
   test('are those of the slacks of peaks, passes and blocks', () => {
     const demands = [d1, { ...d1, id: 'wide', fwhmEv: null }, pass, d2, d3]
@@ -56,7 +64,7 @@ describe('the gradients of limits', () => {
 
   test('hold for a band whose top has its greatest T inside and its least at an end, and for a peak that must stand alone', () => {
     const band: Demand = {
-      ...{ kind: 'band', id: 'band', weight: 1, accept: null, energyEv: 0.09, withinEv: 0.03 },
+      ...{ kind: 'band', id: 'band', weight: 1, accept: null, at: null, energyEv: 0.09, withinEv: 0.03 },
       ...{ fwhmEv: [0.001, 0.02], top: 0.5, ripple: 0.3 },
     }
     const alone: Demand = { ...d1, fwhmEv: null, height: null, energyEv: 0.09, withinEv: 0.08, alone: 0.1 }

@@ -3,7 +3,16 @@ import type { Demand } from '../../src/job/index.js'
 import { compareScores, type Score } from '../../src/target/index.js'
 import { d1, d2 } from './coldCollector.js'
 
-const curve: Demand = { kind: 'curve', accept: null, mostRms: null, id: 'c', weight: 1, file: 'goal.csv', rows: [] }
+const curve: Demand = {
+  kind: 'curve',
+  accept: null,
+  at: null,
+  mostRms: null,
+  id: 'c',
+  weight: 1,
+  file: 'goal.csv',
+  rows: [],
+}
 const score = (given: Partial<Score>): Score => ({
   met: true,
   merit: 0,
