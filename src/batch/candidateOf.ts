@@ -7,6 +7,7 @@ import type { BoundJob } from './problem.js'
 import { profileOf } from './profileOf.js'
 import type { Listed } from './ranking.js'
 import { reportEnergies } from './reportEnergies.js'
+import { sliceNotes } from './sliceNotes.js'
 import { spectrumOf } from './spectrumOf.js'
 import { stackNotes } from './stackNotes.js'
 
@@ -59,7 +60,7 @@ export function candidateOf(job: Job, { design, target }: BoundJob, listed: List
     spectra: spectra.map(({ fluxError: _, ...spectrum }) => spectrum),
     resonances: poles.poles,
     profile: profileOf(system, situation, layers, peak?.energyEv ?? null),
-    notes: stackNotes(job, layers, poles),
+    notes: [...stackNotes(job, layers, poles), ...sliceNotes(job, { design, target }, layers, evaluation)],
   }
 }
 

@@ -23,6 +23,7 @@ export function demandRows(job: Job, { evaluation }: Candidate): DemandRow[] {
   return job.demands.flatMap((demand) => {
     const result = evaluation.demands.find(({ id }) => id === demand.id)
     const [first, ...others] = partsOf(demand, result)
+    if (demand.at !== null) others.push({ wanted: `at ${demand.at}`, reached: '' })
     const state = result === undefined ? '' : result.met === null ? 'goal' : result.met ? 'met' : 'missed'
     return [
       { id: demand.id, ...first, state } as const,

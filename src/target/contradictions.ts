@@ -16,11 +16,21 @@ export function contradictions({ demands, resolutionEv }: Pick<Job, 'demands' | 
   const passes = demands.filter((demand): demand is PassDemand => demand.kind === 'pass')
   const blocks = demands.filter((demand): demand is BlockDemand => demand.kind === 'block')
   return [
-    ...passes.flatMap((pass) => blocks.flatMap((block) => passInBlock(pass, block))),
-    ...peaks.flatMap((peak) => passes.flatMap((pass) => lineInPass(peak, pass))),
-    ...peaks.flatMap((peak) => lineAndBlocks(peak, blocks, resolutionEv ?? 0)),
-    ...peaks.flatMap((peak, i) => peaks.slice(i + 1).flatMap((other) => crowdedLines(peak, other))),
+    ...passes.flatMap((pass) => blocks.filter(together(pass)).flatMap((block) => passInBlock(pass, block))),
+    ...peaks.flatMap((peak) => passes.filter(together(peak)).flatMap((pass) => lineInPass(peak, pass))),
+    ...peaks.flatMap((peak) => lineAndBlocks(peak, blocks.filter(together(peak)), resolutionEv ?? 0)),
+    ...peaks.flatMap((peak, i) =>
+      peaks
+        .slice(i + 1)
+        .filter(together(peak))
+        .flatMap((other) => crowdedLines(peak, other)),
+    ),
   ]
+}
+
+/** There is a condition at which both hold. */
+function together(one: Demand): (other: Demand) => boolean {
+  return (other) => one.at === null || other.at === null || one.at === other.at
 }
 
 /** Ranges are closed: a common end is a common energy. */

@@ -7,6 +7,7 @@ function of(...demands: string[]) {
   const text = `format: 1
 name: any
 kind: electron
+conditions: { rest: { bias: 0 mV }, on: { bias: 9 mV } }
 stack: { entry: GaAs, layers: [{ material: AlAs, width: 3 ML }], exit: GaAs }
 target:
   scan: 5..200 meV
@@ -32,6 +33,13 @@ describe('demands that contradict one another', () => {
     )
     expect(of('{ pass: 70..90 meV, above: 0.5 }', '{ block: 90..200 meV, below: 0.5 }')).toEqual([])
     expect(of('{ pass: 70..90 meV, above: 0.5 }', '{ block: 91..200 meV, below: 0.4 }')).toEqual([])
+  })
+
+  it('are none where they hold at different conditions', () => {
+    const both = ['{ pass: 70..90 meV, above: 0.5, at: on }', '{ block: 80..200 meV, below: 0.4, at: rest }']
+    expect(of(...both)).toEqual([])
+    expect(of(both[0], both[1].replace('rest', 'on'))).toHaveLength(1)
+    expect(of(both[0], both[1].replace(', at: rest', ''))).toHaveLength(1)
   })
 
   it('are a peak and a block over all of its window, unless the line may be too narrow to count', () => {
