@@ -4,8 +4,6 @@ import type { ComplexSweep, Continuation } from './complexSweep.js'
 export class Zeros {
   readonly re: number[] = []
   readonly im: number[] = []
-  /** How many evaluations of F and F' it took. */
-  evaluations = 0
 
   /** A start is given up outside [lowest - margin, highest + margin] x [-3, 2] depth. */
   constructor(
@@ -64,7 +62,6 @@ export class Zeros {
 
   private step(sweep: ComplexSweep, branch: Continuation, x: number, y: number): boolean {
     sweep.evaluate(x, y, branch)
-    this.evaluations++
     const [fr, fi, dr, di] = sweep.out
     const ff = fr * fr + fi * fi
     if (ff === 0) {
