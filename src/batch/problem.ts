@@ -25,15 +25,17 @@ export function problemOf(job: Job): BoundJob {
   const limitsAndGoals = curves > 0 && !onlyCurves
   const problem: SearchProblem = {
     places: design.places,
+    stackCount: () => design.stackCount(),
+    points: target.points,
     feasible: (assignment) => design.feasible(assignment),
     repair: (assignment) => design.repair(assignment),
     canonical: (assignment) => design.canonical(assignment),
-    bound: (assignment) => target.pointMerit(design.systems(assignment)),
+    bound: (assignment) => target.bound(design.systems(assignment)),
     // The points of a peak are its maxima, which no bound knows.
     boundGuides: job.demands.every(({ kind }) => kind !== 'peak'),
     // Beside a goal, a stack that meets the limits comes before one that does not, whatever the merits. Merits that are equal at
     // 9 digits lie up to 1e-8 apart; limits are met up to 1e-9.
-    outOfReach: (bound, score) => (score.met || !limitsAndGoals) && bound > score.merit * (1 + 1e-8) + 1e-9,
+    reach: ({ met, merit }) => (met || !limitsAndGoals ? merit * (1 + 1e-8) + 1e-9 : Number.POSITIVE_INFINITY),
     score: (assignment) => {
       const systems = design.systems(assignment)
       const { met, merit } = target.verdict(systems)

@@ -56,7 +56,7 @@ export class Examiner {
 
   /** The score of a stack that comes before `than`; null when it does not. Only stacks within reach pay for the whole score. */
   better(assignment: Int32Array, than: Score): Score | null {
-    if (this.problem.outOfReach(this.bound(assignment), than)) return null
+    if (this.bound(assignment) > this.problem.reach(than)) return null
     const score = this.score(assignment)
     return this.problem.compare(score, than) < 0 ? score : null
   }

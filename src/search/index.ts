@@ -1,4 +1,5 @@
 export { Archive } from './Archive.js'
+export * from './complete/index.js'
 export { jacobianDigits } from './jacobianDigits.js'
 export { runUnit } from './runUnit.js'
 export type * from './types.js'

@@ -94,7 +94,7 @@ const farthestKick = 6
 function settled(examiner: Examiner, changed: Int32Array, here: Reached): Reached {
   const { problem } = examiner
   const start = refined(examiner, problem.repair(changed), refitEvaluations)
-  if (problem.outOfReach(examiner.bound(start.stack) / near, here.score)) return here
+  if (examiner.bound(start.stack) / near > problem.reach(here.score)) return here
   const reached = descend(examiner, start)
   return problem.compare(reached.score, here.score) < 0 ? reached : here
 }

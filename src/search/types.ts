@@ -11,6 +11,10 @@ export interface SearchPlace {
 /** Places with numbered choices, and an evaluator: all that a search may know. An assignment has one choice a place. */
 export interface SearchProblem {
   readonly places: readonly SearchPlace[]
+  /** How many different stacks there are. */
+  stackCount(): number
+  /** Numbers that a bound reads of a stack. */
+  readonly points: number
   feasible(assignment: Int32Array): boolean
   /** The assignment itself when it is feasible, else a feasible one near it. */
   repair(assignment: Int32Array): Int32Array
@@ -20,8 +24,8 @@ export interface SearchProblem {
   bound(assignment: Int32Array): number
   /** Whether the bound tells good starts from bad ones; where it leaves out what matters most, the merit must. */
   readonly boundGuides: boolean
-  /** Whether a stack of this bound can't come before one of this score. */
-  outOfReach(bound: number, score: Score): boolean
+  /** The largest bound that a stack which comes before one of this score, or level with it, may have; Infinity: any. */
+  reach(score: Score): number
   score(assignment: Int32Array): Score
   /** Negative when a comes first. */
   compare(a: Score, b: Score): number

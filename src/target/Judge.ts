@@ -38,7 +38,12 @@ export interface PointTerms {
   residual(i: number, T: number): number
   /** d(residual)/dT. */
   slope(i: number, T: number): number
+  /** The least residual that the extreme over the range can have, by this point; 0 where there is no extreme or the point says nothing. */
+  extreme(i: number, T: number): number
 }
+
+/** Relative error up to which an extreme of T is known (design 3): a point may lie so far beyond the one that was found. */
+export const extremeError = 1e-9
 
 /** The largest residual that counts as met (design 3). */
 export const nothing = 1e-9

@@ -1,7 +1,7 @@
 import type { BlockDemand } from '../job/index.js'
 import { type Extremum, extremeOver, log10 } from '../wave/index.js'
 import { decibelSlope, excess, unitDb } from './decibels.js'
-import { type Judge, type JudgeLimit, nothing, type PointTerms, type Verdict } from './Judge.js'
+import { extremeError, type Judge, type JudgeLimit, nothing, type PointTerms, type Verdict } from './Judge.js'
 import type { Landscape } from './Landscape.js'
 import { meanSquare } from './meanSquare.js'
 import { peakSlopes } from './peakSlopes.js'
@@ -33,6 +33,9 @@ export class BlockJudge implements Judge {
       share: () => 1 / pointsEv.length,
       residual: (_, T) => excess(T, below),
       slope: (_, T) => (T > below ? decibelSlope(T) / unitDb : 0),
+      // A maximum that the detector does not resolve may count less than the points on it; the ends count as they are.
+      extreme: (i, T) =>
+        resolutionEv === null || i === 0 || i === pointsEv.length - 1 ? excess(T * (1 - extremeError), below) : 0,
     }
   }
 

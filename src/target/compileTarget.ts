@@ -4,9 +4,9 @@ import { BandJudge } from './band.js'
 import { BlockJudge } from './block.js'
 import { CurveJudge } from './curve.js'
 import { fitInto } from './fitInto.js'
-import type { Judge, Verdict } from './Judge.js'
+import type { Judge, PointTerms, Verdict } from './Judge.js'
 import { Landscape } from './Landscape.js'
-import { meanSquare } from './meanSquare.js'
+import { leastExtremeSquare, meanSquare } from './meanSquare.js'
 import { merit } from './merit.js'
 import { PointSpectrum } from './PointSpectrum.js'
 import { PassJudge } from './pass.js'
@@ -27,6 +27,7 @@ export function compileTarget(job: TargetSpec): Target {
 
 class CompiledTarget implements Target {
   readonly fitSize: number
+  readonly points: number
   private readonly judges: readonly Judge[]
   private readonly weights: readonly number[]
   /** Numbers of the conditions at which each demand holds. */
@@ -61,16 +62,29 @@ class CompiledTarget implements Target {
     const rows = this.judges.map(
       ({ terms, parts }, d) => this.holds[d].length * (parts + (terms?.energiesEv.length ?? 0)),
     )
+    const pointsOf = ({ terms }: Judge, d: number) => this.holds[d].length * (terms?.energiesEv.length ?? 0)
+    this.points = this.judges.map(pointsOf).reduce((sum, size) => sum + size, 0)
     this.fitSize = rows.reduce((sum, size) => sum + size, 0)
   }
 
+  bound(systems: readonly WaveSystem[]): number {
+    return this.meritOfPoints(systems, (terms, T) => meanSquare(terms, T) + leastExtremeSquare(terms, T))
+  }
+
   pointMerit(systems: readonly WaveSystem[]): number {
+    return this.meritOfPoints(systems, meanSquare)
+  }
+
+  private meritOfPoints(
+    systems: readonly WaveSystem[],
+    square: (terms: PointTerms, T: Float64Array) => number,
+  ): number {
     const squares = new Float64Array(this.judges.length)
     for (let c = 0; c < systems.length; c++) {
       const T = this.spectrum.at(systems[c])
       for (let d = 0; d < squares.length; d++) {
         const { terms } = this.judges[d]
-        if (terms && this.holds[d].includes(c)) squares[d] += meanSquare(terms, T) / this.holds[d].length
+        if (terms && this.holds[d].includes(c)) squares[d] += square(terms, T) / this.holds[d].length
       }
     }
     return merit(squares, this.weights)

@@ -30,6 +30,7 @@ export class CurveJudge implements Judge {
       share: (i) => rows[i].weight / total,
       residual: (i, T) => violation(rows[i], goals[i], T),
       slope: (i, T) => violationSlope(rows[i], goals[i], T),
+      extreme: () => 0,
     }
   }
 

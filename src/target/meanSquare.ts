@@ -9,3 +9,10 @@ export function meanSquare({ energiesEv, first, share, residual }: PointTerms, T
   }
   return sum
 }
+
+/** The least square that the extreme of a demand adds, by its points: it is at least as bad as the worst of them. */
+export function leastExtremeSquare({ energiesEv, first, extreme }: PointTerms, T: Float64Array): number {
+  let worst = 0
+  for (let i = 0; i < energiesEv.length; i++) worst = Math.max(worst, extreme(i, T[first + i]))
+  return worst * worst
+}

@@ -1,6 +1,6 @@
 import type { PassDemand } from '../job/index.js'
 import { extremeOver } from '../wave/index.js'
-import { type Judge, type JudgeLimit, nothing, type PointTerms, type Verdict } from './Judge.js'
+import { extremeError, type Judge, type JudgeLimit, nothing, type PointTerms, type Verdict } from './Judge.js'
 import type { Landscape } from './Landscape.js'
 import { meanSquare } from './meanSquare.js'
 
@@ -27,6 +27,7 @@ export class PassJudge implements Judge {
       share: () => 1 / pointsEv.length,
       residual: (_, T) => this.lack(T),
       slope: (_, T) => (T < above ? -1 / Math.max(1 - above, 0.01) : 0),
+      extreme: (_, T) => this.lack(T * (1 + extremeError)),
     }
   }
 

@@ -62,7 +62,11 @@ export interface Limit {
 export interface Target {
   /** Residuals of the fit: point terms and the parts of peaks. */
   readonly fitSize: number
-  /** A lower bound of the merit from the point terms alone. */
+  /** Point terms of a stack, over all conditions. */
+  readonly points: number
+  /** A lower bound of the merit from T at the points: their terms, and extremes that are at least as bad as the worst of them. */
+  bound(systems: readonly WaveSystem[]): number
+  /** The merit of the point terms alone. */
   pointMerit(systems: readonly WaveSystem[]): number
   /** Merit and met of `evaluate` without the figures: all that a search compares. Cheap for curves alone, which need no maxima. */
   verdict(systems: readonly WaveSystem[]): { readonly merit: number; readonly met: boolean }

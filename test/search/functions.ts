@@ -121,12 +121,14 @@ export function planted(best: readonly number[], choices: number, list: number, 
   ]
   return {
     places,
+    stackCount: () => places.reduce((product, place) => product * place.choices, 1),
+    points: 2 * n + 1,
     feasible: (stack) => places.every((place, i) => stack[i] >= 0 && stack[i] < place.choices),
     repair: (stack) => stack,
     canonical: (stack) => stack,
     bound: merit,
     boundGuides: true,
-    outOfReach: (bound, score) => bound > score.merit,
+    reach: ({ merit }) => merit,
     score: (stack) => scoreOf(merit(stack), stack.join()),
     compare: byMerit,
     relax: (stack) => ({

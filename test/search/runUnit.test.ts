@@ -40,7 +40,7 @@ describe('runUnit', () => {
 
   it('stops at its budget where there is always something better', () => {
     // Without a bound to cut by, every look costs a whole score.
-    const blind = { ...problem, bound: () => 0, boundGuides: false, outOfReach: () => false }
+    const blind = { ...problem, bound: () => 0, boundGuides: false, reach: () => Number.POSITIVE_INFINITY }
     const { stop, examined } = runUnit(blind, 0, 'seed')
     expect(stop).toBe('budget of evaluations')
     expect(examined).toBeLessThan(2000)

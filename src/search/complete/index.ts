@@ -1,0 +1,6 @@
+export { mostKept } from './BestStacks.js'
+export { firstRound, startBoundOf } from './firstRound.js'
+export { planComplete } from './planComplete.js'
+export { runSlice } from './runSlice.js'
+export { TooManyMet } from './TooManyMet.js'
+export type * from './types.js'
