@@ -1,5 +1,6 @@
 import { ComplexSweep } from './complexSweep.js'
-import { extrema, needleEv } from './extrema.js'
+import { extrema } from './extrema.js'
+import { needleEv } from './extremaStretch.js'
 import { logSlope } from './logSlope.js'
 import { openAt, transmissionAt } from './transmissionAt.js'
 import type { Extremum, WaveSystem } from './types.js'
