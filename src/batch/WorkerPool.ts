@@ -1,10 +1,8 @@
 import { existsSync } from 'node:fs'
 import { fileURLToPath } from 'node:url'
 import { Piscina } from 'piscina'
-import type { Yield } from '../growth/index.js'
 import type { Job } from '../job/index.js'
-import type { UnitResult } from '../search/index.js'
-import type { Done, Task } from './BoundWork.js'
+import type { Done, Task, TaskResult } from './BoundWork.js'
 
 /** Threads that work on one job. */
 export class WorkerPool {
@@ -30,7 +28,7 @@ export class WorkerPool {
    *
    * @throws what a task throws, or the reason of the signal
    */
-  async each<T extends UnitResult | Yield>(
+  async each<T extends TaskResult>(
     tasks: Iterable<Task>,
     done: (result: T, seconds: number, task: Task) => void,
     stop: () => boolean = () => false,

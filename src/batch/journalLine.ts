@@ -1,6 +1,6 @@
 import { crc32 } from 'node:zlib'
 import type { Yield } from '../growth/index.js'
-import type { UnitResult } from '../search/index.js'
+import type { Found, SliceResult, UnitResult } from '../search/index.js'
 
 /** What a journal must agree on before it goes on. */
 export interface JournalHead {
@@ -23,6 +23,9 @@ export interface GrownStack {
 export type JournalEntry =
   | { readonly head: JournalHead }
   | { readonly unit: UnitResult; readonly seconds: number }
+  /** Of a complete search: what its first round found, and what a slice leaves. */
+  | { readonly round: readonly Found[]; readonly seconds: number }
+  | { readonly slice: SliceResult; readonly seconds: number }
   | { readonly grown: GrownStack; readonly seconds: number }
 
 /** `{"crc":"xxxxxxxx","entry":...}`, the CRC-32 (of zip and PNG) that of the bytes of the entry. */

@@ -2,20 +2,20 @@ import { performance } from 'node:perf_hooks'
 import { type Candidate, type JobResult, type RunRecord, writeResults } from '../deliver/index.js'
 import type { Yield } from '../growth/index.js'
 import type { Job } from '../job/index.js'
-import { Archive, type Found, type UnitResult } from '../search/index.js'
+import { Archive, type Found, type SliceResult, startBoundOf, type UnitResult } from '../search/index.js'
 import { kernelChecksum, kernelName } from '../wave/index.js'
 import { worstFluxError, worstPathError } from './audit.js'
 import { candidateOf } from './candidateOf.js'
 import { engineVersion } from './engine.js'
 import { jobHash, resumeHash, yieldHash } from './hashes.js'
 import { Journal } from './Journal.js'
+import { type Method, methodOf } from './methodOf.js'
 import { OrderedFold } from './OrderedFold.js'
 import { type BoundJob, problemOf } from './problem.js'
 import { Pace, type Progress } from './progress.js'
 import { familyHeads, grownFirst, listOf, mostListed, type Ranked, trialsOf } from './ranking.js'
 import { resultsFolder } from './resultsFolder.js'
 import { takeLock } from './runLock.js'
-import { sampledUnits } from './units.js'
 import { WorkerPool } from './WorkerPool.js'
 
 export interface RunOptions {
@@ -61,7 +61,11 @@ class Run {
   private readonly fold: OrderedFold
   private readonly yields = new Map<string, Yield>()
   private readonly journal: Journal
+  private readonly method: Method
   private readonly total: number
+  /** Of a complete search: its first round, and what cut how many assignments. */
+  private round: readonly Found[] | null = null
+  private readonly cuts = new Map<number, SliceResult['cut']>()
   private readonly yieldOf: string
   private pool: WorkerPool | null = null
   /** Of all work in the journal, over all threads and sittings. */
@@ -73,7 +77,8 @@ class Run {
     private readonly folder: string,
     private readonly options: RunOptions,
   ) {
-    this.total = sampledUnits[job.search.effort]
+    this.method = methodOf(job.search, bound.problem)
+    this.total = this.method.units
     this.archive = new Archive(bound.problem.compare, this.total)
     this.fold = new OrderedFold((result) => this.archive.add(result))
     this.yieldOf = yieldHash(job)
@@ -86,7 +91,9 @@ class Run {
       resume_hash: resumeHash(job),
     } as const
     this.journal = Journal.open(folder, head, options.fresh ?? false, (entry) => {
-      if ('unit' in entry) this.fold.offer(entry.unit)
+      if ('unit' in entry && !this.method.plan) this.fold.offer(entry.unit)
+      else if ('round' in entry) this.round = entry.round
+      else if ('slice' in entry && this.method.plan) this.fold.offer(this.asUnit(entry.slice))
       else if ('grown' in entry && entry.grown.of === this.yieldOf) this.keepYield(entry.grown.id, entry.grown.yield)
       if ('seconds' in entry) this.workSeconds += entry.seconds
     })
@@ -106,17 +113,44 @@ class Run {
   private async search(): Promise<void> {
     const pace = new Pace(this.fold.count, this.total)
     this.tell('search', pace)
-    const missing = this.fold.missing(this.total)
     if (this.fold.count === this.total) return
-    const tasks = tasksOf(missing)
-    const keep = (unit: UnitResult, seconds: number) => {
-      this.journal.append({ unit, seconds })
+    const { signal } = this.options
+    if (this.method.plan && this.round === null) {
+      await this.workers().each<readonly Found[]>(
+        [{ round: true }],
+        (round, seconds) => {
+          this.journal.append({ round, seconds })
+          this.workSeconds += seconds
+          this.round = round
+        },
+        undefined,
+        signal,
+      )
+    }
+    const missing = this.fold.missing(this.total)
+    const keep = (entry: { unit: UnitResult } | { slice: SliceResult }, seconds: number) => {
+      this.journal.append({ ...entry, seconds })
       this.workSeconds += seconds
-      this.fold.offer(unit)
+      this.fold.offer('unit' in entry ? entry.unit : this.asUnit(entry.slice))
       pace.finish()
       this.tell('search', pace)
     }
-    await this.workers().each(tasks, keep, this.deadline(), this.options.signal)
+    const stop = this.deadline()
+    if (this.method.plan) {
+      const startBound = startBoundOf(this.round ?? [])
+      const tasks = tasksOf(missing, (slice) => ({ slice, startBound }))
+      await this.workers().each<SliceResult>(tasks, (slice, seconds) => keep({ slice }, seconds), stop, signal)
+    } else {
+      const tasks = tasksOf(missing, (unit) => ({ unit }))
+      await this.workers().each<UnitResult>(tasks, (unit, seconds) => keep({ unit }, seconds), stop, signal)
+    }
+  }
+
+  /** A slice as the archive takes it; what cut how many is counted apart. */
+  private asUnit({ slice, found, examined, cut }: SliceResult): UnitResult {
+    const total = Object.values(cut).reduce((sum, count) => sum + count, 0)
+    this.cuts.set(slice, cut)
+    return { unit: slice, found, examined, cut: total, stop: 'every stack accounted for' }
   }
 
   /** Yields of the first stacks of the order and of the heads of other families, from the journal or grown now. */
@@ -183,7 +217,7 @@ class Run {
   }
 
   private record(): RunRecord {
-    const { job, bound, archive } = this
+    const { job, bound, archive, method } = this
     const stacks = bound.design.stackCount()
     return {
       engine: engineVersion,
@@ -191,18 +225,42 @@ class Run {
       job_hash: jobHash(job),
       resume_hash: resumeHash(job),
       seed: job.search.seed,
-      method: 'sampled',
+      method: method.plan ? 'complete' : 'sampled',
       units: archive.units,
-      starts_in_best: archive.startsInBest,
+      starts_in_best: method.plan ? 0 : archive.startsInBest,
       stacks,
       examined: archive.examined,
-      cut: { 'point terms': archive.cut },
-      statement:
-        `sampled: ${archive.units} independent starts among ${stacks} stacks; ${archive.startsInBest} of them ended in the best stack. ` +
-        'A stack that several starts looked at counts for each. Nothing is claimed of stacks that no start came to.',
+      cut: method.plan ? this.cutByName() : { 'point terms': archive.cut },
+      statement: this.statement(stacks),
       stopped_early: archive.units < this.total,
       seconds: Number(this.workSeconds.toFixed(3)),
     }
+  }
+
+  private statement(stacks: number): string {
+    const { archive, method, total } = this
+    if (method.plan === null) {
+      return (
+        `sampled: ${archive.units} independent starts among ${stacks} stacks; ${archive.startsInBest} of them ended in the best stack. ` +
+        'A stack that several starts looked at counts for each. Nothing is claimed of stacks that no start came to.'
+      )
+    }
+    if (archive.units < total) {
+      return `complete search stopped early: ${archive.units} of ${total} slices of ${stacks} stacks are done. Nothing is claimed of the others.`
+    }
+    return (
+      `complete: each of the ${stacks} stacks was looked at or cut by a lower bound of its merit (${method.plan.statement}). ` +
+      'No other makeable stack comes before the first 256 of the order.'
+    )
+  }
+
+  /** Over the slices that are folded in. */
+  private cutByName(): Record<string, number> {
+    const sums: Record<string, number> = {}
+    for (let slice = 0; slice < this.archive.units; slice++) {
+      for (const [name, count] of Object.entries(this.cuts.get(slice) ?? {})) sums[name] = (sums[name] ?? 0) + count
+    }
+    return sums
   }
 
   /** Whether there is anything that growth can miss: a curve is a goal, not a limit. */
@@ -264,6 +322,6 @@ class Run {
   }
 }
 
-function* tasksOf(units: Iterable<number>) {
-  for (const unit of units) yield { unit }
+function* tasksOf<T>(numbers: Iterable<number>, taskOf: (number: number) => T): Iterable<T> {
+  for (const number of numbers) yield taskOf(number)
 }

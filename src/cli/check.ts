@@ -1,8 +1,9 @@
 import { availableParallelism } from 'node:os'
 import { performance } from 'node:perf_hooks'
-import { type FirstLook, firstLook, problemOf, sampledUnits } from '../batch/index.js'
+import { type FirstLook, firstLook, methodOf, problemOf } from '../batch/index.js'
 import type { Design } from '../design/index.js'
 import type { Job } from '../job/index.js'
+import { type CompletePlan, runSlice, type SearchProblem } from '../search/index.js'
 import { contradictions } from '../target/index.js'
 import { colours, print, sayError } from './console.js'
 import { countText } from './countText.js'
@@ -33,8 +34,8 @@ export async function check(args: readonly string[], { gradients }: CheckArgumen
 
 function explanation(job: Job, gradients: boolean): string {
   const bound = problemOf(job)
-  const { design } = bound
-  const units = sampledUnits[job.search.effort]
+  const { design, problem } = bound
+  const { plan, units } = methodOf(job.search, problem)
   const start = performance.now()
   const look = firstLook(job, bound)
   const unitSeconds = (performance.now() - start) / 1000
@@ -48,11 +49,18 @@ function explanation(job: Job, gradients: boolean): string {
     ...variableRows(design),
     ['stacks', `${countText(design.stackCount())} different ones on the lattice`],
     ['monolayers', monolayers(design)],
-    ['method', `sampled, effort ${job.search.effort}: ${units} units, seed ${job.search.seed}`],
+    [
+      'method',
+      plan
+        ? `complete, ${units} slices: ${plan.statement}`
+        : `sampled, effort ${job.search.effort}: ${units} units, seed ${job.search.seed}`,
+    ],
     ['points', `${points} energies a stack, beside its extremes`],
     [
       'time',
-      `about ${duration((unitSeconds * units) / threads)} for the search with ${threads} threads (a unit took ${short(unitSeconds)} s here), then the yields`,
+      plan
+        ? `at most about ${duration(secondsOf(problem, plan) / threads)} for the search with ${threads} threads, then the yields`
+        : `about ${duration((unitSeconds * units) / threads)} for the search with ${threads} threads (a unit took ${short(unitSeconds)} s here), then the yields`,
     ],
     ['first look', `${look.stack}: ${look.meets ? 'meets all limits' : `merit ${short(look.merit)}`}`],
     ...(gradients ? gradientRows(bound, job.scanEv) : []),
@@ -80,6 +88,14 @@ function tooSensitive({ demands }: Job, { mostSensitive, stack }: FirstLook): st
     `One monolayer (or step) more of layer ${mostSensitive.layer} moves the peak by ${short(mostSensitive.shiftEv * 1000)} meV, but ` +
       `${peak.id} allows ${short(peak.withinEv * 1000)} meV (stack ${stack}). A wider window, or wider wells, would be grown more surely.`,
   ]
+}
+
+/** A complete search by the time of a short slice, whose bound is looser than that of a real one. */
+function secondsOf(problem: SearchProblem, plan: CompletePlan): number {
+  const slices = Math.ceil(plan.assignments / 256)
+  const start = performance.now()
+  runSlice(problem, { ...plan, slices }, slices >> 1, null)
+  return ((performance.now() - start) / 1000) * slices
 }
 
 function variableRows({ places }: Design): [string, string][] {

@@ -203,7 +203,7 @@ export interface Spread {
 }
 
 export interface SearchSpec {
-  readonly method: 'auto' | 'sampled'
+  readonly method: 'auto' | 'complete' | 'sampled'
   readonly effort: 'brief' | 'standard' | 'overnight'
   readonly seed: number
 }

@@ -93,7 +93,7 @@ export function assembleJob(text: string, file: string, tables: Tables): Job {
     demands: target.demands,
     growth,
     search: {
-      method: written.search?.method === 'sampled' ? 'sampled' : 'auto',
+      method: written.search?.method ?? 'auto',
       effort: written.search?.effort ?? 'standard',
       seed: seed!,
     },

@@ -41,7 +41,7 @@ type Map = Record<string, unknown>
 
 export function refuse(job: unknown, problems: Problems): void {
   visit(job, 'job', [])
-  const { conditions, media, stack, target, growth, search } = (job ?? {}) as Record<string, Map | undefined>
+  const { conditions, media, stack, target, growth } = (job ?? {}) as Record<string, Map | undefined>
   for (const name of Object.keys(conditions ?? {})) visit(conditions?.[name], 'job', ['conditions', name])
   for (const name of Object.keys(media ?? {})) visit(media?.[name], 'medium', ['media', name])
   visit(stack, 'stack', ['stack'])
@@ -52,9 +52,6 @@ export function refuse(job: unknown, problems: Problems): void {
   })
   visit(growth, 'growth', ['growth'])
   visit(growth?.spread, 'spread', ['growth', 'spread'])
-  if (search?.method === 'complete') {
-    refusal(search, 'method', '"method: complete"', 'Take it out, or write "method: sampled".', ['search'], false)
-  }
 
   function items(layers: unknown, path: Path): void {
     list(layers).forEach((item, i) => {

@@ -59,7 +59,7 @@ growth:
   sources: { Ga: 0.70 ML/s, Al-1: 0.233 ML/s, Al-2: 0.377 ML/s }
   compositions: 1
   trials: 64
-search: { effort: brief, seed: 11 }
+search: { method: sampled, effort: brief, seed: 11 }
 deliver: { candidates: 4 }
 `
 

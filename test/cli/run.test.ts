@@ -125,6 +125,50 @@ describe('a run', () => {
   })
 })
 
+describe('a complete search', () => {
+  /** 115 101 assignments, 58 464 stacks with their mirror images, in four slices, judged at few points. */
+  const job = smallJob
+    .replace(
+      /stack:[\s\S]*target:/,
+      `stack:
+  entry: { potential: 0 meV, mass: 0.067 }
+  layers:
+    - { id: front, potential: 0.2..0.4 eV step 100 meV, mass: 0.08, width: 1..6 nm step 0.25 nm }
+    - { id: well, potential: 0 meV, mass: 0.067, width: 2..9 nm step 0.25 nm }
+    - { id: rear, potential: 0.2..0.4 eV step 100 meV, mass: 0.08, width: 1..6 nm step 0.25 nm }
+  exit: { potential: 0 meV, mass: 0.067 }
+target:`,
+    )
+    .replace(/- \{ peak[^\n]*/, '- { block: 100..200 meV, below: 1e-3, points: 8 }')
+    .replace(/growth:[\s\S]*trials: 64/, 'growth:\n  trials: 8')
+    .replace('method: sampled', 'method: complete')
+
+  it('that is killed goes on to the same statement and the same bytes', { timeout: 240_000 }, async () => {
+    const folder = withJob(job)
+    const place = join(folder, 'results', 'small')
+    const { child, ended } = start(['run', 'job.yaml', '--threads', '2'], folder)
+    const slices = () =>
+      existsSync(join(place, 'journal.ndjson'))
+        ? readFileSync(join(place, 'journal.ndjson'), 'utf8').split('"entry":{"slice"').length - 1
+        : 0
+    while (child.exitCode === null && slices() < 1) await pause(20)
+    child.kill('SIGKILL')
+    await ended
+    expect(slices()).toBeGreaterThan(0)
+    expect(slices()).toBeLessThan(4)
+    const resumed = await command(['run', 'job.yaml', '--threads', '2'], folder)
+    expect(resumed.code, resumed.stderr).toBe(0)
+    const whole = withJob(job)
+    expect((await command(['run', 'job.yaml', '--threads', '1'], whole)).code).toBe(0)
+    const recordOf = (at: string) => JSON.parse(readFileSync(join(at, 'results', 'small', 'record.json'), 'utf8'))
+    const { method, stacks, statement, units } = recordOf(folder)
+    expect([method, stacks, units]).toEqual(['complete', 58_464, 4])
+    expect(statement).toMatch(/^complete: each of the 58464 stacks/)
+    expect(statement).toBe(recordOf(whole).statement)
+    expect(tablesAndPictures(place)).toEqual(tablesAndPictures(join(whole, 'results', 'small')))
+  })
+})
+
 describe('exit codes', () => {
   it('2: a wrong job is reported, the right ones run', async () => {
     const folder = withJob()

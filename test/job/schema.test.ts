@@ -88,7 +88,6 @@ target:
     'width in qw': text.replace('5 ML', '1 qw'),
     thinnest: `${text}growth: { thinnest: 8 nm }\n`,
     total: `${text}growth: { total: ..6 um }\n`,
-    'method: complete': `${text}search: { method: complete }\n`,
   }
   for (const [key, job] of Object.entries(cases)) {
     test(`${key} is refused with a sentence that says what to do instead`, () => {
