@@ -27,6 +27,8 @@ export class Lattice {
   readonly situations: readonly Situation[]
   /** At most so many different alloys in a stack, those of the leads free. */
   readonly compositions: number | null
+  /** Numbers of described layers whose widths (nm) may not fall in this order; empty: no such rule. */
+  readonly rising: readonly number[]
   /** A stack and its mirror image are one: equal lossless leads and no bias. */
   readonly reversible: boolean
   readonly leadAlloys: ReadonlySet<string>
@@ -51,6 +53,7 @@ export class Lattice {
     this.slots = slots.map((slot, i) => ({ ...slot, slices: plan?.slices(slot.id) ?? 1, biased: biased?.[i] ?? false }))
     this.places = placesOf(layers)
     this.compositions = growth.compositions
+    this.rising = stack.rising.map((id) => slots.find((slot) => slot.id === id)!.layer)
     const { entry, exit } = this.situations[0]
     const leads = exit === 'hard wall' ? [entry] : [entry, exit]
     this.leadAlloys = new Set(leads.map(alloyOf).filter((alloy) => alloy !== null))
@@ -59,14 +62,18 @@ export class Lattice {
     this.strainedTo = strainedTo(stack.strainedTo, growth.startsAt === 'entry' ? entry : exit)
     if (!this.feasible(repaired(this, new Int32Array(this.places.length)))) {
       throw new DesignError(
-        `No stack holds at most ${growth.compositions} different alloys with these compositions. ` +
-          'Raise growth.compositions, or give the layers compositions in common.',
+        this.rising.length > 0
+          ? `No stack has widths that rise along ${stack.rising.join(', ')}. Let the ranges of the later ones reach as far.`
+          : `No stack holds at most ${growth.compositions} different alloys with these compositions. ` +
+              'Raise growth.compositions, or give the layers compositions in common.',
       )
     }
   }
 
   feasible(assignment: Int32Array): boolean {
-    if (this.compositions === null) return this.layers.every((layer) => layer.cell(assignment) !== null)
+    if (this.compositions === null && this.rising.length === 0) {
+      return this.layers.every((layer) => layer.cell(assignment) !== null)
+    }
     const alloys = new Set<string>()
     for (const layer of this.layers) {
       const cell = layer.cell(assignment)
@@ -74,7 +81,19 @@ export class Lattice {
       const alloy = this.countedAlloy(cell)
       if (alloy !== null) alloys.add(alloy)
     }
-    return alloys.size <= this.compositions
+    return (this.compositions === null || alloys.size <= this.compositions) && this.rises(assignment)
+  }
+
+  /** Whether the layers of `rising` have widths that do not fall; equal within rounding is level. */
+  rises(assignment: Int32Array): boolean {
+    let before = 0
+    return this.rising.every((layer) => {
+      const { medium, count } = this.layers[layer].cell(assignment)!
+      const nm = count * medium.widths.stepNm
+      const holds = nm >= before - 1e-9
+      before = nm
+      return holds
+    })
   }
 
   /** Every feasible assignment, the last place fastest; one array, reused. */

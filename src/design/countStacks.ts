@@ -7,7 +7,7 @@ import { canonicalOf, partners } from './mirror.js'
  *
  * Where no two layers can merge and none can vanish, every assignment is a stack of its own and nothing is enumerated: with N
  * assignments, M of them with a mirror image on the lattice and F their own image, there are N - (M - F)/2 stacks. The limit on
- * alloys is kept by counting along sets of alloys. Else the stacks are told apart one by one up to `enumerated` assignments; beyond,
+ * alloys is kept by counting along sets of alloys. Else, and where widths may not fall, the stacks are told apart one by one up to `enumerated` assignments; beyond,
  * the formula gives an upper bound (see `countsUpperBound`).
  */
 export function countStacks(lattice: Lattice): number {
@@ -16,7 +16,7 @@ export function countStacks(lattice: Lattice): number {
     lattice,
     all.map((layers) => ({ layers, fits: layers })),
   )
-  if (mayCoincide(lattice) && placeProduct(lattice) <= enumerated) return countOneByOne(lattice)
+  if (needsEach(lattice) && placeProduct(lattice) <= enumerated) return countOneByOne(lattice)
   if (!lattice.reversible) return assignments
   const from = partners(lattice).map((list) => new Set(list))
   const mirrorable = count(lattice, mirrorClasses(from))
@@ -26,7 +26,12 @@ export function countStacks(lattice: Lattice): number {
 
 /** Whether `countStacks` counts layers that could merge or vanish as if they stayed apart. */
 export function countsUpperBound(lattice: Lattice): boolean {
-  return mayCoincide(lattice) && placeProduct(lattice) > enumerated
+  return needsEach(lattice) && placeProduct(lattice) > enumerated
+}
+
+/** No formula tells how many there are: layers may coincide, or widths may not fall. */
+function needsEach(lattice: Lattice): boolean {
+  return mayCoincide(lattice) || lattice.rising.length > 0
 }
 
 const enumerated = 200_000

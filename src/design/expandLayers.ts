@@ -24,8 +24,10 @@ export function expandLayers(stack: Pick<StackSpec, 'layers' | 'mirror'>): Expan
 
 function collect(items: readonly StackItem[], into: LayerSpec[]): void {
   for (const item of items) {
-    if (item.kind === 'period') collect(item.period, into)
-    else if (item.like === null) into.push(item)
+    if (item.kind === 'period') {
+      collect(item.period, into)
+      collect(item.between, into)
+    } else if (item.like === null) into.push(item)
   }
 }
 
@@ -34,7 +36,8 @@ function unfold(items: readonly StackItem[], mirror: boolean): LayerSpec[] {
   return mirror ? [...once, ...once.slice(0, -1).reverse()] : once
 }
 
-function repeated({ period, mirror, repeat }: Extract<StackItem, { kind: 'period' }>): LayerSpec[] {
+function repeated({ period, between, mirror, repeat }: Extract<StackItem, { kind: 'period' }>): LayerSpec[] {
   const once = unfold(period, mirror)
-  return Array.from({ length: repeat }, () => once).flat()
+  const apart = unfold(between, false)
+  return Array.from({ length: repeat }, (_, i) => (i === 0 ? once : [...apart, ...once])).flat()
 }

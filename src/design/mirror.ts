@@ -52,5 +52,5 @@ function mirrored(lattice: Lattice, assignment: Int32Array): Int32Array | null {
     layer.writeMedium(own, out)
     layer.writeCount(own, count, out)
   }
-  return out
+  return lattice.rises(out) ? out : null
 }

@@ -4,14 +4,39 @@ import { type Candidate, countsOf, type LayerLattice, parameters, valuesOf } fro
 /**
  * The assignment itself when it is feasible, else a feasible one near it: choices beyond a list's end are taken back to it, widths
  * go to the nearest of the medium's own, and where the stack holds too many alloys a depth-first search chooses the ones that move
- * the compositions least. Infeasible only where no feasible assignment was found.
+ * the compositions least; widths that may not fall are put in order. Infeasible only where no feasible assignment was found.
  */
 export function repaired(lattice: Lattice, assignment: Int32Array): Int32Array {
   if (lattice.feasible(assignment)) return assignment
   const out = Int32Array.from(assignment)
   for (const layer of lattice.layers) withinLists(layer, out)
-  if (!lattice.feasible(out)) limitAlloys(lattice, out)
+  if (lattice.compositions !== null && !lattice.feasible(out)) limitAlloys(lattice, out)
+  if (!lattice.feasible(out)) raise(lattice, out)
   return out
+}
+
+/**
+ * Puts the widths that may not fall in order: from the last on none wider than those behind it may become, then from the first on none
+ * narrower than the one before.
+ */
+function raise({ layers, rising }: Lattice, out: Int32Array): void {
+  const rows = rising.map((i) => ({ layer: layers[i], medium: layers[i].medium(out)! }))
+  let cap = Number.POSITIVE_INFINITY
+  for (const { layer, medium } of [...rows].reverse()) {
+    const { first, last, stride, stepNm } = medium.widths
+    const most = Math.min(last, Math.floor(cap / stepNm + 1e-9))
+    const count = layer.freeCount(out) ?? first
+    if (count > most) layer.writeCount(medium, first + stride * Math.floor((most - first) / stride), out)
+    cap = most * stepNm
+  }
+  let floor = 0
+  for (const { layer, medium } of rows) {
+    const { first, stride, stepNm } = medium.widths
+    const least = Math.max(first, Math.ceil(floor / stepNm - 1e-9))
+    const count = layer.freeCount(out) ?? first
+    if (count < least) layer.writeCount(medium, first + stride * Math.ceil((least - first) / stride), out)
+    floor = (layer.freeCount(out) ?? first) * stepNm
+  }
 }
 
 function withinLists(layer: LayerLattice, out: Int32Array): void {

@@ -45,6 +45,8 @@ export interface StackSpec {
   readonly strainedTo: string | null
   /** Ids of the first and last layer that a bias falls over; null: all layers. */
   readonly biasOver: readonly [string, string] | null
+  /** Ids of layers whose widths (nm) may not fall in this order; empty: no such rule. */
+  readonly rising: readonly string[]
 }
 
 export type StackItem = LayerSpec | PeriodSpec
@@ -65,6 +67,8 @@ export interface PeriodSpec {
   readonly id: string | null
   readonly repeat: number
   readonly period: readonly StackItem[]
+  /** Stands between repetitions only. */
+  readonly between: readonly StackItem[]
   readonly mirror: boolean
 }
 

@@ -1,4 +1,5 @@
 import { isMaterial, needsX } from '../media/index.js'
+import { elementsOf, reachableX } from './cells.js'
 import type { Loose } from './checkShape.js'
 import type { GrowthSpec, Source } from './job.js'
 import { shortened } from './problemAt.js'
@@ -21,11 +22,11 @@ export function readGrowth(
   growth: Growth,
   stepNm: number | null,
   layers: readonly PlacedLayer[],
+  sources: readonly (Source | null)[],
   reader: Reader,
 ): GrowthSpec {
   const { problems } = reader
   const path = ['growth']
-  const sources = readSources(growth?.sources, reader)
   if (growth?.sources !== undefined && sources.every((source) => source !== null)) {
     const cells = sources as readonly Source[]
     for (const layer of layers) checkCells(layer, cells, reader)
@@ -74,7 +75,8 @@ function readSpread(spread: NonNullable<Growth>['spread'], reader: Reader): Grow
   }
 }
 
-function readSources(sources: NonNullable<Growth>['sources'], reader: Reader): (Source | null)[] {
+/** growth.sources, from which compositions may be taken; null for one that is not in order. */
+export function readSources(sources: NonNullable<Growth>['sources'], reader: Reader): (Source | null)[] {
   const { problems } = reader
   return Object.entries(sources ?? {}).map(([name, value]) => {
     const path = ['growth', 'sources', name]
@@ -123,15 +125,4 @@ function checkCells(layer: PlacedLayer, cells: readonly Source[], reader: Reader
       `They reach x = ${list.join(', ')}: choose of these, or change growth.sources.`,
     )
   }
-}
-
-/** The group III elements of a material, the first-named first: In, Ga of InGaAs. */
-function elementsOf(material: string): string[] {
-  return material.match(/Al|Ga|In/g) ?? []
-}
-
-function reachableX([first, second]: readonly string[], cells: readonly Source[]): number[] {
-  const of = (element: string) => cells.filter((cell) => cell.element === element)
-  const found = of(first).flatMap((a) => of(second).map((b) => a.rateMlPerS / (a.rateMlPerS + b.rateMlPerS)))
-  return [...new Set(found)].sort((a, b) => a - b)
 }

@@ -7,7 +7,7 @@ import { Reader } from './Reader.js'
 import { readBiasOver } from './readBiasOver.js'
 import { readConditions } from './readConditions.js'
 import type { Tables } from './readCurve.js'
-import { readGrowth, readStep } from './readGrowth.js'
+import { readGrowth, readSources, readStep } from './readGrowth.js'
 import { readMedia } from './readMedia.js'
 import { readStack } from './readStack.js'
 import { readTarget } from './readTarget.js'
@@ -66,10 +66,12 @@ export function assembleJob(text: string, file: string, tables: Tables): Job {
   const conditions = readConditions(written, reader)
   const media = readMedia(written.media, reader)
   const stepNm = readStep(written.growth, reader)
-  const stack = readStack(written.stack, media, stepNm, reader)
+  const sources = readSources(written.growth?.sources, reader)
+  const cells = sources.filter((source) => source !== null)
+  const stack = readStack(written.stack, media, stepNm, cells, reader)
   const biasOver = readBiasOver(written['bias over'], stack.layers, reader)
   const target = readTarget(written.target, conditions, keeping(tables, files), reader)
-  const growth = readGrowth(written.growth, stepNm, stack.layers, reader)
+  const growth = readGrowth(written.growth, stepNm, stack.layers, sources, reader)
   const seed =
     written.search?.seed === undefined ? 1 : reader.whole(written.search.seed, ['search', 'seed'], 0, 4294967295)
   const candidates =
@@ -153,6 +155,8 @@ function notesOf(job: Omit<Job, 'notes'>, statesTemperature: boolean): string[] 
 
 function optionsOf({ entry, exit, layers }: Job['stack']) {
   const inside = (items: typeof layers): Exclude<typeof exit, 'hard wall'>[] =>
-    items.flatMap((item) => (item.kind === 'period' ? inside(item.period) : (item.media ?? [])))
+    items.flatMap((item) =>
+      item.kind === 'period' ? [...inside(item.period), ...inside(item.between)] : (item.media ?? []),
+    )
   return [entry, ...inside(layers), ...(exit === 'hard wall' ? [] : [exit])]
 }

@@ -1,6 +1,7 @@
 import { isMaterial, materialNames, nearest, needsX } from '../media/index.js'
+import { elementsOf, reachableX } from './cells.js'
 import type { Loose } from './checkShape.js'
-import type { LayerSpec, MediumOption, PeriodSpec, StackItem, StackSpec } from './job.js'
+import type { LayerSpec, MediumOption, PeriodSpec, Source, StackItem, StackSpec } from './job.js'
 import { shortened } from './problemAt.js'
 import type { Reader } from './Reader.js'
 import { readLead } from './readLead.js'
@@ -32,6 +33,7 @@ export function readStack(
   stack: Loose<JobAsWritten>['stack'],
   media: UserMedia,
   stepNm: number | null,
+  cells: readonly Source[],
   reader: Reader,
 ): ReadStack {
   const { problems } = reader
@@ -58,6 +60,7 @@ export function readStack(
     massModel: stack.mass ?? 'two-band',
     strainedTo,
     biasOver: null,
+    rising: readRising(stack.rising),
   }
   return { spec, layers }
 
@@ -104,13 +107,15 @@ export function readStack(
     const repeat = typeof item.repeat === 'number' ? reader.whole(item.repeat, [...path, 'repeat'], 1, 1000) : null
     const period = item.period ? readItems(item.period, [...path, 'period']) : []
     const mirror = readMirror(item.mirror, item.period, [...path, 'mirror'])
-    return { kind: 'period', id, repeat: repeat ?? 1, period, mirror }
+    const between = item.between ? readItems(item.between, [...path, 'between']) : []
+    return { kind: 'period', id, repeat: repeat ?? 1, period, between, mirror }
   }
 
   function readMaterial(item: Item, path: Path): readonly MediumOption[] | null {
     const xPath = [...path, 'x']
     const hasX = problems.source.has(xPath)
-    const x = readComposition(item.x, xPath, reader)
+    const fromSources = typeof item.x === 'object' && 'from' in item.x
+    const x = fromSources ? null : readComposition(item.x, xPath, reader)
     const { material } = item
     if (material === undefined) return null
     const picked = typeof material === 'string' ? null : (material.pick ?? [])
@@ -129,7 +134,8 @@ export function readStack(
         problems.add(placeOf(i), `${shortened(name)} stands twice in the list.`, 'Keep one of the two.')
         return
       }
-      const option = readNamed(name, placeOf(i), x, media, reader)
+      const reached = fromSources && isAlloy(name, media) ? reachedBy(name, xPath) : x
+      const option = readNamed(name, placeOf(i), reached, media, reader)
       if (option) options.push(option)
     })
     const known = names.filter((name): name is string => name !== undefined)
@@ -148,8 +154,23 @@ export function readStack(
         `Take x out${alloyHint(known[0], media)}.`,
       )
     }
-    const complete = options.length === names.length && names.length > 0 && (alloys.length === 0 || x !== null)
+    const complete =
+      options.length === names.length && names.length > 0 && (alloys.length === 0 || x !== null || fromSources)
     return complete ? options : null
+  }
+
+  /** The compositions that the cells reach, to four digits: a machine sets no more. */
+  function reachedBy(name: string, xPath: Path): readonly number[] {
+    const reached = reachableX(elementsOf(name), cells).map((value) => Number(value.toFixed(4)))
+    if (reached.length === 0) {
+      const needed = elementsOf(name).join(' and ')
+      problems.add(
+        xPath,
+        `growth.sources has no cells for ${needed}, from which ${name} could take its composition.`,
+        'List them, like "sources: { Ga: 0.70 ML/s, Al-1: 0.233 ML/s }", or write "x: { pick: [0.25, 0.35] }".',
+      )
+    }
+    return [...new Set(reached)]
   }
 
   function byNumbers(item: Item, path: Path): readonly MediumOption[] | null {
@@ -179,6 +200,26 @@ export function readStack(
       )
     }
     return mirror ?? false
+  }
+
+  /** Ids of layers that are written with one; a tied layer stands for the layer that it follows. */
+  function readRising(ids: readonly (string | undefined)[] | undefined): readonly string[] {
+    if (ids === undefined) return []
+    const path = ['stack', 'rising']
+    if (ids.length < 2)
+      problems.addAtKey(path, '"rising" orders two layers or more.', 'Write "rising: [first, second]".')
+    const known = layers.flatMap(({ writtenId }) => writtenId ?? [])
+    return ids.flatMap((id, i) => {
+      if (id === undefined) return []
+      if (known.includes(id)) return [id]
+      const near = nearest(id, known)
+      problems.add(
+        [...path, i],
+        `There is no layer with the id "${shortened(id)}".`,
+        near.length > 0 ? `Did you mean "${near[0]}"?` : 'Give the layer an id.',
+      )
+      return []
+    })
   }
 
   function readStrain(name: string | undefined): string | null {
@@ -233,7 +274,7 @@ type Form = 'like' | 'period' | 'material' | 'numbers'
 
 const forms: Readonly<Record<Form, readonly string[]>> = {
   like: ['id', 'like'],
-  period: ['id', 'repeat', 'period', 'mirror'],
+  period: ['id', 'repeat', 'period', 'between', 'mirror'],
   material: ['id', 'material', 'x', 'width'],
   numbers: ['id', 'potential', 'mass', 'alpha', 'width'],
 }
@@ -260,15 +301,17 @@ function alloyHint(name: string, media: UserMedia): string {
 }
 
 function countLayers(items: readonly StackItem[], mirror: boolean): number {
-  const once = items.reduce(
-    (sum, item) => sum + (item.kind === 'layer' ? 1 : item.repeat * countLayers(item.period, item.mirror)),
-    0,
-  )
+  const once = items.reduce((sum, item) => sum + (item.kind === 'layer' ? 1 : countRepeated(item)), 0)
   return mirror ? 2 * once - 1 : once
+}
+
+function countRepeated({ repeat, period, between, mirror }: PeriodSpec): number {
+  return repeat * countLayers(period, mirror) + (repeat - 1) * countLayers(between, false)
 }
 
 /** Puts the layers as tied in the place of those that were read. */
 function withTies(item: StackItem, tied: ReadonlyMap<LayerSpec, LayerSpec>): StackItem {
   if (item.kind === 'layer') return tied.get(item) ?? item
-  return { ...item, period: item.period.map((inner) => withTies(inner, tied)) }
+  const inside = (items: readonly StackItem[]) => items.map((inner) => withTies(inner, tied))
+  return { ...item, period: inside(item.period), between: inside(item.between) }
 }

@@ -16,12 +16,10 @@ const refused: Readonly<Record<Room, Readonly<Record<string, string>>>> = {
     extinction: 'Electrons need { potential: 0.2 eV, mass: 0.09 } instead.',
   },
   stack: {
-    rising: 'Give the layers ranges that follow one another, or leave the order open.',
     reference: 'Take it out: it belongs to jobs with kind: light.',
     back: 'Take it out: it belongs to jobs with kind: light.',
   },
   item: {
-    between: 'Write the repetitions out, with the layers between them.',
     index: 'Electrons need potential and mass instead.',
     extinction: 'Electrons need potential and mass instead.',
   },
@@ -65,10 +63,10 @@ export function refuse(job: unknown, problems: Problems): void {
         refusal(map, 'width', 'A width in qw', 'Write it in ML or nm.', here)
       if (isMap(x) && x.like !== undefined)
         refusal(map, 'x', 'A composition tied alone, "x: { like: ... }",', tied, here)
-      if (isMap(x) && x.from !== undefined) refusal(map, 'x', '"x: { from: sources }"', reachable, here)
       if (isMap(repeat)) refusal(map, 'repeat', 'A tied count, "repeat: { like: ... }",', 'Write the number.', here)
       if (typeof repeat === 'string') refusal(map, 'repeat', 'A count that the search chooses', counts, here)
       items(map.period, [...here, 'period'])
+      items(map.between, [...here, 'between'])
     })
   }
 
@@ -88,7 +86,6 @@ export function refuse(job: unknown, problems: Problems): void {
 }
 
 const tied = 'Write "like: id" to tie material, composition and width together, or give it a range of its own.'
-const reachable = 'Write the compositions that the cells reach: "x: { pick: [0.25, 0.35] }".'
 const counts = 'Write one number, like "repeat: 5", and a job for each count.'
 
 function isMap(value: unknown): value is Map {

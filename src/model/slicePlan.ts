@@ -42,8 +42,10 @@ export function slicePlan(stack: StackSpec, situation: Situation): SlicePlan {
 
 function collect(items: readonly StackItem[], into: Map<string, LayerSpec>): void {
   for (const item of items) {
-    if (item.kind === 'period') collect(item.period, into)
-    else into.set(item.id, item)
+    if (item.kind === 'period') {
+      collect(item.period, into)
+      collect(item.between, into)
+    } else into.set(item.id, item)
   }
 }
 

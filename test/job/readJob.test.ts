@@ -40,6 +40,7 @@ describe('a job in order', () => {
       massModel: 'two-band',
       strainedTo: null,
       biasOver: null,
+      rising: [],
     })
     expect(job.scanEv).toEqual([0.005, 0.2])
     expect(job.resolutionEv).toBe(1e-5)
