@@ -1,5 +1,5 @@
 import type { Binary } from './material.js'
-import { elasticCopies, twoCopies } from './sources.js'
+import { elasticCopies, fromMemory, twoCopies } from './sources.js'
 
 export const AlSb: Binary = {
   kind: 'binary',
@@ -12,7 +12,11 @@ export const AlSb: Binary = {
     alpha: { value: 0.42e-3, unit: 'eV/K', source: twoCopies },
     beta: { value: 140, unit: 'K', source: twoCopies },
   },
-  gapX: null,
+  gapX: {
+    zero: { value: 1.696, unit: 'eV', source: fromMemory },
+    alpha: { value: 0.39e-3, unit: 'eV/K', source: fromMemory },
+    beta: { value: 140, unit: 'K', source: fromMemory },
+  },
   mass: { value: 0.14, unit: 'm0', source: twoCopies },
   vbo: { value: -0.41, unit: 'eV', source: twoCopies },
   ac: { value: -4.5, unit: 'eV', source: twoCopies },

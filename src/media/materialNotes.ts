@@ -8,12 +8,18 @@ const alGaAsLimit = 0.4
  * Throws MaterialError for an unknown name.
  */
 export function materialNotes(name: string, x: number | null, temperatureK: number): string[] {
-  const { temperatureK: range } = material(name)
+  const listed = material(name)
+  const { temperatureK: range } = listed
   const notes: string[] = []
   if ((name === 'AlGaAs' && x !== null && x > alGaAsLimit) || name === 'AlAs') {
     notes.push(
       `${x === null ? name : `${name} x = ${x}`}: above x = ${alGaAsLimit} in AlGaAs the X valley lies near or below the ` +
         'Gamma edge; electrons leak through it, and this one-valley calculation does not see that path.',
+    )
+  }
+  if (name !== 'AlAs' && listed.kind === 'binary' && listed.gapX && listed.gapX.zero.value < listed.gap.zero.value) {
+    notes.push(
+      `${name}: its X valley lies below the Gamma edge; electrons leak through it, and this one-valley calculation does not see that path.`,
     )
   }
   if (temperatureK < range[0] || temperatureK > range[1]) {

@@ -62,3 +62,8 @@ describe('nearest', () => {
     expect(nearest('glass', materialNames)).toEqual([])
   })
 })
+
+test('a barrier whose X valley lies below its Gamma edge is noted: AlSb, not GaAs', () => {
+  expect(materialNotes('AlSb', null, 77).join()).toContain('X valley lies below the Gamma edge')
+  expect(materialNotes('GaAs', null, 77)).toEqual([])
+})
