@@ -5,6 +5,7 @@ import { type CheckArguments, check } from './check.js'
 import { sayError } from './console.js'
 import { exitCode } from './exitCodes.js'
 import { materials } from './materials.js'
+import { newJob } from './newJob.js'
 import { type RunArguments, run } from './run.js'
 import { schema } from './schema.js'
 import { UsageError } from './UsageError.js'
@@ -38,6 +39,14 @@ program
   .option('--gradients', 'check the derivatives that the search goes by, in digits')
   .action(async (jobs: string[], options: CheckArguments) => {
     code = await check(jobs, options)
+  })
+
+program
+  .command('new')
+  .description('write NAME.yaml, a commented job to start from')
+  .argument('<name>', 'letters, digits, dashes')
+  .action((name: string) => {
+    code = newJob(name)
   })
 
 program

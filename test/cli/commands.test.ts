@@ -50,6 +50,21 @@ describe('check', () => {
   })
 })
 
+describe('new', () => {
+  it('writes a job that check explains as it is, and never over a file', async () => {
+    const folder = emptyFolder()
+    const { code, stdout } = await command(['new', 'my-filter'], folder)
+    expect([code, stdout]).toEqual([0, 'my-filter.yaml\n'])
+    const check = await command(['check', 'my-filter.yaml'], folder)
+    expect(check.code, check.stderr).toBe(0)
+    expect(check.stdout).toMatch(/stacks +630 different ones/)
+    const again = await command(['new', 'my-filter'], folder)
+    expect([again.code, again.stderr]).toEqual([2, expect.stringContaining('is here already')])
+    expect((await command(['new', '../elsewhere'], folder)).code).toBe(2)
+    expect(readdirSync(folder)).toEqual(['my-filter.yaml'])
+  })
+})
+
 describe('materials', () => {
   it('lists every material', async () => {
     const { stdout } = await command(['materials'], emptyFolder())
