@@ -34,10 +34,18 @@ function checkRegion({ potentialEv, massRel, alphaPerEv = 0 }: Region, of: strin
 
 function checkLight(stack: LightStack, from: Side): void {
   const { entry, layers, exit, angleDeg = 0, polarisation = 's', back } = stack
-  if (back)
-    throw new StackError(
-      'An incoherent back face (`back`) is not computed yet. Leave it out: the exit is then without end.',
-    )
+  if (back) {
+    checkMedium(back.exit, 'the medium behind the back face')
+    for (const [medium, of] of [
+      [exit, 'the exit, a thick plate'],
+      ...(from === 'exit' ? [[back.exit, 'the medium behind the back face, from which the wave comes'] as const] : []),
+    ] as const) {
+      if (medium.extinction !== undefined && medium.extinction !== 0)
+        throw new StackError(
+          `Extinction of ${of}, is ${medium.extinction}. It must be 0: intensities add up in a lossless plate.`,
+        )
+    }
+  }
   checkMedium(entry, 'the entry')
   layers.forEach((layer, i) => void checkMedium(layer, `layer ${i + 1}`))
   checkMedium(exit, 'the exit')

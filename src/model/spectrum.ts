@@ -1,7 +1,8 @@
 import { type MediaTable, type Side, spectrumInto, type WaveStack } from '../wave/index.js'
 import { energiesOf } from './energiesOf.js'
+import { incoherentBack, mediaTable } from './incoherentBack.js'
 import { StackError } from './StackError.js'
-import { systemOf } from './systemOf.js'
+import { platedSystem, systemOf } from './systemOf.js'
 import type { ElectronStack, LightStack } from './types.js'
 
 export interface SpectrumOptions {
@@ -13,6 +14,8 @@ export interface SpectrumOptions {
 export interface Spectrum {
   readonly T: Float64Array
   readonly R: Float64Array
+  /** Absorbed between the leads, from the flux layer by layer; 0 in lossless stacks. */
+  readonly A: Float64Array
   /** -Infinity where T = 0; finite where T itself is too small for a double. */
   readonly log10T: Float64Array
   /** Largest abs(T + R + A - 1). */
@@ -38,27 +41,33 @@ export function spectrum(
   points: ArrayLike<number>,
   options: SpectrumOptions = {},
 ): Spectrum {
+  const { from: side = 'entry' } = options
+  if (stack.kind === 'light' && stack.back) {
+    const { system, back } = platedSystem(stack, side)
+    return incoherentBack(
+      system,
+      back,
+      energiesOf(side === 'entry' ? stack : { ...stack, exit: stack.back.exit }, points, side),
+      side,
+    )
+  }
   const { table, stack: waves, from } = prepareSpectrum(stack, points, options)
   const row = () => new Float64Array(points.length).fill(Number.NaN)
-  const out = { T: row(), R: row(), log10T: row() }
+  const out = { T: row(), R: row(), A: row(), log10T: row() }
   return { ...out, fluxError: spectrumInto(table, waves, out, from) }
 }
 
-/** Checks as spectrum does; see there for what it throws. */
+/** Checks as spectrum does, see there for what it throws; and throws for a stack with an incoherent back face, which has no such layout. */
 export function prepareSpectrum(
   stack: ElectronStack | LightStack,
   points: ArrayLike<number>,
   { from = 'entry' }: SpectrumOptions = {},
 ): PreparedSpectrum {
+  if (stack.kind === 'light' && stack.back)
+    throw new StackError('A stack with a `back` has no single layout. Call spectrum for it.')
   const { media, stack: waves } = systemOf(stack, from)
   const energies = energiesOf(stack, points, from)
-  if (!media.lossless) {
-    throw new StackError(
-      'A layer or lead has an extinction: spectra of absorbing stacks are not computed yet. Leave it out.',
-    )
-  }
-  const row = () => new Float64Array(media.count * energies.length).fill(Number.NaN)
-  const table = { count: media.count, points: energies.length, q: row(), mu: row() }
+  const table = mediaTable(media.count, energies.length, media.lossless)
   media.fill(energies, table)
   return { table, stack: waves, from }
 }

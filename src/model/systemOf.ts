@@ -13,7 +13,27 @@ export function systemOf(stack: ElectronStack | LightStack, from: Side = 'entry'
   return stack.kind === 'electron' ? electronSystem(stack) : lightSystem(stack, from)
 }
 
-function lightSystem({ entry, layers, exit, angleDeg = 0, polarisation = 's' }: LightStack, from: Side): WaveSystem {
+/** A stack with a back face: its front, and the number of the medium behind the plate. Throws as systemOf. */
+export function platedSystem(stack: LightStack, from: Side): { readonly system: WaveSystem; readonly back: number } {
+  checkStack(stack, from)
+  // The medium behind comes last and stands for a layer of no width, so that it is among the media.
+  const { back, layers, ...front } = stack
+  const behind = { ...back!.exit, widthNm: 0 }
+  const { media, stack: waves } = lightSystem(
+    { ...front, layers: [...layers, behind] },
+    from,
+    from === 'exit' ? layers.length : null,
+  )
+  const last = layers.length
+  const system = { media, stack: { ...waves, medium: waves.medium.slice(0, last), width: waves.width.slice(0, last) } }
+  return { system, back: waves.medium[last] }
+}
+
+function lightSystem(
+  { entry, layers, exit, angleDeg = 0, polarisation = 's' }: LightStack,
+  from: Side,
+  fromLayer: number | null = null,
+): WaveSystem {
   const media: Medium[] = []
   const numberOf = ({ index, extinction = 0 }: Medium): number => {
     const known = media.findIndex((medium) => medium.index === index && medium.extinction === extinction)
@@ -25,5 +45,12 @@ function lightSystem({ entry, layers, exit, angleDeg = 0, polarisation = 's' }: 
     medium: Int32Array.from(layers, numberOf),
     width: Float64Array.from(layers, (layer) => layer.widthNm),
   }
-  return { stack, media: lightMedia(media, { medium: stack[from], angleDeg, polarisation }) }
+  return {
+    stack,
+    media: lightMedia(media, {
+      medium: fromLayer === null ? stack[from] : stack.medium[fromLayer],
+      angleDeg,
+      polarisation,
+    }),
+  }
 }

@@ -126,19 +126,18 @@ describe('a stack without a spectrum is refused with the number', () => {
       'entry',
       'Extinction of the entry is 0.1 at 399 nm',
     ],
-    [
-      'absorbing layer',
-      { ...light, layers: [{ index: 1, extinction: 0.01, widthNm: 1 }] },
-      [633],
-      'entry',
-      'spectra of absorbing stacks are not computed yet',
-    ],
     ['grazing', { ...light, angleDeg: 90 }, [633], 'entry', 'Angle is 90 degrees'],
     ['backward', { ...light, angleDeg: -1 }, [633], 'entry', 'Angle is -1 degrees'],
     ['no angle', { ...light, angleDeg: nan }, [633], 'entry', 'Angle is NaN degrees'],
     ['no wavelength', light, [633, 0], 'entry', 'Point 2 is 0 nm'],
     ['endless wavelength', light, [infinity], 'entry', 'Point 1 is Infinity'],
-    ['back face', { ...light, back: { exit: { index: 1 } } }, [633], 'entry', 'back face (`back`) is not computed yet'],
+    [
+      'plate that absorbs',
+      { ...light, exit: { index: 1.5, extinction: 0.01 }, back: { exit: { index: 1 } } },
+      [633],
+      'entry',
+      'Extinction of the exit, a thick plate, is 0.01',
+    ],
   ])('light, %s', (_, stack, points, from, message) => {
     expect(() => spectrum(stack, points, { from })).toThrow(StackError)
     expect(() => spectrum(stack, points, { from })).toThrow(message)
