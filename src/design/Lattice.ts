@@ -1,7 +1,7 @@
 import type { Job } from '../job/index.js'
 import { type MediumChoice, type Situation, situationOf, slicePlan } from '../model/index.js'
 import { DesignError } from './DesignError.js'
-import { expandLayers, type Slot } from './expandLayers.js'
+import { expandLayers, type FreeRepeat, type Slot } from './expandLayers.js'
 import { alloyOf, type Candidate, type Cell, LayerLattice, mediumKey } from './LayerLattice.js'
 import { repaired } from './repair.js'
 import type { Place } from './types.js'
@@ -22,7 +22,11 @@ export interface SlicedSlot extends Slot {
 /** The places of a job and what they mean, layer by layer: the ground on which the functions of this folder stand. */
 export class Lattice {
   readonly layers: readonly LayerLattice[]
-  readonly slots: readonly SlicedSlot[]
+  /** Counts of repetitions that the search chooses, and the place of the first; the others follow. */
+  readonly repeats: readonly FreeRepeat[]
+  private readonly firstRepeat: number
+  private readonly slotsOf: (counts: readonly number[]) => readonly SlicedSlot[]
+  private readonly knownSlots = new Map<string, readonly SlicedSlot[]>()
   readonly places: readonly Place[]
   readonly situations: readonly Situation[]
   /** At most so many different alloys in a stack, those of the leads free. */
@@ -39,7 +43,7 @@ export class Lattice {
   constructor(job: Job) {
     const { stack, growth } = job
     this.situations = job.conditions.map((condition) => situationOf(job, condition))
-    const { described, slots } = expandLayers(stack)
+    const { described, repeats, slots: slotsAt } = expandLayers(stack)
     const layers: LayerLattice[] = []
     let offset = 0
     for (const spec of described) {
@@ -49,11 +53,26 @@ export class Lattice {
     }
     this.layers = layers
     const plan = job.conditions.every(({ biasV }) => biasV === 0) ? null : slicePlan(stack, this.situations[0])
-    const biased = plan?.biased(slots.map(({ id }) => id))
-    this.slots = slots.map((slot, i) => ({ ...slot, slices: plan?.slices(slot.id) ?? 1, biased: biased?.[i] ?? false }))
-    this.places = placesOf(layers)
+    this.slotsOf = (counts) => {
+      const slots = slotsAt(counts)
+      const biased = plan?.biased(slots.map(({ id }) => id))
+      return slots.map((slot, i) => ({ ...slot, slices: plan?.slices(slot.id) ?? 1, biased: biased?.[i] ?? false }))
+    }
+    this.repeats = repeats
+    this.firstRepeat = offset
+    const own = placesOf(layers)
+    const families = own.reduce((most, { family }) => Math.max(most, family + 1), 0)
+    this.places = [
+      ...own,
+      ...repeats.map(({ name, from, to }, i) => ({
+        name,
+        choices: to - from + 1,
+        ordered: true,
+        family: families + i,
+      })),
+    ]
     this.compositions = growth.compositions
-    this.rising = stack.rising.map((id) => slots.find((slot) => slot.id === id)!.layer)
+    this.rising = stack.rising.map((id) => slotsAt(repeats.map(({ to }) => to)).find((slot) => slot.id === id)!.layer)
     const { entry, exit } = this.situations[0]
     const leads = exit === 'hard wall' ? [entry] : [entry, exit]
     this.leadAlloys = new Set(leads.map(alloyOf).filter((alloy) => alloy !== null))
@@ -126,11 +145,22 @@ export class Lattice {
     })
   }
 
+  /** From entry to exit, with the counts of repetitions that an assignment gives. */
+  slots(assignment: Int32Array): readonly SlicedSlot[] {
+    const counts = this.repeats.map(({ from }, i) => from + assignment[this.firstRepeat + i])
+    const key = counts.join()
+    const known = this.knownSlots.get(key)
+    if (known) return known
+    const slots = this.slotsOf(counts)
+    this.knownSlots.set(key, slots)
+    return slots
+  }
+
   /** The stack as grown: equal neighbours merged, zero widths dropped. */
   stretches(assignment: Int32Array): Stretch[] {
     const cells = this.cells(assignment)
     const stretches: Stretch[] = []
-    for (const { id, layer, slices, biased } of this.slots) {
+    for (const { id, layer, slices, biased } of this.slots(assignment)) {
       const { medium, count } = cells[layer]
       if (count * medium.widths.stepNm === 0) continue
       const last = stretches.at(-1)

@@ -17,8 +17,9 @@ export function countStacks(lattice: Lattice): number {
     all.map((layers) => ({ layers, fits: layers })),
   )
   if (needsEach(lattice) && placeProduct(lattice) <= enumerated) return countOneByOne(lattice)
-  if (!lattice.reversible) return assignments
-  const from = partners(lattice).map((list) => new Set(list))
+  const repeats = lattice.repeats.reduce((product, { from: least, to }) => product * (to - least + 1), 1)
+  if (!lattice.reversible || repeats > 1) return assignments * repeats
+  const from = partners(lattice, new Int32Array(lattice.places.length)).map((list) => new Set(list))
   const mirrorable = count(lattice, mirrorClasses(from))
   const own = count(lattice, ownImageClasses(from))
   return assignments - (mirrorable - own) / 2
@@ -29,9 +30,9 @@ export function countsUpperBound(lattice: Lattice): boolean {
   return needsEach(lattice) && placeProduct(lattice) > enumerated
 }
 
-/** No formula tells how many there are: layers may coincide, or widths may not fall. */
+/** No formula tells how many there are: layers may coincide, widths may not fall, or images depend on counts of repetitions. */
 function needsEach(lattice: Lattice): boolean {
-  return mayCoincide(lattice) || lattice.rising.length > 0
+  return mayCoincide(lattice) || lattice.rising.length > 0 || (lattice.repeats.length > 0 && lattice.reversible)
 }
 
 const enumerated = 200_000
@@ -128,9 +129,18 @@ function sameLattice(a: Lattice['layers'][number]['spec'], b: typeof a): boolean
 }
 
 /** Whether two assignments may be one stack, mirror images aside. */
-function mayCoincide({ layers, slots }: Lattice): boolean {
-  const vanishes = layers.some((layer) => layer.leastCount === 0)
-  return vanishes || slots.some(({ layer }, i) => i > 0 && mayShareMedium(layers[slots[i - 1].layer], layers[layer]))
+function mayCoincide(lattice: Lattice): boolean {
+  const { layers, places, repeats } = lattice
+  if (layers.some((layer) => layer.leastCount === 0)) return true
+  // Any two repetitions show every pair of neighbours.
+  const most = Int32Array.from(places, ({ choices }) => choices - 1)
+  for (const assignment of repeats.length > 0 ? [most, new Int32Array(places.length)] : [most]) {
+    const slots = lattice.slots(assignment)
+    // A layer between repetitions of which there is one is not there.
+    if (new Set(slots.map(({ layer }) => layer)).size < layers.length) return true
+    if (slots.some(({ layer }, i) => i > 0 && mayShareMedium(layers[slots[i - 1].layer], layers[layer]))) return true
+  }
+  return false
 }
 
 function mayShareMedium(a: Lattice['layers'][number], b: Lattice['layers'][number]): boolean {

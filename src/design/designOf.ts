@@ -36,7 +36,7 @@ export function designOf(job: Job): Design {
 }
 
 const upperBoundNote =
-  'The number of stacks is an upper bound: layers that could merge with a neighbour of the same medium or have no width count as apart, and so do widths that fall where they may not.'
+  'The number of stacks is an upper bound: layers that could merge with a neighbour of the same medium or have no width count as apart, and so do widths that fall where they may not, and mirror images under counts of repetitions.'
 
 function grownLayer(stretch: Stretch): GrownLayer {
   const { id, medium, count, slices, biased } = stretch

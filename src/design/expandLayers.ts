@@ -1,4 +1,4 @@
-import type { LayerSpec, StackItem, StackSpec } from '../job/index.js'
+import type { LayerSpec, PeriodSpec, StackItem, StackSpec } from '../job/index.js'
 
 /** A layer where the wave meets it: its own id, and the number of the described layer that it repeats. */
 export interface Slot {
@@ -6,38 +6,62 @@ export interface Slot {
   readonly layer: number
 }
 
+/** A count of repetitions that the search chooses. */
+export interface FreeRepeat {
+  readonly name: string
+  readonly from: number
+  readonly to: number
+}
+
 export interface ExpandedStack {
   /** The layers that the job describes in full, in its order; all else repeats them. */
   readonly described: readonly LayerSpec[]
-  /** From entry to exit. */
-  readonly slots: readonly Slot[]
+  /** The periods of which the search chooses the count, in the order of the job. */
+  readonly repeats: readonly FreeRepeat[]
+  /** From entry to exit, with a count for each of `repeats`. */
+  slots(counts: readonly number[]): readonly Slot[]
 }
 
 /** Periods repeated, mirrors unfolded, ties followed. */
 export function expandLayers(stack: Pick<StackSpec, 'layers' | 'mirror'>): ExpandedStack {
   const described: LayerSpec[] = []
-  collect(stack.layers, described)
+  const free: PeriodSpec[] = []
+  collect(stack.layers, described, free)
   const numberOf = new Map(described.map(({ id }, i) => [id, i]))
-  const slots = unfold(stack.layers, stack.mirror).map(({ id, like }) => ({ id, layer: numberOf.get(like ?? id)! }))
-  return { described, slots }
-}
-
-function collect(items: readonly StackItem[], into: LayerSpec[]): void {
-  for (const item of items) {
-    if (item.kind === 'period') {
-      collect(item.period, into)
-      collect(item.between, into)
-    } else if (item.like === null) into.push(item)
+  return {
+    described,
+    repeats: free.map(({ id, repeat: [from, to] }, i) => ({ name: `${id ?? `period-${i + 1}`}.repeat`, from, to })),
+    slots: (counts) => {
+      const countOf = (period: PeriodSpec) => counts[free.indexOf(period)] ?? period.repeat[0]
+      return unfold(stack.layers, stack.mirror, countOf).map(({ id, like }) => ({
+        id,
+        layer: numberOf.get(like ?? id)!,
+      }))
+    },
   }
 }
 
-function unfold(items: readonly StackItem[], mirror: boolean): LayerSpec[] {
-  const once = items.flatMap((item) => (item.kind === 'layer' ? [item] : repeated(item)))
+function collect(items: readonly StackItem[], layers: LayerSpec[], free: PeriodSpec[]): void {
+  for (const item of items) {
+    if (item.kind === 'layer') {
+      if (item.like === null) layers.push(item)
+      continue
+    }
+    if (item.repeat[0] < item.repeat[1]) free.push(item)
+    collect(item.period, layers, free)
+    collect(item.between, layers, free)
+  }
+}
+
+type CountOf = (period: PeriodSpec) => number
+
+function unfold(items: readonly StackItem[], mirror: boolean, countOf: CountOf): LayerSpec[] {
+  const once = items.flatMap((item) => (item.kind === 'layer' ? [item] : repeated(item, countOf)))
   return mirror ? [...once, ...once.slice(0, -1).reverse()] : once
 }
 
-function repeated({ period, between, mirror, repeat }: Extract<StackItem, { kind: 'period' }>): LayerSpec[] {
-  const once = unfold(period, mirror)
-  const apart = unfold(between, false)
-  return Array.from({ length: repeat }, (_, i) => (i === 0 ? once : [...apart, ...once])).flat()
+function repeated(item: PeriodSpec, countOf: CountOf): LayerSpec[] {
+  const once = unfold(item.period, item.mirror, countOf)
+  const apart = unfold(item.between, false, countOf)
+  return Array.from({ length: countOf(item) }, (_, i) => (i === 0 ? once : [...apart, ...once])).flat()
 }

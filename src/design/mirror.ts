@@ -11,8 +11,9 @@ export function canonicalOf(lattice: Lattice, assignment: Int32Array): Int32Arra
 }
 
 /** The described layers that take a layer's place when the stack is reversed, one entry a slot. */
-export function partners({ slots, layers }: Lattice): number[][] {
-  const found: number[][] = layers.map(() => [])
+export function partners(lattice: Lattice, assignment: Int32Array): number[][] {
+  const slots = lattice.slots(assignment)
+  const found: number[][] = lattice.layers.map(() => [])
   slots.forEach(({ layer }, i) => {
     found[layer].push(slots[slots.length - 1 - i].layer)
   })
@@ -37,8 +38,10 @@ const sameNm = 1e-9
 
 function mirrored(lattice: Lattice, assignment: Int32Array): Int32Array | null {
   const cells = lattice.cells(assignment)
-  const out = new Int32Array(assignment.length)
-  for (const [i, from] of partners(lattice).entries()) {
+  // The counts of repetitions stay.
+  const out = Int32Array.from(assignment)
+  for (const [i, from] of partners(lattice, assignment).entries()) {
+    if (from.length === 0) continue
     const layer = lattice.layers[i]
     const { medium, count } = cells[from[0]]
     const agree = from.every((other) => {

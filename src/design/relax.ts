@@ -66,7 +66,9 @@ class RelaxedStack implements Relaxed {
 
   systems(values: Float64Array): WaveSystem[] {
     const layers = this.layersAt(values).map(({ choice, count, stepNm }) => ({ choice, widthNm: count * stepNm }))
-    const rows = this.lattice.slots.map(({ layer, slices, biased }) => ({ ...layers[layer], slices, biased }))
+    const rows = this.lattice
+      .slots(this.origin)
+      .map(({ layer, slices, biased }) => ({ ...layers[layer], slices, biased }))
     return this.lattice.situations.map((situation) => buildSystem(situation, rows))
   }
 
@@ -76,7 +78,7 @@ class RelaxedStack implements Relaxed {
   }
 
   private directionsAt(layers: readonly FreeLayer[], situation: Situation): Float64Array {
-    const { slots } = this.lattice
+    const slots = this.lattice.slots(this.origin)
     const row = slots.length * stride
     const out = new Float64Array(this.variables.length * row)
     this.variables.forEach((variable, v) => {

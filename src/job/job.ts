@@ -65,7 +65,8 @@ export interface LayerSpec {
 export interface PeriodSpec {
   readonly kind: 'period'
   readonly id: string | null
-  readonly repeat: number
+  /** Least and most; equal: a fixed count, else the search chooses. */
+  readonly repeat: readonly [number, number]
   readonly period: readonly StackItem[]
   /** Stands between repetitions only. */
   readonly between: readonly StackItem[]

@@ -24,6 +24,8 @@ export interface ReadStack {
   readonly layers: readonly PlacedLayer[]
 }
 
+const mostRepeats = 1000
+
 /** More layers than this, repetitions counted, no machine grows in a night. */
 const mostLayers = 2000
 
@@ -104,11 +106,31 @@ export function readStack(
       const what = key === 'repeat' ? '"repeat: 3"' : '"period:" with the layers of one period'
       problems.add([...path, key], `"${key}" is missing: a period says its layers and how often.`, `Add ${what}.`)
     }
-    const repeat = typeof item.repeat === 'number' ? reader.whole(item.repeat, [...path, 'repeat'], 1, 1000) : null
+    const repeat = readRepeat(item.repeat, [...path, 'repeat'])
     const period = item.period ? readItems(item.period, [...path, 'period']) : []
     const mirror = readMirror(item.mirror, item.period, [...path, 'mirror'])
     const between = item.between ? readItems(item.between, [...path, 'between']) : []
-    return { kind: 'period', id, repeat: repeat ?? 1, period, between, mirror }
+    return { kind: 'period', id, repeat: repeat ?? [1, 1], period, between, mirror }
+  }
+
+  /** `3`, or `2..5`. */
+  function readRepeat(repeat: Item['repeat'], path: Path): readonly [number, number] | null {
+    if (typeof repeat === 'number') {
+      const whole = reader.whole(repeat, path, 1, mostRepeats)
+      return whole === null ? null : [whole, whole]
+    }
+    if (typeof repeat !== 'string') return null
+    const match = /^\s*(\d{1,4})\s*\.\.\s*(\d{1,4})\s*$/.exec(repeat)
+    const [from, to] = match ? [Number(match[1]), Number(match[2])] : [0, 0]
+    if (match && from > to) reader.complain(path, 'runs downwards', `Write "${to}..${from}".`)
+    else if (!(from >= 1 && to <= mostRepeats)) {
+      reader.complain(
+        path,
+        `is no count within 1..${mostRepeats}`,
+        'Write a whole number, like 5, or a range, like "2..5".',
+      )
+    } else return [from, to]
+    return null
   }
 
   function readMaterial(item: Item, path: Path): readonly MediumOption[] | null {
@@ -306,7 +328,7 @@ function countLayers(items: readonly StackItem[], mirror: boolean): number {
 }
 
 function countRepeated({ repeat, period, between, mirror }: PeriodSpec): number {
-  return repeat * countLayers(period, mirror) + (repeat - 1) * countLayers(between, false)
+  return repeat[1] * countLayers(period, mirror) + (repeat[1] - 1) * countLayers(between, false)
 }
 
 /** Puts the layers as tied in the place of those that were read. */

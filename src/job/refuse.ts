@@ -64,7 +64,6 @@ export function refuse(job: unknown, problems: Problems): void {
       if (isMap(x) && x.like !== undefined)
         refusal(map, 'x', 'A composition tied alone, "x: { like: ... }",', tied, here)
       if (isMap(repeat)) refusal(map, 'repeat', 'A tied count, "repeat: { like: ... }",', 'Write the number.', here)
-      if (typeof repeat === 'string') refusal(map, 'repeat', 'A count that the search chooses', counts, here)
       items(map.period, [...here, 'period'])
       items(map.between, [...here, 'between'])
     })
@@ -86,7 +85,6 @@ export function refuse(job: unknown, problems: Problems): void {
 }
 
 const tied = 'Write "like: id" to tie material, composition and width together, or give it a range of its own.'
-const counts = 'Write one number, like "repeat: 5", and a job for each count.'
 
 function isMap(value: unknown): value is Map {
   return typeof value === 'object' && value !== null && !Array.isArray(value)

@@ -54,6 +54,50 @@ describe('layers between repetitions', () => {
   })
 })
 
+describe('a count of repetitions that the search chooses', () => {
+  const period = (repeat: string, between = '') =>
+    `{ id: p, repeat: ${repeat}, period: [{ id: b, material: AlAs, width: 2..3 ML }, { id: w, material: GaAs, width: 9 ML }]${between} }, { id: last, material: AlAs, width: 4 ML }`
+
+  test('gives each count its stacks', () => {
+    const design = designOf(job(period('1..3')))
+    const found = texts(design)
+    expect(new Set(found).size).toBe(6)
+    expect(found).toContain('AlAs 2 / GaAs 9 / AlAs 4 ML')
+    expect(found).toContain('AlAs 3 / GaAs 9 / AlAs 3 / GaAs 9 / AlAs 3 / GaAs 9 / AlAs 4 ML')
+    expect(design.stackCount()).toBe(6)
+    expect(design.places.map(({ name, choices }) => `${name} ${choices}`)).toEqual(['b.width 2', 'p.repeat 3'])
+  })
+
+  test('counts once what is one stack: a layer between repetitions of which there is one', () => {
+    const design = designOf(job(period('1..2', ', between: [{ id: s, material: InAs, width: 1..2 ML }]')))
+    const ids = new Set(Array.from(design.assignments(), (assignment) => design.id(assignment)))
+    // One repetition: two barriers. Two: two barriers by two spacers.
+    expect(ids.size).toBe(6)
+    expect(design.stackCount()).toBe(6)
+  })
+
+  test('lists the image of a mirror image once, and fits each count as it stands', () => {
+    const free =
+      '{ id: p, repeat: 1..2, period: [{ id: b, material: AlAs, width: 2..4 ML }, { id: w, material: GaAs, width: 9 ML }] }, { id: c, material: AlAs, width: 2..4 ML }'
+    const design = designOf(job(free))
+    const listed = new Set(Array.from(design.assignments(), (assignment) => design.canonical(assignment).join()))
+    // With one repetition b and c may change places: 6 of 9; with two nothing is the image of another but itself.
+    expect(design.stackCount()).toBe(6 + 9)
+    expect(listed.size).toBe(6 + 9)
+    for (const assignment of [Int32Array.of(0, 2, 0), Int32Array.of(1, 0, 1)]) {
+      const relaxed = design.relax(assignment)
+      expect([...relaxed.snap(relaxed.start)]).toEqual([...assignment])
+      expect(relaxed.systems(relaxed.start)[0].stack.medium).toHaveLength(assignment[2] === 0 ? 3 : 5)
+    }
+  })
+
+  test('is a whole number, or two that ascend', () => {
+    expect(complaint(() => job(period('5..2')))).toContain('repeat "5..2" runs downwards. Write "2..5".')
+    expect(complaint(() => job(period('0..2')))).toContain('is no count within 1..1000')
+    expect(complaint(() => job(period('"2 to 5"')))).toContain('Write a whole number, like 5, or a range, like "2..5".')
+  })
+})
+
 describe('compositions from the sources', () => {
   const sources = 'growth: { sources: { Ga: 0.70 ML/s, Al-1: 0.233 ML/s, Al-2: 0.377 ML/s }, compositions: 1 }\n'
 

@@ -101,7 +101,7 @@ describe('a job in order', () => {
     - { potential: 0.2..0.21 eV step 5 meV, mass: 0.09, alpha: 1.2 /eV, width: 1..2 nm step 0.25 nm }`)
     const [first, period, tail, numbers] = job.stack.layers as [LayerSpec, PeriodSpec, LayerSpec, LayerSpec]
     expect(first).toMatchObject({ id: 'L1', like: 'inner' })
-    expect(period).toMatchObject({ kind: 'period', id: null, repeat: 3, mirror: true })
+    expect(period).toMatchObject({ kind: 'period', id: null, repeat: [3, 3], mirror: true })
     expect(period.period[0]).toMatchObject({ media: [{ x: [0.2, 0.25, 0.3] }], width: { from: 5, to: 9, step: 2 } })
     expect((period.period[1] as PeriodSpec).period[0]).toMatchObject({
       id: 'L3',

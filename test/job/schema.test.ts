@@ -73,7 +73,6 @@ target:
     quantity: text.replace('within:', 'quantity: R, within:'),
     table: `${text}media: { film: { table: film.csv } }\n`,
     index: text.replace('material: AlAs', 'index: 2.1'),
-    'search chooses': text.replace('{ id: b', '{ repeat: 2..5, period: [{ material: GaAs, width: 5 ML }] }, { id: b'),
     'tied count': text.replace(
       '{ id: b',
       '{ repeat: { like: a }, period: [{ material: GaAs, width: 5 ML }] }, { id: b',
