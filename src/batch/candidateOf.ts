@@ -10,6 +10,7 @@ import { reportEnergies } from './reportEnergies.js'
 import { sliceNotes } from './sliceNotes.js'
 import { spectrumOf } from './spectrumOf.js'
 import { stackNotes } from './stackNotes.js'
+import { strainNotes } from './strainNotes.js'
 
 /** A peak narrower than this (eV) is left out of the path's check: energies as doubles don't resolve it. */
 const needleEv = 1e-9
@@ -60,7 +61,11 @@ export function candidateOf(job: Job, { design, target }: BoundJob, listed: List
     spectra: spectra.map(({ fluxError: _, ...spectrum }) => spectrum),
     resonances: poles.poles,
     profile: profileOf(system, situation, layers, peak?.energyEv ?? null),
-    notes: [...stackNotes(job, layers, poles), ...sliceNotes(job, { design, target }, layers, evaluation)],
+    notes: [
+      ...stackNotes(job, layers, poles),
+      ...strainNotes(layers, situation.substrateNm),
+      ...sliceNotes(job, { design, target }, layers, evaluation),
+    ],
   }
 }
 
