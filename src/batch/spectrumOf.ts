@@ -1,4 +1,4 @@
-import { spectrumInto, type WaveSystem } from '../wave/index.js'
+import { mediaTable, spectrumInto, type WaveSystem } from '../wave/index.js'
 
 export interface SystemSpectrum {
   readonly T: Float64Array
@@ -10,8 +10,7 @@ export interface SystemSpectrum {
 /** T, R and log10 T of a system at energies in eV, from the entry. */
 export function spectrumOf({ media, stack }: WaveSystem, energiesEv: Float64Array): SystemSpectrum {
   const points = energiesEv.length
-  const size = media.count * points
-  const table = { count: media.count, points, q: new Float64Array(size), mu: new Float64Array(size) }
+  const table = mediaTable(media, points)
   media.fill(energiesEv, table)
   const row = () => new Float64Array(points).fill(Number.NaN)
   const out = { T: row(), R: row(), log10T: row() }

@@ -32,8 +32,7 @@ export async function run(args: readonly string[], options: RunArguments): Promi
     if (stop.signal.aborted) process.exit(exitCode.interrupted)
     stop.abort(new Interrupted())
   }
-  process.on('SIGINT', interrupt)
-  process.on('SIGTERM', interrupt)
+  for (const signal of interrupting) process.on(signal, interrupt)
   let failed = false
   let unmet = false
   try {
@@ -62,13 +61,15 @@ export async function run(args: readonly string[], options: RunArguments): Promi
       }
     }
   } finally {
-    process.off('SIGINT', interrupt)
-    process.off('SIGTERM', interrupt)
+    for (const signal of interrupting) process.off(signal, interrupt)
   }
   if (failed) return exitCode.failed
   if (wrong) return exitCode.wrong
   return options.strict && unmet ? exitCode.unmet : exitCode.done
 }
+
+/** Ctrl-C, a shutdown, a terminal that is closed. */
+const interrupting = ['SIGINT', 'SIGTERM', 'SIGHUP'] as const
 
 class Interrupted extends Error {}
 

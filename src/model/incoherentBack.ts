@@ -1,4 +1,4 @@
-import { log10, type MediaTable, spectrumInto, type WaveStack, type WaveSystem } from '../wave/index.js'
+import { log10, type MediaTable, mediaTable, spectrumInto, type WaveStack, type WaveSystem } from '../wave/index.js'
 import type { Spectrum } from './spectrum.js'
 
 /** Intensities of one face, from either side. */
@@ -28,7 +28,7 @@ export function incoherentBack(
 ): Spectrum {
   const { media, stack } = system
   const points = energies.length
-  const table = mediaTable(media.count, points, media.lossless)
+  const table = mediaTable(media, points)
   media.fill(energies, table)
   const rear: WaveStack = { entry: stack.exit, exit: back, medium: new Int32Array(0), width: new Float64Array(0) }
   const [T, R, A, log10T] = [0, 1, 2, 3].map(() => new Float64Array(points).fill(Number.NaN))
@@ -71,11 +71,4 @@ function column({ count, points, q, mu, qIm, muIm }: MediaTable, e: number): Med
   const of = (row: Float64Array) => Float64Array.from({ length: count }, (_, m) => row[m * points + e])
   const real = { count, points: 1, q: of(q), mu: of(mu) }
   return qIm && muIm ? { ...real, qIm: of(qIm), muIm: of(muIm) } : real
-}
-
-/** Rows for every medium, with imaginary parts where some absorb. */
-export function mediaTable(count: number, points: number, lossless: boolean): MediaTable {
-  const row = () => new Float64Array(count * points).fill(Number.NaN)
-  const real = { count, points, q: row(), mu: row() }
-  return lossless ? real : { ...real, qIm: row(), muIm: row() }
 }

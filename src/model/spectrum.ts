@@ -1,6 +1,6 @@
-import { type MediaTable, type Side, spectrumInto, type WaveStack } from '../wave/index.js'
+import { type MediaTable, mediaTable, type Side, spectrumInto, type WaveStack } from '../wave/index.js'
 import { energiesOf } from './energiesOf.js'
-import { incoherentBack, mediaTable } from './incoherentBack.js'
+import { incoherentBack } from './incoherentBack.js'
 import { StackError } from './StackError.js'
 import { platedSystem, systemOf } from './systemOf.js'
 import type { ElectronStack, LightStack } from './types.js'
@@ -67,7 +67,7 @@ export function prepareSpectrum(
     throw new StackError('A stack with a `back` has no single layout. Call spectrum for it.')
   const { media, stack: waves } = systemOf(stack, from)
   const energies = energiesOf(stack, points, from)
-  const table = mediaTable(media.count, energies.length, media.lossless)
+  const table = mediaTable(media, energies.length)
   media.fill(energies, table)
   return { table, stack: waves, from }
 }

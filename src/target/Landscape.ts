@@ -2,7 +2,7 @@ import {
   type Extremum,
   extrema,
   halfWidth,
-  type MediaTable,
+  mediaTable,
   parameterGradient,
   slopeInto,
   type WaveSystem,
@@ -61,16 +61,12 @@ export class Landscape {
   slope(energiesEv: readonly number[]): Float64Array {
     const { media, stack } = this.system
     const energies = Float64Array.from(energiesEv)
-    const table = mediaTable(media.count, energies.length)
-    const slope = mediaTable(media.count, energies.length)
+    const table = mediaTable(media, energies.length)
+    const slope = mediaTable(media, energies.length)
     media.fill(energies, table)
     media.fillSlope(energies, slope)
     const dTdE = new Float64Array(energies.length)
     slopeInto(table, slope, stack, { T: new Float64Array(energies.length), dTdE })
     return dTdE
   }
-}
-
-function mediaTable(count: number, points: number): MediaTable {
-  return { count, points, q: new Float64Array(count * points), mu: new Float64Array(count * points) }
 }

@@ -1,7 +1,8 @@
 import type { ComplexSweep } from './complexSweep.js'
 import { logSlope } from './logSlope.js'
+import { mediaTable } from './mediaTable.js'
 import { slopeInto } from './slope.js'
-import type { MediaTable, Pole } from './types.js'
+import type { Pole } from './types.js'
 
 /** A maximum narrower than this (eV) is taken from its pole: energies as doubles can't resolve it. */
 export const needleEv = 1e-11
@@ -108,8 +109,8 @@ export class Stretch {
     const g = new Float64Array(points)
     if (points === 0) return g
     const { media, stack } = this.sweep.system
-    const table = mediaTable(media.count, points, media.lossless)
-    const slope = mediaTable(media.count, points, media.lossless)
+    const table = mediaTable(media, points)
+    const slope = mediaTable(media, points)
     const at = Float64Array.from(energies)
     media.fill(at, table)
     media.fillSlope(at, slope)
@@ -287,11 +288,4 @@ function mayHide(x: Float64Array, g: Float64Array, error: number): boolean {
     if (towardsZero && (vertex > 0 !== g[i] > 0 || Math.abs(vertex) <= margin * error)) return true
   }
   return false
-}
-
-function mediaTable(count: number, points: number, lossless: boolean): MediaTable {
-  const row = () => new Float64Array(count * points)
-  return lossless
-    ? { count, points, q: row(), mu: row() }
-    : { count, points, q: row(), mu: row(), qIm: row(), muIm: row() }
 }

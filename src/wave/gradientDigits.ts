@@ -1,6 +1,7 @@
 import { complexStepSlopes } from './complexStep.js'
 import { log10 } from './elementary.js'
 import { gradientInto } from './gradient.js'
+import { mediaTable } from './mediaTable.js'
 import { slopeInto } from './slope.js'
 import type { WaveSystem } from './types.js'
 
@@ -21,14 +22,8 @@ export function gradientDigits(system: WaveSystem, energy: number): GradientDigi
   if (truth === null) return null
   const { media, stack } = system
   const layers = stack.medium.length
-  const table = () => ({
-    count: media.count,
-    points: 1,
-    q: new Float64Array(media.count),
-    mu: new Float64Array(media.count),
-  })
-  const here = table()
-  const slope = table()
+  const here = mediaTable(media, 1)
+  const slope = mediaTable(media, 1)
   media.fill(Float64Array.of(energy), here)
   media.fillSlope(Float64Array.of(energy), slope)
   const T = new Float64Array(1)

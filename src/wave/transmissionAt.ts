@@ -1,3 +1,4 @@
+import { mediaTable } from './mediaTable.js'
 import { spectrumInto } from './spectrum.js'
 import { hardWall, type WaveSystem } from './types.js'
 
@@ -5,8 +6,7 @@ import { hardWall, type WaveSystem } from './types.js'
 export function transmissionAt(system: WaveSystem, energies: Float64Array): Float64Array {
   const { media, stack } = system
   const points = energies.length
-  const size = media.count * points
-  const table = { count: media.count, points, q: new Float64Array(size), mu: new Float64Array(size) }
+  const table = mediaTable(media, points)
   media.fill(energies, table)
   const T = new Float64Array(points)
   spectrumInto(table, stack, { T, R: new Float64Array(points) })
@@ -16,7 +16,7 @@ export function transmissionAt(system: WaveSystem, energies: Float64Array): Floa
 /** Both leads carry a propagating wave at this energy (eV); elsewhere T = 0. */
 export function openAt({ media, stack }: WaveSystem, energy: number): boolean {
   if (stack.exit === hardWall) return false
-  const table = { count: media.count, points: 1, q: new Float64Array(media.count), mu: new Float64Array(media.count) }
+  const table = mediaTable(media, 1)
   media.fill(Float64Array.of(energy), table)
   return table.q[stack.entry] > 0 && table.q[stack.exit] > 0
 }
