@@ -1,9 +1,10 @@
 import { type Design, designOf } from '../design/index.js'
 import { growthErrors, marginOf } from '../growth/index.js'
 import type { Job } from '../job/index.js'
-import type { RelaxedProblem, SearchProblem } from '../search/index.js'
+import type { RelaxedProblem, SearchChain, SearchProblem } from '../search/index.js'
 import { acceptedDemands, compareScores, compileTarget, type Score, type Target } from '../target/index.js'
 import type { WaveSystem } from '../wave/index.js'
+import { searchChain } from './searchChain.js'
 
 /** A job as the rooms see it: places and numbers for the search, and what they mean. */
 export interface BoundJob {
@@ -23,16 +24,21 @@ export function problemOf(job: Job): BoundJob {
   const curves = job.demands.filter(({ kind }) => kind === 'curve').length
   const onlyCurves = curves === job.demands.length
   const limitsAndGoals = curves > 0 && !onlyCurves
+  let chain: SearchChain | null | undefined
   const problem: SearchProblem = {
     places: design.places,
     stackCount: () => design.stackCount(),
-    points: target.points,
+    points: target.pointShares.length,
+    chain: () => {
+      chain = chain === undefined ? searchChain(design, target) : chain
+      return chain
+    },
     feasible: (assignment) => design.feasible(assignment),
     repair: (assignment) => design.repair(assignment),
     canonical: (assignment) => design.canonical(assignment),
     bound: (assignment) => target.bound(design.systems(assignment)),
-    // The points of a peak are its maxima, which no bound knows.
-    boundGuides: job.demands.every(({ kind }) => kind !== 'peak'),
+    // The points of peaks and bands are their maxima, which no bound knows.
+    boundGuides: job.demands.every(({ kind }) => kind !== 'peak' && kind !== 'band'),
     // Beside a goal, a stack that meets the limits comes before one that does not, whatever the merits. Merits that are equal at
     // 9 digits lie up to 1e-8 apart; limits are met up to 1e-9.
     reach: ({ met, merit }) => (met || !limitsAndGoals ? merit * (1 + 1e-8) + 1e-9 : Number.POSITIVE_INFINITY),

@@ -1,6 +1,7 @@
 import type { Job } from '../job/index.js'
 import { buildSystem } from '../model/index.js'
 import type { WaveSystem } from '../wave/index.js'
+import { chainOf } from './chainOf.js'
 import { countStacks, countsUpperBound } from './countStacks.js'
 import { Lattice, type Stretch } from './Lattice.js'
 import { canonicalOf } from './mirror.js'
@@ -31,6 +32,7 @@ export function designOf(job: Job): Design {
     totalNm: (assignment) => lattice.stretches(assignment).reduce((sum, stretch) => sum + widthNm(stretch), 0),
     id: (assignment) => stackId(lattice, lattice.stretches(assignment)),
     text: (assignment) => stackText(lattice, lattice.stretches(assignment)),
+    chain: () => chainOf(lattice),
     relax: (assignment) => relaxed(lattice, assignment),
   }
 }

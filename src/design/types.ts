@@ -48,8 +48,28 @@ export interface Design {
   id(assignment: Int32Array): string
   /** The readable text of a stack: `AlGaAs(0.35) 12 / GaAs 18 / AlGaAs(0.35) 12 ML`. */
   text(assignment: Int32Array): string
+  /** The stacks as products of their layers; null where a layer depends on more than its own places. */
+  chain(): Chain | null
   /** The continuous neighbourhood of an assignment: its lists of materials held, everything ordered set free. */
   relax(assignment: Int32Array): Relaxed
+}
+
+/** A lattice as a chain of layers, each decided by its own places, none merged or dropped. */
+export interface Chain {
+  /** From entry to exit. */
+  readonly links: readonly ChainLink[]
+  /** One a condition; row i is cell i: a medium and a width that some layer may have. Lossless. */
+  readonly systems: readonly WaveSystem[]
+  /** For each cell the number of the alloy that counts against the limit, -1 for none. */
+  readonly labels: Int32Array
+  /** At most so many different alloys in a stack. */
+  readonly mostLabels: number
+}
+
+export interface ChainLink {
+  readonly places: Int32Array
+  /** The cell of every combination of the places' choices, the last place fastest; -1 where there is none. */
+  readonly cells: Int32Array
 }
 
 /** Free widths, compositions and numbers as one vector of variables of order one. */

@@ -15,6 +15,8 @@ export interface SearchProblem {
   stackCount(): number
   /** Numbers that a bound reads of a stack. */
   readonly points: number
+  /** The stacks as products of matrices, one a link; null where they are none. */
+  chain(): SearchChain | null
   feasible(assignment: Int32Array): boolean
   /** The assignment itself when it is feasible, else a feasible one near it. */
   repair(assignment: Int32Array): Int32Array
@@ -31,6 +33,49 @@ export interface SearchProblem {
   compare(a: Score, b: Score): number
   /** The continuous problem around an assignment, for Levenberg-Marquardt. */
   relax(assignment: Int32Array): RelaxedProblem
+}
+
+/**
+ * A stack as a product M of real matrices of determinant 1 from a near end to a far end, each decided by a few places:
+ * T = 4 far / |(1, -i) M (1, i far)|². A matrix may have either sign.
+ */
+export interface SearchChain {
+  readonly links: readonly {
+    readonly places: Int32Array
+    /** The number of the matrix for every combination of the places' choices, the last place fastest; -1 where there is none. */
+    readonly cells: Int32Array
+  }[]
+  /** For each matrix a label that counts against the limit, -1 for none. */
+  readonly labels: Int32Array
+  /** At most so many different labels in a stack. Chain and limit say all about which assignments are feasible. */
+  readonly mostLabels: number
+  /** All that the bound reads of a stack: bound² = at least the sum of `square` and the greatest `extreme`. */
+  readonly points: readonly ChainPoint[]
+  matrices(at: readonly ChainAbscissa[]): ChainMatrices
+}
+
+/** Where a number T is read of a stack. */
+export interface ChainAbscissa {
+  readonly condition: number
+  readonly at: number
+}
+
+export interface ChainPoint extends ChainAbscissa {
+  /** 0 for T from `goal[0]` to `goal[1]`, growing on either side. */
+  square(T: number): number
+  extreme(T: number): number
+  readonly goal: readonly [number, number]
+}
+
+/** Entry p * cells + c belongs to matrix c at the p-th abscissa: [[same, down], [up, same]]. */
+export interface ChainMatrices {
+  readonly same: Float64Array
+  readonly down: Float64Array
+  readonly up: Float64Array
+  /** At each abscissa; 0: no transmission. */
+  readonly far: Float64Array
+  /** The greatest angle or exponent in any matrix: rounding grows with it. */
+  readonly angle: Float64Array
 }
 
 export interface RelaxedProblem {

@@ -38,6 +38,8 @@ export interface PointTerms {
   residual(i: number, T: number): number
   /** d(residual)/dT. */
   slope(i: number, T: number): number
+  /** The T without a residual, from and to; the residual grows on either side. */
+  goal(i: number): readonly [number, number]
   /** The least residual that the extreme over the range can have, by this point; 0 where there is no extreme or the point says nothing. */
   extreme(i: number, T: number): number
 }

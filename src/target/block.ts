@@ -33,6 +33,7 @@ export class BlockJudge implements Judge {
       share: () => 1 / pointsEv.length,
       residual: (_, T) => excess(T, below),
       slope: (_, T) => (T > below ? decibelSlope(T) / unitDb : 0),
+      goal: () => [0, below],
       // A maximum that the detector does not resolve may count less than the points on it; the ends count as they are.
       extreme: (i, T) =>
         resolutionEv === null || i === 0 || i === pointsEv.length - 1 ? excess(T * (1 - extremeError), below) : 0,

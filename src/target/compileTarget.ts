@@ -12,7 +12,8 @@ import { PointSpectrum } from './PointSpectrum.js'
 import { PassJudge } from './pass.js'
 import { PeakJudge } from './peak.js'
 import { peakSlopes } from './peakSlopes.js'
-import type { DemandResult, Evaluation, Limit, PeakFigures, Target } from './types.js'
+import { pointShares } from './pointShares.js'
+import type { DemandResult, Evaluation, Limit, PeakFigures, PointShare, Target } from './types.js'
 
 /** What of a job says how stacks are judged. */
 export type TargetSpec = Pick<Job, 'demands' | 'scanEv' | 'resolutionEv' | 'conditions'>
@@ -27,7 +28,7 @@ export function compileTarget(job: TargetSpec): Target {
 
 class CompiledTarget implements Target {
   readonly fitSize: number
-  readonly points: number
+  readonly pointShares: readonly PointShare[]
   private readonly judges: readonly Judge[]
   private readonly weights: readonly number[]
   /** Numbers of the conditions at which each demand holds. */
@@ -62,8 +63,7 @@ class CompiledTarget implements Target {
     const rows = this.judges.map(
       ({ terms, parts }, d) => this.holds[d].length * (parts + (terms?.energiesEv.length ?? 0)),
     )
-    const pointsOf = ({ terms }: Judge, d: number) => this.holds[d].length * (terms?.energiesEv.length ?? 0)
-    this.points = this.judges.map(pointsOf).reduce((sum, size) => sum + size, 0)
+    this.pointShares = this.judges.flatMap((judge, d) => pointShares(judge, this.holds[d], this.weights))
     this.fitSize = rows.reduce((sum, size) => sum + size, 0)
   }
 

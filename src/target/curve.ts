@@ -30,6 +30,7 @@ export class CurveJudge implements Judge {
       share: (i) => rows[i].weight / total,
       residual: (i, T) => violation(rows[i], goals[i], T),
       slope: (i, T) => violationSlope(rows[i], goals[i], T),
+      goal: (i) => goalOf(rows[i]),
       extreme: () => 0,
     }
   }
@@ -63,6 +64,12 @@ function violationSlope(row: CurveRow, goal: number, T: number): number {
   if (isFree(row, onScale(row, T) - goal)) return 0
   if (row.scale === 'linear') return 1 / row.tolerance
   return T > floor ? 1 / (Math.LN10 * T) / row.tolerance : 0
+}
+
+function goalOf({ T, sense, scale }: CurveRow): [number, number] {
+  const least = scale === 'decades' && T <= floor ? 0 : T
+  const most = scale === 'decades' ? Math.max(T, floor) : T
+  return [sense === 'most' ? 0 : least, sense === 'least' ? 1 : most]
 }
 
 /** On the side that the row allows. */

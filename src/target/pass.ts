@@ -27,6 +27,7 @@ export class PassJudge implements Judge {
       share: () => 1 / pointsEv.length,
       residual: (_, T) => this.lack(T),
       slope: (_, T) => (T < above ? -1 / Math.max(1 - above, 0.01) : 0),
+      goal: () => [above, 1],
       extreme: (_, T) => this.lack(T * (1 + extremeError)),
     }
   }

@@ -58,12 +58,23 @@ export interface Limit {
   readonly gradient: Float64Array
 }
 
+/** What T at one energy and condition adds to the merit squared. */
+export interface PointShare {
+  readonly condition: number
+  readonly energyEv: number
+  /** Its own term; none for T from `goal[0]` to `goal[1]`, growing on either side. */
+  square(T: number): number
+  /** What the extreme of its demand adds at least, by this point. Only the greatest of a demand at a condition counts. */
+  extreme(T: number): number
+  readonly goal: readonly [number, number]
+}
+
 /** The demands of a job, ready to judge stacks. Systems come one a condition, in the job's order. */
 export interface Target {
   /** Residuals of the fit: point terms and the parts of peaks. */
   readonly fitSize: number
-  /** Point terms of a stack, over all conditions. */
-  readonly points: number
+  /** All that a bound reads of a stack, over all conditions. */
+  readonly pointShares: readonly PointShare[]
   /** A lower bound of the merit from T at the points: their terms, and extremes that are at least as bad as the worst of them. */
   bound(systems: readonly WaveSystem[]): number
   /** The merit of the point terms alone. */

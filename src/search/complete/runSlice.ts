@@ -2,6 +2,9 @@ import type { Score } from '../../target/index.js'
 import type { SearchProblem } from '../types.js'
 import { BestStacks } from './BestStacks.js'
 import { everyStack } from './everyStack.js'
+import { HalvesSearch } from './HalvesSearch.js'
+import { HalvesSlice } from './HalvesSlice.js'
+import { splitOf } from './planComplete.js'
 import { mostMet, TooManyMet } from './TooManyMet.js'
 import type { CompletePlan, SliceResult } from './types.js'
 
@@ -16,6 +19,7 @@ export function runSlice(
   slice: number,
   startBound: Score | null,
 ): SliceResult {
+  if (plan.method === 'halves') return new HalvesSlice(searchOf(problem, startBound), startBound).run(plan, slice)
   const best = new BestStacks(problem, startBound)
   let examined = 0
   let met = 0
@@ -35,4 +39,16 @@ export function runSlice(
     best.offer(assignment, score)
   }
   return { slice, found: best.found, examined, cut: { 'point terms': cut } }
+}
+
+/** What the slices of a search by halves share is made once for a problem and a start bound. */
+const searches = new WeakMap<SearchProblem, { readonly id: string | null; readonly search: HalvesSearch }>()
+
+function searchOf(problem: SearchProblem, startBound: Score | null): HalvesSearch {
+  const id = startBound && JSON.stringify(startBound)
+  const known = searches.get(problem)
+  if (known?.id === id) return known.search
+  const search = new HalvesSearch(problem, problem.chain()!, splitOf(problem)!, startBound)
+  searches.set(problem, { id, search })
+  return search
 }

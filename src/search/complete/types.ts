@@ -2,8 +2,8 @@ import type { Found } from '../types.js'
 
 /** How every stack of a lattice will be accounted for. The same for the same problem, on any machine. */
 export interface CompletePlan {
-  /** `every stack`: each is built, and its bound computed. */
-  readonly method: 'every stack'
+  /** `halves`: stacks as pairs of tabulated halves. `every stack`: each is built, and its bound computed. */
+  readonly method: 'halves' | 'every stack'
   /** Different stacks on the lattice. */
   readonly stacks: number
   /** Assignments of the places, feasible or not. */
