@@ -14,7 +14,7 @@ const sampledUnits: Readonly<Record<SearchSpec['effort'], number>> = { brief: 64
 
 /**
  * What an effort lets `auto` search completely: stacks times points, and the stacks that must be looked at one by one. The first is the
- * contract's; the second keeps the promise of its name where no faster way is known, at some 20 us a stack.
+ * contract's; the second keeps a night a night where stacks can't be taken as pairs of halves, at some 20 us a stack.
  */
 const completeUpTo: Readonly<Record<SearchSpec['effort'], { readonly cost: number; readonly stacks: number }>> = {
   brief: { cost: 1e8, stacks: 1e6 },
