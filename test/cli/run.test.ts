@@ -126,7 +126,7 @@ describe('a run', () => {
 })
 
 describe('a complete search', () => {
-  /** 115 101 assignments, 58 464 stacks with their mirror images, in four slices, judged at few points. */
+  /** 115 101 assignments in four slices, judged at few points; a rule on widths keeps them from being taken as pairs of halves. */
   const job = smallJob
     .replace(
       /stack:[\s\S]*target:/,
@@ -137,6 +137,7 @@ describe('a complete search', () => {
     - { id: well, potential: 0 meV, mass: 0.067, width: 2..9 nm step 0.25 nm }
     - { id: rear, potential: 0.2..0.4 eV step 100 meV, mass: 0.08, width: 1..6 nm step 0.25 nm }
   exit: { potential: 0 meV, mass: 0.067 }
+  rising: [front, well]
 target:`,
     )
     .replace(/- \{ peak[^\n]*/, '- { block: 100..200 meV, below: 1e-3, points: 8 }')
@@ -161,9 +162,9 @@ target:`,
     const whole = withJob(job)
     expect((await command(['run', 'job.yaml', '--threads', '1'], whole)).code).toBe(0)
     const recordOf = (at: string) => JSON.parse(readFileSync(join(at, 'results', 'small', 'record.json'), 'utf8'))
-    const { method, stacks, statement, units } = recordOf(folder)
-    expect([method, stacks, units]).toEqual(['complete', 58_464, 4])
-    expect(statement).toMatch(/^complete: each of the 58464 stacks/)
+    const { method, statement, units } = recordOf(folder)
+    expect([method, units]).toEqual(['complete', 4])
+    expect(statement).toMatch(/^complete: each of the \d{5} stacks/)
     expect(statement).toBe(recordOf(whole).statement)
     expect(tablesAndPictures(place)).toEqual(tablesAndPictures(join(whole, 'results', 'small')))
   })
