@@ -46,9 +46,10 @@ describe('text that no engineer wrote is a job error within a second', () => {
   }
   for (const [name, bomb] of Object.entries(bombs)) {
     test(name, () => {
-      const start = performance.now()
+      // The processor's time: another program's load is no fault of the reader.
+      const start = process.cpuUsage()
       const error = errorOf(() => readJobText(bomb, 'bomb.yaml', { 'goal.csv': table }))
-      expect(performance.now() - start).toBeLessThan(1000)
+      expect(process.cpuUsage(start).user / 1000).toBeLessThan(1000)
       expect(error.message.length).toBeLessThan(50_000)
       for (const { line, column, rule, remedy } of error.problems) {
         expect(line).toBeGreaterThan(0)

@@ -13,14 +13,15 @@ describe('a job with a mistake gets the message that says what to write', () => 
   for (const name of readdirSync(cases).filter((name) => name.startsWith('jobs-'))) {
     test(name.slice('jobs-'.length).replaceAll('-', ' '), async () => {
       const folder = `${cases}${name}/`
-      const start = performance.now()
+      // The processor's time: another program's load is no fault of the reader.
+      const start = process.cpuUsage()
       const error = await readJob(`${folder}job.yaml`).catch((error: unknown) => error)
-      const elapsedMs = performance.now() - start
+      const spentMs = process.cpuUsage(start).user / 1000
       expect(error).toBeInstanceOf(JobError)
       const said = (error as JobError).message.replaceAll(folder, '')
       expect(existsSync(`${folder}expected.txt`)).toBe(true)
       expect(`${said}\n`).toBe(readFileSync(`${folder}expected.txt`, 'utf8'))
-      expect(elapsedMs).toBeLessThan(1000)
+      expect(spentMs).toBeLessThan(1000)
     })
   }
 })
