@@ -6,3 +6,4 @@ export type { Alloy, Binary, Bowing, Gap, Material, Sourced } from './material.j
 export { materialNotes } from './materialNotes.js'
 export { isMaterial, material, materialNames, materials, needsX } from './materials.js'
 export { nearest } from './nearest.js'
+export * from './optical/index.js'

@@ -1,7 +1,7 @@
 import { readdirSync } from 'node:fs'
 import { fileURLToPath } from 'node:url'
 import { describe, expect, it } from 'vitest'
-import { materialNames } from '../../src/media/index.js'
+import { materialNames, opticalNames } from '../../src/media/index.js'
 import { command, emptyFolder, smallJob, withJob } from './commandLine.js'
 
 const jobs = fileURLToPath(new URL('../../jobs', import.meta.url))
@@ -68,12 +68,16 @@ describe('new', () => {
 describe('materials', () => {
   it('lists every material', async () => {
     const { stdout } = await command(['materials'], emptyFolder())
-    for (const name of materialNames) expect(stdout).toContain(name)
+    for (const name of [...materialNames, ...opticalNames]) expect(stdout).toContain(name)
   })
 
   it('gives each number of one with its source', async () => {
     const { stdout } = await command(['materials', 'GaAs'], emptyFolder())
     expect(stdout).toMatch(/lattice constant at 300 K +0\.565325 +nm +\S/)
+    const silver = await command(['materials', 'Ag'], emptyFolder())
+    expect(silver.stdout).toMatch(/index at 2\.26 eV +0\.06 +Johnson and Christy/)
+    expect(silver.stdout).toContain('Meant for 321..1937 nm')
+    expect(silver.stdout).toContain('50 %')
   })
 })
 

@@ -1,0 +1,5 @@
+export { monotoneCubic } from './monotoneCubic.js'
+export type { Dispersion, OpticalMaterial, OpticalRow } from './OpticalMaterial.js'
+export { type OpticalConstants, opticalConstants, tableConstants } from './opticalConstants.js'
+export { isOptical, opticalMaterial, opticalMaterials, opticalNames } from './opticalMaterials.js'
+export { opticalNumbers } from './opticalNumbers.js'
