@@ -10,6 +10,7 @@ import { engineVersion } from './engine.js'
 import { jobHash, resumeHash, yieldHash } from './hashes.js'
 import { Journal } from './Journal.js'
 import { type Method, methodOf } from './methodOf.js'
+import { nonDominated } from './nonDominated.js'
 import { OrderedFold } from './OrderedFold.js'
 import { type BoundJob, problemOf } from './problem.js'
 import { Pace, type Progress } from './progress.js'
@@ -196,7 +197,7 @@ class Run {
     for (const { id, fluxError, pathError } of refused) {
       notes.push(`Stack ${id} is not listed: its check fails (flux error ${fluxError}, path error ${pathError}).`)
     }
-    const result: JobResult = { name: job.name, folder, candidates, record: this.record(), notes }
+    const result: JobResult = { name: job.name, folder, candidates, record: this.record(candidates), notes }
     writeResults(folder, job, result)
     return result
   }
@@ -216,7 +217,7 @@ class Run {
     }
   }
 
-  private record(): RunRecord {
+  private record(candidates: readonly Candidate[]): RunRecord {
     const { job, bound, archive, method } = this
     const stacks = bound.design.stackCount()
     return {
@@ -228,10 +229,13 @@ class Run {
       method: method.plan ? 'complete' : 'sampled',
       units: archive.units,
       starts_in_best: method.plan ? 0 : archive.startsInBest,
+      unseen_share: method.plan ? null : archive.unseenShare,
+      merit_after_tenths: archive.meritAfterTenths.map((merit) => (Number.isNaN(merit) ? null : merit)),
       stacks,
       examined: archive.examined,
       cut: method.plan ? this.cutByName() : { 'point terms': archive.cut },
       statement: this.statement(stacks),
+      non_dominated: nonDominated(candidates),
       stopped_early: archive.units < this.total,
       seconds: Number(this.workSeconds.toFixed(3)),
     }
@@ -242,6 +246,7 @@ class Run {
     if (method.plan === null) {
       return (
         `sampled: ${archive.units} independent starts among ${stacks} stacks; ${archive.startsInBest} of them ended in the best stack. ` +
+        `One more would end in a stack not seen before with a chance of about ${share(archive.unseenShare)}. ` +
         'A stack that several starts looked at counts for each. Nothing is claimed of stacks that no start came to.'
       )
     }
@@ -320,6 +325,11 @@ class Run {
       bestMargin: best?.margin ?? null,
     })
   }
+}
+
+/** In per cent, two digits. */
+function share(part: number | null): string {
+  return part === null ? '100 %' : `${Number((100 * part).toPrecision(2))} %`
 }
 
 function* tasksOf<T>(numbers: Iterable<number>, taskOf: (number: number) => T): Iterable<T> {

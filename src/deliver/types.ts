@@ -67,10 +67,16 @@ export interface RunRecord {
   readonly method: string
   readonly units: number
   readonly starts_in_best: number
+  /** About the chance that one more start ends in a stack in which none has ended (Good, 1953); null for a complete search. */
+  readonly unseen_share: number | null
+  /** Of the best after each tenth of the units, so far as they are done; null where there was none. */
+  readonly merit_after_tenths: readonly (number | null)[]
   readonly stacks: number
   readonly examined: number
   readonly cut: Readonly<Record<string, number>>
   readonly statement: string
+  /** Ids of the listed stacks that no other one betters in yield, total width and number of compositions at once. */
+  readonly non_dominated: readonly string[]
   readonly stopped_early: boolean
   readonly seconds: number
 }

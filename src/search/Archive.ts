@@ -52,6 +52,17 @@ export class Archive {
     return best ? (this.startsByBest.get(best.score.id) ?? 0) : 0
   }
 
+  /**
+   * About the chance that one more start ends in a stack in which none has ended, as it must where it finds a better one: Good's
+   * estimate, end points seen once over starts (I. J. Good, Biometrika 40, 237, 1953; after Turing). Null before the first start.
+   */
+  get unseenShare(): number | null {
+    if (this.units === 0) return null
+    let once = 0
+    for (const starts of this.startsByBest.values()) if (starts === 1) once++
+    return once / this.units
+  }
+
   private merge(found: readonly Found[]): void {
     const known = new Set(this.stacks.map(({ score }) => score.id))
     const fresh = found.filter(({ score }) => !known.has(score.id))

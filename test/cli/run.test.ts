@@ -1,6 +1,7 @@
 import { existsSync, mkdirSync, readdirSync, readFileSync, symlinkSync, writeFileSync } from 'node:fs'
 import { hostname } from 'node:os'
 import { join } from 'node:path'
+import { parse } from 'csv-parse/sync'
 import { describe, expect, it } from 'vitest'
 import { nextTime } from '../../src/cli/run.js'
 import { command, smallJob, start, tablesAndPictures, unitsIn, withJob } from './commandLine.js'
@@ -10,6 +11,12 @@ const pause = (ms: number) => new Promise((resolve) => setTimeout(resolve, ms))
 /** Waits until a journal holds so many units, or the process has ended. */
 async function until(folder: string, units: number, ended: () => boolean): Promise<void> {
   while (!ended() && !(existsSync(join(folder, 'journal.ndjson')) && unitsIn(folder) >= units)) await pause(5)
+}
+
+/** record.json but for the computing time. */
+function untimedRecord(folder: string): Record<string, unknown> {
+  const { seconds: _, ...record } = JSON.parse(readFileSync(join(folder, 'record.json'), 'utf8'))
+  return record
 }
 
 describe('a run', () => {
@@ -29,6 +36,12 @@ describe('a run', () => {
     const record = JSON.parse(readFileSync(join(results, 'record.json'), 'utf8'))
     expect(record).toMatchObject({ method: 'sampled', units: 64, stacks: 36, seed: 11, stopped_early: false })
     expect(record.starts_in_best).toBeGreaterThan(0)
+    expect(record.unseen_share).toBeLessThan(1)
+    expect(record.merit_after_tenths.length).toBe(10)
+    const rows: { id: string }[] = parse(readFileSync(join(results, 'candidates.csv')), { columns: true })
+    const ids = rows.map(({ id }) => id)
+    expect(record.non_dominated.length).toBeGreaterThan(0)
+    expect(ids).toEqual(expect.arrayContaining(record.non_dominated))
     expect(stderr).toContain('AlGaAs(0.35) 11 / GaAs 18 / AlGaAs(0.35) 11 ML')
   })
 
@@ -37,6 +50,7 @@ describe('a run', () => {
     const folder = withJob()
     expect((await command(['run', 'job.yaml', '--threads', '2'], folder)).code).toBe(0)
     expect(tablesAndPictures(join(folder, 'results', 'small'))).toEqual(tablesAndPictures(results))
+    expect(untimedRecord(join(folder, 'results', 'small'))).toEqual(untimedRecord(results))
   })
 
   it('gives the same bytes after three kills, and loses no finished unit', async () => {
@@ -61,6 +75,7 @@ describe('a run', () => {
     expect((await command(['run', 'job.yaml', '--threads', '2'], folder)).code).toBe(0)
     expect(unitsIn(place)).toBe(64)
     expect(tablesAndPictures(place)).toEqual(tablesAndPictures(results))
+    expect(untimedRecord(place)).toEqual(untimedRecord(results))
     expect(existsSync(join(place, 'run.lock'))).toBe(false)
   })
 

@@ -202,7 +202,16 @@ export function sampleResult(candidates: readonly Candidate[] = [sampleCandidate
     candidates,
     record: {
       ...{ engine: '0.1.0', kernel: 'ts', job_hash: 'ab', resume_hash: 'cd', seed: 11, method: 'sampled', units: 64 },
-      ...{ starts_in_best: 40, stacks: 630, examined: 5000, cut: { points: 3000 }, statement: 'sampled' },
+      ...{
+        starts_in_best: 40,
+        unseen_share: 0.125,
+        merit_after_tenths: [0.5, 0.1],
+        non_dominated: [],
+        stacks: 630,
+        examined: 5000,
+        cut: { points: 3000 },
+        statement: 'sampled',
+      },
       ...{ stopped_early: false, seconds: 1.5 },
     },
     notes: ['12.0 nm of well were rounded to 42 ML.'],

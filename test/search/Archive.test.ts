@@ -34,6 +34,14 @@ describe('Archive', () => {
     expect(folded([]).startsInBest).toBe(0)
   })
 
+  it("estimates the chance of an end point not seen yet by Good's share of those seen once", () => {
+    // Ends 1, 1, 1, 2, 2, 3, 4: two of seven starts ended where no other did.
+    const ends = [1, 2, 1, 3, 2, 1, 4].map((merit, i) => unit(i, merit))
+    expect(folded(ends).unseenShare).toBe(2 / 7)
+    expect(folded(ends.slice(0, 1)).unseenShare).toBe(1)
+    expect(folded([]).unseenShare).toBeNull()
+  })
+
   it('tells the best merit after each tenth', () => {
     const late = Array.from({ length: 20 }, (_, i) => unit(i, 20 - i))
     expect(folded(late).meritAfterTenths).toEqual([19, 17, 15, 13, 11, 9, 7, 5, 3, 1])
