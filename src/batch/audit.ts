@@ -10,14 +10,20 @@ export const worstPathError = 1e-6
 
 /**
  * The largest relative difference of T from that of an independent scattering recursion, at 8 energies spread over the scan and at
- * `peakEv` (null: left out, as for lines that doubles can't resolve).
+ * `peakEv` (null: left out, as for lines that doubles can't resolve). Of both waves where there are two; without the plate behind.
  */
-export function pathError(system: WaveSystem, scanEv: readonly [number, number], peakEv: number | null): number {
+export function pathError(
+  { media, stack, beside }: WaveSystem,
+  scanEv: readonly [number, number],
+  peakEv: number | null,
+): number {
   const [low, high] = scanEv
   const energies = Array.from({ length: checked }, (_, i) => low + ((high - low) * (i + 0.5)) / checked)
   if (peakEv !== null) energies.push(peakEv)
+  const system = { media, stack }
   const { T } = spectrumOf(system, Float64Array.from(energies))
-  return energies.reduce((worst, energy, i) => Math.max(worst, difference(T[i], scatteringT(system, energy))), 0)
+  const other = beside ? pathError(beside, scanEv, peakEv) : 0
+  return energies.reduce((worst, energy, i) => Math.max(worst, difference(T[i], scatteringT(system, energy))), other)
 }
 
 function difference(a: number, b: number): number {

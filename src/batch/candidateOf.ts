@@ -1,7 +1,7 @@
 import type { Candidate, LayerReport } from '../deliver/index.js'
 import { sheetOf, type Yield } from '../growth/index.js'
 import type { Job } from '../job/index.js'
-import { resonances } from '../wave/index.js'
+import { type PoleList, resonances, type WaveSystem } from '../wave/index.js'
 import { pathError } from './audit.js'
 import type { BoundJob } from './problem.js'
 import { profileOf } from './profileOf.js'
@@ -29,8 +29,8 @@ export function candidateOf(job: Job, { design, target }: BoundJob, listed: List
   const limits = target.limits(systems, evaluation)
   const { peak } = evaluation
   const sheet = sheetOf({ layers, situation, growth: job.growth, target, evaluation, limits })
-  const poles = resonances(system, job.scanEv, { count: true })
-  const energyEv = reportEnergies(job.scanEv, poles.poles, peak)
+  const poles = polesOf(system, job.scanEv)
+  const energyEv = reportEnergies(job, poles.poles, peak)
   const spectra = systems.map((one, i) => ({
     condition: job.conditions[i].name,
     energyEv,
@@ -63,9 +63,21 @@ export function candidateOf(job: Job, { design, target }: BoundJob, listed: List
     profile: profileOf(system, situation, layers, peak?.energyEv ?? null),
     notes: [
       ...stackNotes(job, layers, poles),
-      ...strainNotes(layers, situation.substrateNm),
+      ...(situation.kind === 'electron' ? strainNotes(layers, situation.substrateNm) : []),
       ...sliceNotes(job, { design, target }, layers, evaluation),
     ],
+  }
+}
+
+/** Of both waves where there are two. */
+function polesOf(system: WaveSystem, scanEv: readonly [number, number]): PoleList {
+  const own = resonances(system, scanEv, { count: true })
+  if (!system.beside) return own
+  const other = resonances(system.beside, scanEv, { count: true })
+  return {
+    poles: [...own.poles, ...other.poles].sort((a, b) => a.energyEv - b.energyEv),
+    counted: own.counted === null || other.counted === null ? null : own.counted + other.counted,
+    complete: own.complete && other.complete,
   }
 }
 

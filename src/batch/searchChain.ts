@@ -9,7 +9,7 @@ import { layerMatrices } from '../wave/index.js'
  */
 export function searchChain(design: Design, target: Target): SearchChain | null {
   const chain = design.chain()
-  if (chain === null || target.pointShares.length === 0) return null
+  if (chain === null || target.pointShares.length === 0 || !target.onlyT) return null
   const { links, systems, labels, mostLabels } = chain
   const points = target.pointShares.map(({ condition, energyEv, square, extreme, goal }) => ({
     condition,

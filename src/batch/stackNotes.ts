@@ -13,7 +13,7 @@ export function stackNotes(job: Job, layers: readonly GrownLayer[], poles: PoleL
     )
   }
   for (const { choice } of layers) {
-    if (choice.kind !== 'material') continue
+    if (choice.kind !== 'material' || job.kind === 'light') continue
     for (const { temperatureK } of job.conditions) notes.push(...materialNotes(choice.material, choice.x, temperatureK))
   }
   return [...new Set(notes)]

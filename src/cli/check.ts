@@ -1,8 +1,9 @@
 import { availableParallelism } from 'node:os'
 import { performance } from 'node:perf_hooks'
 import { type FirstLook, firstLook, methodOf, problemOf } from '../batch/index.js'
+import { spectralUnit } from '../deliver/index.js'
 import type { Design } from '../design/index.js'
-import type { Job } from '../job/index.js'
+import { energiesAround, type Job } from '../job/index.js'
 import { type CompletePlan, runSlice, type SearchProblem } from '../search/index.js'
 import { contradictions } from '../target/index.js'
 import { colours, print, sayError } from './console.js'
@@ -41,10 +42,9 @@ function explanation(job: Job, gradients: boolean): string {
   const unitSeconds = (performance.now() - start) / 1000
   const threads = availableParallelism()
   const points = job.demands.reduce((sum, demand) => sum + pointsOf(demand), 0) * job.conditions.length
-  const [low, high] = job.scanEv
   const rows: [string, string][] = [
-    ['conditions', job.conditions.map(conditionText).join('; ')],
-    ['scan', `${short(low * 1000)}..${short(high * 1000)} meV`],
+    ['conditions', job.conditions.map((condition) => conditionText(condition, job.kind)).join('; ')],
+    ['scan', spectralUnit(job.kind).rangeText(job.scanEv)],
     ['demands', job.demands.map(({ id, kind }) => `${id} ${kind}`).join(', ')],
     ...variableRows(design),
     ['stacks', `${countText(design.stackCount())} different ones on the lattice`],
@@ -81,12 +81,20 @@ function explanation(job: Job, gradients: boolean): string {
 }
 
 /** One monolayer that moves the peak out of its window can't be grown reliably. */
-function tooSensitive({ demands }: Job, { mostSensitive, stack }: FirstLook): string[] {
+function tooSensitive({ kind, demands }: Job, { mostSensitive, stack }: FirstLook): string[] {
   const peak = demands.find((demand) => demand.kind === 'peak')
-  if (!peak || !mostSensitive || Math.abs(mostSensitive.shiftEv) <= peak.withinEv) return []
+  if (!peak || !mostSensitive) return []
+  const { layer, shiftEv } = mostSensitive
+  const allowed = Math.abs(energiesAround(peak, peak.within)[1] - energiesAround(peak, 0)[1])
+  if (Math.abs(shiftEv) <= allowed) return []
+  const unit = spectralUnit(kind)
+  const at = energiesAround(peak, 0)[0]
   return [
-    `One monolayer (or step) more of layer ${mostSensitive.layer} moves the peak by ${short(mostSensitive.shiftEv * 1000)} meV, but ` +
-      `${peak.id} allows ${short(peak.withinEv * 1000)} meV (stack ${stack}). A wider window, or wider wells, would be grown more surely.`,
+    `${kind === 'electron' ? 'One monolayer (or step)' : 'One nm'} more of layer ${layer} moves the peak by ${unit.shiftText(shiftEv, at)}, but ` +
+      `${peak.id} allows ${unit.shiftText(allowed, at).replace('-', '')} (stack ${stack}). ` +
+      (kind === 'electron'
+        ? 'A wider window, or wider wells, would be grown more surely.'
+        : 'A wider window would be coated more surely.'),
   ]
 }
 
@@ -126,8 +134,11 @@ function pointsOf(demand: Job['demands'][number]): number {
   return demand.kind === 'curve' ? demand.rows.length : 0
 }
 
-function conditionText({ name, temperatureK, biasV, inPlaneEv }: Job['conditions'][number]): string {
-  const parts = [`${short(temperatureK)} K`]
+function conditionText(condition: Job['conditions'][number], kind: Job['kind']): string {
+  const { name, temperatureK, biasV, inPlaneEv, angleDeg, polarisation } = condition
+  const tilted = polarisation === 'mean' ? 'half s, half p' : `${polarisation}-polarised`
+  const optical = angleDeg === 0 ? ['normal incidence'] : [`${short(angleDeg)} degrees`, tilted]
+  const parts = kind === 'light' ? optical : [`${short(temperatureK)} K`]
   if (biasV !== 0) parts.push(`${short(biasV * 1000)} mV`)
   if (inPlaneEv !== 0) parts.push(`${short(inPlaneEv * 1000)} meV in plane`)
   return name === '' ? parts.join(', ') : `${name}: ${parts.join(', ')}`

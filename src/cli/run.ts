@@ -79,7 +79,7 @@ function report(job: Job, result: JobResult, { json, quiet }: RunArguments): voi
   if (!quiet) {
     say(colours.bold(job.name))
     for (const note of notes) say(`note  ${note}`)
-    if (candidates.length > 0) say(candidateTable(result))
+    if (candidates.length > 0) say(candidateTable(result, job.kind))
     say(`${limitsText(job, met, candidates.length)} ${sentence(record.statement)}`)
     if (record.stopped_early)
       say(`Stopped early, after ${record.units} units; the same command without --until goes on.`)

@@ -1,4 +1,4 @@
-import type { CurveDemand, Demand } from '../job/index.js'
+import { type CurveDemand, type Demand, energiesAround } from '../job/index.js'
 import type { Box, Frame } from './frame.js'
 import { forbidden } from './hatch.js'
 import { fitted, label, textWidth } from './label.js'
@@ -6,20 +6,23 @@ import { palette } from './palette.js'
 import { pushApart } from './pushApart.js'
 import { element, fixed } from './svg.js'
 
-/** A frame whose x is meV; `height` maps T to pixels, on whatever scale. */
+/** `across` maps an energy (eV) to pixels, `height` T, on whatever scales. */
 export interface DemandFrame {
   readonly plot: Frame
+  readonly across: (ev: number) => number
   readonly height: (T: number) => number
   readonly key: string
 }
 
 /** The place of a demand in a plot of T: a window for a peak or the centre of a band, a no-go region for a block or a pass, nothing for a curve. */
-export function demandRegion({ plot, height, key }: DemandFrame, demand: Demand): string {
-  if (demand.kind === 'curve') return ''
+export function demandRegion(frame: DemandFrame, demand: Demand): string {
+  const { plot, height, key } = frame
+  // Limits of R or A have no place beside T.
+  if (demand.kind === 'curve' || demand.quantity !== 'T') return ''
   // One pixel more than the box, so that only the inner edge shows as a line.
   const top = plot.box.top - 2
   const bottom = plot.box.top + plot.box.height + 2
-  const across = spanInside(plot, rangeEv(demand))
+  const across = spanInside(frame, rangeEv(demand))
   if (across === null) return ''
   const { left, right } = across
   if (demand.kind === 'block') return forbidden({ left, right, top, bottom: height(demand.below) }, 'bottom', key)
@@ -36,11 +39,12 @@ export function demandRegion({ plot, height, key }: DemandFrame, demand: Demand)
  * the clip path goes wrong where a plot magnifies a million times: viewers overflow.)
  */
 export function spanInside(
-  { box, x }: Frame,
+  { plot: { box }, across }: Pick<DemandFrame, 'across' | 'plot'>,
   [fromEv, toEv]: readonly [number, number],
 ): { left: number; right: number } | null {
   const [least, most] = [box.left - 2, box.left + box.width + 2]
-  const [left, right] = [x(fromEv * 1000), x(toEv * 1000)]
+  const ends = [across(fromEv), across(toEv)]
+  const [left, right] = [Math.min(...ends), Math.max(...ends)]
   return right < least || left > most ? null : { left: Math.max(left, least), right: Math.min(right, most) }
 }
 
@@ -48,12 +52,14 @@ export function spanInside(
 const mostGoals = 150
 
 /** The table of a curve demand: a dot a row; triangles point to the side where T may be. */
-export function goalMarks({ plot, height }: DemandFrame, { rows }: CurveDemand): string {
+export function goalMarks(frame: DemandFrame, { rows, quantity }: CurveDemand): string {
+  if (quantity !== 'T') return ''
+  const { across, height } = frame
   const every = Math.ceil(rows.length / mostGoals)
   const marks = rows
-    .filter(({ T, energyEv }, i) => i % every === 0 && T > 0 && spanInside(plot, [energyEv, energyEv]) !== null)
+    .filter(({ T, energyEv }, i) => i % every === 0 && T > 0 && spanInside(frame, [energyEv, energyEv]) !== null)
     .map(({ energyEv, T, sense }) => {
-      const x = plot.x(energyEv * 1000)
+      const x = across(energyEv)
       const y = height(T)
       if (sense === 'equal') return element('circle', { cx: x, cy: y, r: 2.2 })
       const tip = sense === 'least' ? -5 : 5
@@ -64,10 +70,10 @@ export function goalMarks({ plot, height }: DemandFrame, { rows }: CurveDemand):
 }
 
 /** The ids of the demands above the plot, each led to its region; none when they don't fit side by side: the table names them all. */
-export function demandLabels({ plot }: DemandFrame, demands: readonly Demand[]): string[] {
+export function demandLabels({ plot, across }: DemandFrame, demands: readonly Demand[]): string[] {
   const { box } = plot
   const texts = demands.map(({ id }) => fitted(id, 110, 12))
-  const wishes = demands.map((demand) => held(box, plot.x(middleEv(demand) * 1000)))
+  const wishes = demands.map((demand) => held(box, across(middleEv(demand))))
   const widths = texts.map((text) => textWidth(text, 12) + 10)
   const places = pushApart(wishes, widths, box.left, box.left + box.width)
   if (places === null) return []
@@ -82,10 +88,9 @@ export function demandLabels({ plot }: DemandFrame, demands: readonly Demand[]):
 
 /** The energies that a demand speaks of. */
 export function rangeEv(demand: Demand): readonly [number, number] {
-  if (demand.kind === 'peak' || demand.kind === 'band')
-    return [demand.energyEv - demand.withinEv, demand.energyEv + demand.withinEv]
+  if (demand.kind === 'peak' || demand.kind === 'band') return energiesAround(demand, demand.within)
   const energies = demand.kind === 'curve' ? demand.rows.map(({ energyEv }) => energyEv) : demand.pointsEv
-  return [energies[0], energies[energies.length - 1]]
+  return [Math.min(...energies), Math.max(...energies)]
 }
 
 function middleEv(demand: Demand): number {

@@ -1,9 +1,10 @@
 import type { Demand, Job } from '../job/index.js'
 import type { DemandResult } from '../target/index.js'
 import { fitted, label, textWidth, wrapped } from './label.js'
-import { energyText, short } from './layerText.js'
+import { short } from './layerText.js'
 import { palette } from './palette.js'
 import type { PictureBody } from './picture.js'
+import { lineText, type SpectralUnit, spectralUnit, widthsText } from './spectralUnit.js'
 import { element } from './svg.js'
 import type { Candidate } from './types.js'
 
@@ -22,7 +23,7 @@ const mostRows = 24
 export function demandRows(job: Job, { evaluation }: Candidate): DemandRow[] {
   return job.demands.flatMap((demand) => {
     const result = evaluation.demands.find(({ id }) => id === demand.id)
-    const [first, ...others] = partsOf(demand, result)
+    const [first, ...others] = partsOf(demand, result, spectralUnit(job.kind))
     if (demand.at !== null) others.push({ wanted: `at ${demand.at}`, reached: '' })
     const state = result === undefined ? '' : result.met === null ? 'goal' : result.met ? 'met' : 'missed'
     return [
@@ -33,7 +34,7 @@ export function demandRows(job: Job, { evaluation }: Candidate): DemandRow[] {
 }
 
 /** What else a planner asks first: how good, how sure, how sensitive. */
-export function factLines({ growth }: Job, candidate: Candidate): string[] {
+export function factLines({ growth, kind }: Job, candidate: Candidate): string[] {
   const { evaluation, margin, yield: grown, limitingDemand, worstLayer, worstShiftEv } = candidate
   const assumed = growth.assumed ? ', assumed growth errors' : ''
   const lines = [
@@ -48,7 +49,9 @@ export function factLines({ growth }: Job, candidate: Candidate): string[] {
   if (limitingDemand !== null) lines.push(`Fails most often: ${limitingDemand}.`)
   if (worstLayer !== null && worstShiftEv !== null) {
     lines.push(
-      `Most sensitive: ${worstLayer}, ${short(worstShiftEv * 1000).replace('-', '\u2212')} meV for one deviation of its width.`,
+      `Most sensitive: ${worstLayer}, ${spectralUnit(kind)
+        .shiftText(worstShiftEv, evaluation.peak?.energyEv ?? null)
+        .replace('-', '\u2212')} for one deviation of its width.`,
     )
   }
   return lines
@@ -100,25 +103,29 @@ export function demandTable(
 
 type Part = Pick<DemandRow, 'wanted' | 'reached'>
 
-function partsOf(demand: Demand, result: DemandResult | undefined): [Part, ...Part[]] {
+function partsOf(demand: Demand, result: DemandResult | undefined, unit: SpectralUnit): [Part, ...Part[]] {
+  const { quantity } = demand
   const reached = result?.reached ?? null
   if (demand.kind === 'curve') {
     return [{ wanted: `curve ${demand.file}`, reached: reached === null ? '' : `rms ${short(reached)}` }]
   }
   if (demand.kind === 'pass' || demand.kind === 'block') {
-    const [from, to] = [demand.pointsEv[0], demand.pointsEv[demand.pointsEv.length - 1]].map(meVText)
-    const limit = demand.kind === 'block' ? `T \u2264 ${short(demand.below)}` : `T \u2265 ${short(demand.above)}`
+    const range = unit.rangeText([demand.pointsEv[0], demand.pointsEv[demand.pointsEv.length - 1]])
+    const limit =
+      demand.kind === 'block'
+        ? `${quantity} \u2264 ${short(demand.below)}`
+        : `${quantity} \u2265 ${short(demand.above)}`
     const extreme = result?.extremeEv ?? null
     return [
-      { wanted: `${demand.kind} ${from}..${to} meV`, reached: reached === null ? '' : `T = ${short(reached)}` },
-      { wanted: limit, reached: extreme === null ? '' : `at ${meVText(extreme)} meV` },
+      { wanted: `${demand.kind} ${range}`, reached: reached === null ? '' : `${quantity} = ${short(reached)}` },
+      { wanted: limit, reached: extreme === null ? '' : `at ${unit.text(extreme)}` },
     ]
   }
   const peak = result?.peak ?? null
   const parts: Part[] = []
-  if (demand.fwhmEv !== null) {
-    const [least, most] = demand.fwhmEv.map(meVText)
-    parts.push({ wanted: `fwhm ${least}..${most} meV`, reached: peak === null ? '' : energyText(peak.fwhmEv) })
+  if (demand.fwhm !== null) {
+    const wanted = `fwhm ${widthsText(demand.axis, demand.fwhm)}`
+    parts.push({ wanted, reached: peak === null ? '' : unit.widthText(peak) })
   }
   const figure = (wanted: string, limit: number | null, value: number | undefined) => {
     if (limit !== null)
@@ -132,12 +139,8 @@ function partsOf(demand: Demand, result: DemandResult | undefined): [Part, ...Pa
     figure('ripple', demand.ripple, result?.band?.ripple)
   }
   const nothing = result === undefined ? '' : 'no maximum'
-  const place = `${demand.kind} ${meVText(demand.energyEv)} \u00b1 ${meVText(demand.withinEv)} meV`
-  return [{ wanted: place, reached: reached === null ? nothing : `${meVText(reached)} meV` }, ...parts]
-}
-
-function meVText(ev: number): string {
-  return short(ev * 1000)
+  const place = `${demand.kind}${quantity === 'T' ? '' : ` of ${quantity}`} ${lineText(demand)}`
+  return [{ wanted: place, reached: reached === null ? nothing : unit.text(reached) }, ...parts]
 }
 
 function rule(left: number, y: number, width: number): string {

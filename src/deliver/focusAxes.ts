@@ -1,17 +1,29 @@
+import type { Kind } from '../job/index.js'
 import type { PeakFigures } from '../target/index.js'
 import { type Axis, roundAxis } from './frame.js'
+import { spectralUnit } from './spectralUnit.js'
 
 /**
- * An axis over [from, to] (eV): energies in meV, or, where the digits that differ would be far behind the point, distances from the peak
- * in the unit that suits them. `at` gives the place of an energy on it.
+ * An axis over [from, to] (eV): energies in meV or wavelengths in nm, or, where the digits that differ would be far behind the point,
+ * distances from the peak in the unit that suits them. `at` gives the place of an energy on it.
  */
 export function energyAxis(
   from: number,
   to: number,
   peak: PeakFigures | null,
+  kind: Kind,
 ): { axis: Axis; at: (ev: number) => number } {
-  if (peak === null || to - from > 1e-4) {
-    return { axis: roundAxis('energy (meV)', from * 1000, to * 1000, 7), at: (ev) => ev * 1000 }
+  const { place, text, rising } = spectralUnit(kind)
+  const [first, last] = rising ? [from, to] : [to, from]
+  const narrow = kind === 'electron' ? to - from <= 1e-4 : place(from) - place(to) <= 0.1
+  if (peak === null || !narrow) {
+    const name = kind === 'electron' ? 'energy (meV)' : 'vacuum wavelength (nm)'
+    return { axis: roundAxis(name, place(first), place(last), kind === 'electron' ? 7 : 5), at: place }
+  }
+  if (kind === 'light') {
+    const at = (ev: number) => (place(ev) - place(peak.energyEv)) * 1000
+    const name = `wavelength \u2212 ${text(peak.energyEv)} (pm)`
+    return { axis: roundAxis(name, at(first), at(last), 5), at }
   }
   const unit = units.find(({ perEv }) => (to - from) * perEv >= 1) ?? units[units.length - 1]
   const at = (ev: number) => (ev - peak.energyEv) * unit.perEv

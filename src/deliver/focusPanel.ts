@@ -4,13 +4,14 @@ import type { PeakFigures } from '../target/index.js'
 import { type DemandFrame, demandRegion, goalMarks, rangeEv, spanInside } from './demandMarks.js'
 import { energyAxis, heightUnit } from './focusAxes.js'
 import { focusRange, isLine } from './focusRange.js'
-import { type Box, type Frame, frame, roundAxis } from './frame.js'
+import { type Box, frame, roundAxis } from './frame.js'
 import { hatch } from './hatch.js'
 import { label, textWidth, wrapped } from './label.js'
-import { energyText, short } from './layerText.js'
+import { short } from './layerText.js'
 import { palette } from './palette.js'
 import type { PictureBody } from './picture.js'
 import { type Curve, rollUp } from './rollUp.js'
+import { type SpectralUnit, spectralUnit } from './spectralUnit.js'
 import { element } from './svg.js'
 import type { Candidate, SpectrumReport } from './types.js'
 
@@ -18,8 +19,9 @@ import type { Candidate, SpectrumReport } from './types.js'
 export function focusPanel(job: Job, candidate: Candidate, box: Box, key: string): PictureBody {
   const { peak } = candidate.evaluation
   const range = focusRange(job, peak)
+  const told = spectralUnit(job.kind)
   if (range === null)
-    return sentence(peak === null ? 'No maximum of T: there is no peak to show.' : tooNarrow(peak), box)
+    return sentence(peak === null ? 'No maximum of T: there is no peak to show.' : tooNarrow(peak, told), box)
   const [from, to] = range
   const curves = candidate.spectra.map((spectrum, i) => piece(spectrum, range, i === 0 ? peak : null, box.width))
   const highest = Math.max(0, ...curves.flatMap(({ y }) => Array.from(y)))
@@ -28,15 +30,14 @@ export function focusPanel(job: Job, candidate: Candidate, box: Box, key: string
   const tooLow = highest < 0.05 * wanted
   const greatest = tooLow ? highest : Math.max(highest, wanted)
   if (curves[0].x.length < 5 || !(greatest > 1e-300)) {
-    const what = peak === null ? 'The pass range' : `The peak at ${energyText(peak.energyEv)}`
+    const what = peak === null ? 'The pass range' : `The peak at ${told.text(peak.energyEv)}`
     return sentence(`${what} lies outside of the scan, or is too low to draw.`, box)
   }
   const unit = heightUnit(greatest)
-  const { axis, at } = energyAxis(from, to, peak)
+  const { axis, at } = energyAxis(from, to, peak, job.kind)
   const plot = frame(box, axis, roundAxis(unit.name, 0, unit.top, 6), key)
-  // Demands speak in meV; the axis may count from the peak in something smaller.
-  const inMeV: Frame = { ...plot, x: (meV) => plot.x(at(meV / 1000)) }
-  const marks: DemandFrame = { plot: inMeV, key, height: (T) => plot.y(T * unit.inverse) }
+  const across = (ev: number) => plot.x(at(ev))
+  const marks: DemandFrame = { plot, key, across, height: (T) => plot.y(T * unit.inverse) }
   const passes = job.demands.some(({ kind }) => kind === 'pass')
   const marked = peak !== null && (!passes || job.demands.some(isLine)) ? peak : null
   return {
@@ -47,9 +48,9 @@ export function focusPanel(job: Job, candidate: Candidate, box: Box, key: string
       plot.inside(
         ...job.demands.map((demand) => demandRegion(marks, demand)),
         ...heightLines(job, marks),
-        ...curves.map((curve, i) => path(curve, (ev) => plot.x(at(ev)), marks.height, i)),
+        ...curves.map((curve, i) => path(curve, across, marks.height, i)),
         ...job.demands.map((demand) => (demand.kind === 'curve' ? goalMarks(marks, demand) : '')),
-        ...(marked === null ? [] : peakMarks(marked, (ev) => plot.x(at(ev)), marks)),
+        ...(marked === null ? [] : peakMarks(marked, marks, told)),
       ),
       plot.over,
       ...(tooLow ? [label(box.left + 6, box.top + 15, `wanted: ${short(wanted)}`, { size: 11, halo: true })] : []),
@@ -94,20 +95,21 @@ function path(
 /** Heights that demands ask for in a range, so that the axis reaches them. */
 function wantedHeights(job: Job, [from, to]: [number, number]): number[] {
   return job.demands.flatMap((demand) => {
+    if (demand.quantity !== 'T') return []
     if (demand.kind === 'pass') return [demand.above]
-    const near =
-      demand.kind === 'peak' && demand.energyEv + demand.withinEv >= from && demand.energyEv - demand.withinEv <= to
+    const [low, high] = rangeEv(demand)
+    const near = demand.kind === 'peak' && high >= from && low <= to
     if (demand.kind === 'band') return demand.top === null ? [] : [demand.top]
     return near && demand.height !== null ? [demand.height] : []
   })
 }
 
 /** The least height of a peak, across its window. */
-function heightLines(job: Job, { plot, height }: DemandFrame): string[] {
+function heightLines(job: Job, frame: DemandFrame): string[] {
   return job.demands.flatMap((demand) => {
-    if (demand.kind !== 'peak' || demand.height === null) return []
-    const y = height(demand.height)
-    const across = spanInside(plot, rangeEv(demand))
+    if (demand.kind !== 'peak' || demand.height === null || demand.quantity !== 'T') return []
+    const y = frame.height(demand.height)
+    const across = spanInside(frame, rangeEv(demand))
     if (across === null) return []
     return [
       element('line', {
@@ -124,15 +126,14 @@ function heightLines(job: Job, { plot, height }: DemandFrame): string[] {
 }
 
 /** A dot on the peak, and its full width at half of its own height. */
-function peakMarks(
-  { energyEv, T, lowEv, highEv, fwhmEv }: PeakFigures,
-  across: (ev: number) => number,
-  marks: DemandFrame,
-): string[] {
+function peakMarks(peak: PeakFigures, marks: DemandFrame, told: SpectralUnit): string[] {
+  const { energyEv, T, lowEv, highEv } = peak
+  const { across } = marks
   const { left, width } = marks.plot.box
   const y = marks.height(T / 2)
-  const [x1, x2] = [across(lowEv), across(highEv)]
-  const text = energyText(fwhmEv)
+  const ends = [across(lowEv), across(highEv)]
+  const [x1, x2] = [Math.min(...ends), Math.max(...ends)]
+  const text = told.widthText(peak)
   const room = textWidth(text, 11) + 10
   const end = (x: number) => element('line', { x1: x, y1: y - 5, x2: x, y2: y + 5 })
   const bar = element(
@@ -150,8 +151,8 @@ function peakMarks(
   return [bar, element('circle', { cx: across(energyEv), cy: marks.height(T), r: 3, fill: palette.ink }), ...name]
 }
 
-function tooNarrow({ energyEv, fwhmEv }: PeakFigures): string {
-  return `The peak at ${energyText(energyEv)} is ${energyText(fwhmEv)} wide: too narrow to draw.`
+function tooNarrow(peak: PeakFigures, told: SpectralUnit): string {
+  return `The peak at ${told.text(peak.energyEv)} is ${told.widthText(peak)} wide: too narrow to draw.`
 }
 
 function sentence(text: string, { left, top, width }: Box): PictureBody {

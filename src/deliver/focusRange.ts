@@ -8,7 +8,7 @@ import { rangeEv } from './demandMarks.js'
  * too narrow to have a shape in doubles.
  */
 export function focusRange(job: Job, peak: PeakFigures | null): [number, number] | null {
-  const passes = job.demands.filter(({ kind }) => kind === 'pass').map(rangeEv)
+  const passes = job.demands.filter(({ kind, quantity }) => kind === 'pass' && quantity === 'T').map(rangeEv)
   if (passes.length > 0) {
     const marked = peak !== null && job.demands.some(isLine) ? [peak.energyEv] : []
     const from = Math.min(...passes.map(([a]) => a), ...marked)

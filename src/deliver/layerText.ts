@@ -9,15 +9,23 @@ export function mlOf(layer: LayerReport): number | null {
 
 /** `AlGaAs 0.35`, a name of the user's own, or the potential of media by numbers. */
 export function mediumText(choice: MediumChoice): string {
+  if (choice.kind === 'table') return choice.name
   if (choice.kind === 'numbers') return choice.name ?? `${short(choice.potentialEv * 1000)} meV`
+  if (choice.kind === 'index') return choice.name ?? indexText(choice.index, choice.extinction)
   return choice.x === null ? choice.material : `${choice.material} ${choice.x}`
 }
 
 /** The same for a lead of the job. */
 export function leadText(lead: MediumOption | 'hard wall'): string {
   if (lead === 'hard wall') return lead
+  if (lead.kind === 'table') return lead.name
   if (lead.kind === 'numbers') return lead.name ?? `${short(lead.potentialEv[0] * 1000)} meV`
+  if (lead.kind === 'index') return lead.name ?? indexText(lead.index[0], lead.extinction[0])
   return lead.x === null ? lead.material : `${lead.material} ${lead.x[0]}`
+}
+
+function indexText(index: number, extinction: number): string {
+  return extinction === 0 ? `n ${short(index)}` : `n ${short(index)} + ${short(extinction)}i`
 }
 
 /** `12 ML`, or the width in nm of what has no monolayers. */

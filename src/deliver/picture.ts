@@ -65,8 +65,12 @@ export function picture(
 }
 
 /** The temperature and bias of a job that has one condition; several are named in the picture itself. */
-function operatingPoint({ conditions }: Job): string {
+function operatingPoint({ kind, conditions }: Job): string {
   if (conditions.length !== 1) return ''
-  const [{ temperatureK, biasV }] = conditions
+  const [{ temperatureK, biasV, angleDeg, polarisation }] = conditions
+  if (kind === 'light') {
+    const tilted = polarisation === 'mean' ? 'half s, half p' : `${polarisation}-polarised`
+    return angleDeg === 0 ? ' at normal incidence' : ` at ${short(angleDeg)} degrees, ${tilted}`
+  }
   return ` at ${short(temperatureK)} K${biasV === 0 ? '' : `, bias ${short(biasV * 1000)} mV`}`
 }

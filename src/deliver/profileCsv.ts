@@ -1,12 +1,12 @@
+import type { Kind } from '../job/index.js'
 import { csv, meV } from './csv.js'
 import type { ProfileReport } from './types.js'
 
-const header = ['z_nm', 'edge_meV', 'density_per_nm']
-
-/** profile.csv: the band edge from entry to exit, an interface given twice, and abs(u)² of the wave at the peak. */
-export function profileCsv({ zNm, edgeEv, densityPerNm }: ProfileReport): string {
+/** profile.csv: the band edge (for light the index) from entry to exit, an interface given twice, and abs(u)² of the wave at the peak. */
+export function profileCsv({ zNm, edge, densityPerNm }: ProfileReport, kind: Kind): string {
+  const electrons = kind === 'electron'
   return csv(
-    header,
-    Array.from(zNm, (z, i) => [z, meV(edgeEv[i]), densityPerNm?.[i] ?? null]),
+    ['z_nm', electrons ? 'edge_meV' : 'index', 'density_per_nm'],
+    Array.from(zNm, (z, i) => [z, electrons ? meV(edge[i]) : edge[i], densityPerNm?.[i] ?? null]),
   )
 }

@@ -7,6 +7,7 @@ import { layerLabels } from './layerLabels.js'
 import { leadText, mediumText, short, widthText } from './layerText.js'
 import { palette } from './palette.js'
 import { type PictureBody, picture, pictureWidth } from './picture.js'
+import { spectralUnit } from './spectralUnit.js'
 import { element, fixed } from './svg.js'
 import type { Candidate, ProfileReport } from './types.js'
 
@@ -14,11 +15,10 @@ const left = 80
 const width = pictureWidth - 100
 const height = 270
 
-/** profile.svg: the band edge through the stack, its layers by name, and the wave at the peak, standing on its energy. */
+/** profile.svg: the band edge (for light the index) through the stack, its layers by name, and the wave at the peak, standing on its energy. */
 export function profilePlot(job: Job, candidate: Candidate): string {
-  return picture(job, candidate, 'band edge and wave', description(job, candidate), (top, key) =>
-    body(job, candidate, top, key),
-  )
+  const what = job.kind === 'electron' ? 'band edge and wave' : 'index and wave'
+  return picture(job, candidate, what, description(job, candidate), (top, key) => body(job, candidate, top, key))
 }
 
 function body(job: Job, candidate: Candidate, top: number, key: string): PictureBody {
@@ -28,12 +28,13 @@ function body(job: Job, candidate: Candidate, top: number, key: string): Picture
   const [from, to] = [zNm[0], Math.max(zNm[zNm.length - 1], job.stack.exit === 'hard wall' ? 1.06 * totalNm : 0)]
   const labels = layerLabels(layers, width / (to - from), width)
   const box = { left, top: top + 8 + labels.height, width, height }
-  const wave = waveOf(candidate)
-  const energies = energyRange(profile, wave)
+  const electrons = job.kind === 'electron'
+  const wave = waveOf(job, candidate)
+  const energies = electrons ? energyRange(profile, wave) : indexRange(profile)
   const plot = frame(
     box,
     roundAxis('z from the entry to the exit (nm)', from, to, 10),
-    roundAxis('energy (meV)', energies[0], energies[1], 7),
+    roundAxis(electrons ? 'energy (meV)' : 'refractive index', energies[0], energies[1], 7),
     key,
   )
   const foot = directionLines(job, box.top + height + 58)
@@ -43,7 +44,7 @@ function body(job: Job, candidate: Candidate, top: number, key: string): Picture
     parts: [
       plot.under,
       plot.inside(
-        ...edge(plot, profile),
+        ...edge(plot, profile, electrons ? 1000 : 1),
         ...(job.stack.exit === 'hard wall' ? [wall(plot, totalNm, key)] : []),
         ...(wave === null ? [] : waveParts(plot, profile, wave)),
       ),
@@ -55,44 +56,51 @@ function body(job: Job, candidate: Candidate, top: number, key: string): Picture
   }
 }
 
-/** The wave at the peak: the energy (meV) that it stands on and the pixels-free scale of its density. */
+/** The wave at the peak: where on the axis it stands, what it is called and the pixels-free scale of its density. */
 interface Wave {
-  readonly levelMeV: number
+  readonly level: number
+  readonly name: string
   readonly density: Float64Array
   readonly greatest: number
 }
 
-function waveOf({ evaluation, profile }: Candidate): Wave | null {
+function waveOf({ kind }: Job, { evaluation, profile }: Candidate): Wave | null {
   const density = profile.densityPerNm
   if (evaluation.peak === null || density === null) return null
   const greatest = density.reduce((a, b) => Math.max(a, b), 0)
-  return greatest > 0 && Number.isFinite(greatest)
-    ? { levelMeV: evaluation.peak.energyEv * 1000, density, greatest }
-    : null
+  if (!(greatest > 0 && Number.isFinite(greatest))) return null
+  const name = spectralUnit(kind).text(evaluation.peak.energyEv)
+  // The index has its foot at 0, and the wave of light stands there.
+  return { level: kind === 'electron' ? evaluation.peak.energyEv * 1000 : 0, name, density, greatest }
 }
 
 /** Share of the axis that the wave takes. */
 const waveShare = 0.38
 
-function energyRange({ edgeEv }: ProfileReport, wave: Wave | null): [number, number] {
-  const edges = Array.from(edgeEv, (ev) => ev * 1000).filter(Number.isFinite)
-  const level = wave === null ? [] : [wave.levelMeV]
+/** From 0, where the wave stands. */
+function indexRange({ edge }: ProfileReport): [number, number] {
+  return [0, 1.15 * edge.reduce((a, b) => Math.max(a, b), 1)]
+}
+
+function energyRange({ edge }: ProfileReport, wave: Wave | null): [number, number] {
+  const edges = Array.from(edge, (ev) => ev * 1000).filter(Number.isFinite)
+  const level = wave === null ? [] : [wave.level]
   const low = Math.min(...edges, ...level)
   const span = Math.max(Math.max(...edges, ...level) - low, 1)
   const from = low - 0.08 * span
   const to = low + 1.1 * span
   // from + (to - from) * share above the level has to be inside as well.
-  const needed = wave === null ? to : (wave.levelMeV - waveShare * from) / (1 - waveShare)
+  const needed = wave === null ? to : (wave.level - waveShare * from) / (1 - waveShare)
   return [from, Math.max(to, needed + 0.03 * span)]
 }
 
-function edge(plot: Frame, { zNm, edgeEv }: ProfileReport): string[] {
+function edge(plot: Frame, { zNm, edge: edges }: ProfileReport, perUnit: number): string[] {
   // The corners say all of a staircase.
-  const corner = (i: number) => edgeEv[i] !== edgeEv[i - 1] || edgeEv[i] !== edgeEv[i + 1]
+  const corner = (i: number) => edges[i] !== edges[i - 1] || edges[i] !== edges[i + 1]
   const numbers = Array.from(zNm, (_, i) => i).filter(corner)
   const x = (i: number) => plot.x(zNm[i])
-  const y = (i: number) => plot.y(edgeEv[i] * 1000)
-  const given = (i: number) => Number.isFinite(edgeEv[i])
+  const y = (i: number) => plot.y(edges[i] * perUnit)
+  const given = (i: number) => Number.isFinite(edges[i])
   const solid = area<number>(x, plot.box.top + plot.box.height + 2, y)
     .defined(given)
     .digits(2)(numbers)
@@ -124,13 +132,13 @@ function wall(plot: Frame, atNm: number, key: string): string {
   ].join('')
 }
 
-function waveParts(plot: Frame, { zNm }: ProfileReport, { levelMeV, density, greatest }: Wave): string[] {
+function waveParts(plot: Frame, { zNm }: ProfileReport, { level: at, name, density, greatest }: Wave): string[] {
   const { box } = plot
-  const level = plot.y(levelMeV)
+  const level = plot.y(at)
   const numbers = Array.from(zNm, (_, i) => i)
   const x = (i: number) => plot.x(zNm[i])
   const y = (i: number) => level - (density[i] / greatest) * waveShare * box.height
-  const text = `${short(levelMeV)} meV: abs(u)\u00b2 at the peak, on a scale of its own`
+  const text = `${name}: abs(u)\u00b2 at the peak, on a scale of its own`
   return [
     element('path', {
       d: area<number>(x, level, y).digits(2)(numbers) ?? '',
@@ -153,7 +161,11 @@ function waveParts(plot: Frame, { zNm }: ProfileReport, { levelMeV, density, gre
         'stroke-dasharray': '5 3',
       },
     }),
-    label(box.left + 8, level + 15, text, { size: 11, fill: palette.wave, halo: true }),
+    label(box.left + 8, Math.min(level + 15, box.top + box.height - 6), text, {
+      size: 11,
+      fill: palette.wave,
+      halo: true,
+    }),
   ]
 }
 
@@ -194,6 +206,8 @@ function description(job: Job, { layers, evaluation }: Candidate): string {
     `The substrate is on the side of the ${job.growth.startsAt}; growth runs from there.`,
     peak === null
       ? 'There is no peak, so no wave is drawn.'
-      : `The wave at the peak stands on ${short(peak.energyEv * 1000)} meV.`,
+      : job.kind === 'electron'
+        ? `The wave at the peak stands on ${short(peak.energyEv * 1000)} meV.`
+        : `The wave is that at ${spectralUnit('light').text(peak.energyEv)}.`,
   ].join(' ')
 }

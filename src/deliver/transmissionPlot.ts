@@ -1,9 +1,10 @@
 import type { Job } from '../job/index.js'
 import { demandRows, demandTable, factLines } from './demandTable.js'
 import { focusPanel } from './focusPanel.js'
-import { energyText, short } from './layerText.js'
+import { short } from './layerText.js'
 import { picture, pictureWidth } from './picture.js'
 import { scanPanel } from './scanPanel.js'
+import { spectralUnit } from './spectralUnit.js'
 import type { Candidate } from './types.js'
 
 /**
@@ -35,7 +36,7 @@ export function transmissionPlot(job: Job, candidate: Candidate): string {
 }
 
 function description(job: Job, candidate: Candidate): string {
-  const [from, to] = job.scanEv
+  const unit = spectralUnit(job.kind)
   const { peak } = candidate.evaluation
   const demands = demandRows(job, candidate)
     .map(
@@ -44,10 +45,10 @@ function description(job: Job, candidate: Candidate): string {
     )
     .join(' ')
   return [
-    `Transmission from ${short(from * 1000)} to ${short(to * 1000)} meV above the band edge of the entry.`,
+    `Transmission over ${unit.rangeText(job.scanEv)}${job.kind === 'electron' ? ' above the band edge of the entry' : ''}.`,
     peak === null
       ? 'There is no maximum.'
-      : `Peak at ${energyText(peak.energyEv)}, ${energyText(peak.fwhmEv)} wide, T = ${short(peak.T)}.`,
+      : `Peak at ${unit.text(peak.energyEv)}, ${unit.widthText(peak)} wide, T = ${short(peak.T)}.`,
     `Demands: ${demands}`,
   ].join(' ')
 }

@@ -12,7 +12,7 @@ export interface LayerReport extends GrownLayer {
   readonly seconds: number | null
   /** Change of this layer alone that uses up the least slack, first order; null when unmet or without limits. */
   readonly toleranceNm: number | null
-  /** Shift of the first peak for one more monolayer (or step); null without a peak. */
+  /** Shift of the first peak for one more monolayer (or step; of a film one more nm); null without a peak. */
   readonly shiftEv: number | null
 }
 
@@ -21,13 +21,16 @@ export interface SpectrumReport {
   readonly energyEv: Float64Array
   readonly T: Float64Array
   readonly R: Float64Array
+  /** Null where nothing absorbs. */
+  readonly A: Float64Array | null
   readonly log10T: Float64Array
 }
 
 /** From the entry (z < 0) through the stack, which starts at z = 0, into the exit; at an interface two points with the same z. */
 export interface ProfileReport {
   readonly zNm: Float64Array
-  readonly edgeEv: Float64Array
+  /** The band edge in eV; for light the index at the peak, or at the reference where there is none. */
+  readonly edge: Float64Array
   /** abs(u)² at the peak, 1/nm; null without a peak. */
   readonly densityPerNm: Float64Array | null
 }

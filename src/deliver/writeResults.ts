@@ -32,17 +32,17 @@ export function writeResults(folder: string, job: Job, result: JobResult): void 
     for (const [name, text] of candidateFiles(job, candidate)) writeFileWhole(join(place, name), text)
   }
   const demandIds = job.demands.map((demand) => demand.id)
-  writeFileWhole(join(folder, 'candidates.csv'), candidatesCsv(result.candidates, demandIds))
+  writeFileWhole(join(folder, 'candidates.csv'), candidatesCsv(result.candidates, demandIds, job.kind))
   removeStaleCandidates(folder, new Set(result.candidates.map(({ rank }) => candidateFolder(rank))))
   writeFileWhole(record, recordJson(job, result))
 }
 
 function candidateFiles(job: Job, candidate: Candidate): [name: string, text: string][] {
   return [
-    ['layers.csv', layersCsv(candidate.layers)],
-    ['spectrum.csv', spectrumCsv(candidate.spectra)],
+    ['layers.csv', layersCsv(candidate.layers, job, candidate.evaluation.peak?.energyEv ?? null)],
+    ['spectrum.csv', spectrumCsv(candidate.spectra, job.kind)],
     ['resonances.csv', resonancesCsv(candidate.resonances)],
-    ['profile.csv', profileCsv(candidate.profile)],
+    ['profile.csv', profileCsv(candidate.profile, job.kind)],
     ['transmission.svg', transmissionPlot(job, candidate)],
     ['profile.svg', profilePlot(job, candidate)],
   ]

@@ -2,7 +2,8 @@ import type { Job } from '../job/index.js'
 import { type MediumChoice, type Situation, situationOf, slicePlan } from '../model/index.js'
 import { DesignError } from './DesignError.js'
 import { expandLayers, type FreeRepeat, type Slot } from './expandLayers.js'
-import { alloyOf, type Candidate, type Cell, LayerLattice, mediumKey } from './LayerLattice.js'
+import { alloyOf, type Candidate, type Cell, LayerLattice } from './LayerLattice.js'
+import { mediumKey } from './mediumIdentity.js'
 import { repaired } from './repair.js'
 import type { Place } from './types.js'
 
@@ -29,6 +30,8 @@ export class Lattice {
   private readonly knownSlots = new Map<string, readonly SlicedSlot[]>()
   readonly places: readonly Place[]
   readonly situations: readonly Situation[]
+  /** Limits of the whole stack, nm; null: none. */
+  readonly totalNm: readonly [number, number] | null
   /** At most so many different alloys in a stack, those of the leads free. */
   readonly compositions: number | null
   /** Numbers of described layers whose widths (nm) may not fall in this order; empty: no such rule. */
@@ -47,12 +50,14 @@ export class Lattice {
     const layers: LayerLattice[] = []
     let offset = 0
     for (const spec of described) {
-      const layer = new LayerLattice(spec, offset, this.situations[0], growth.stepNm)
+      const layer = new LayerLattice(spec, offset, this.situations[0], growth)
       offset += layer.places.length
       layers.push(layer)
     }
     this.layers = layers
-    const plan = job.conditions.every(({ biasV }) => biasV === 0) ? null : slicePlan(stack, this.situations[0])
+    const [situation] = this.situations
+    const biased = situation.kind === 'electron' && job.conditions.some(({ biasV }) => biasV !== 0)
+    const plan = biased ? slicePlan(stack, situation) : null
     this.slotsOf = (counts) => {
       const slots = slotsAt(counts)
       const biased = plan?.biased(slots.map(({ id }) => id))
@@ -72,25 +77,34 @@ export class Lattice {
       })),
     ]
     this.compositions = growth.compositions
+    this.totalNm = growth.totalNm
     this.rising = stack.rising.map((id) => slotsAt(repeats.map(({ to }) => to)).find((slot) => slot.id === id)!.layer)
     const { entry, exit } = this.situations[0]
     const leads = exit === 'hard wall' ? [entry] : [entry, exit]
     this.leadAlloys = new Set(leads.map(alloyOf).filter((alloy) => alloy !== null))
     this.reversible =
-      exit !== 'hard wall' && mediumKey(entry) === mediumKey(exit) && job.conditions.every(({ biasV }) => biasV === 0)
-    this.strainedTo = strainedTo(stack.strainedTo, growth.startsAt === 'entry' ? entry : exit)
+      exit !== 'hard wall' &&
+      mediumKey(entry) === mediumKey(exit) &&
+      job.conditions.every(({ biasV }) => biasV === 0) &&
+      // What comes back of a stack that absorbs, or of one before a plate, depends on the side.
+      stack.back === null &&
+      job.demands.every(({ quantity }) => quantity === 'T')
+    this.strainedTo =
+      job.kind === 'light' ? null : strainedTo(stack.strainedTo, growth.startsAt === 'entry' ? entry : exit)
     if (!this.feasible(repaired(this, new Int32Array(this.places.length)))) {
       throw new DesignError(
-        this.rising.length > 0
-          ? `No stack has widths that rise along ${stack.rising.join(', ')}. Let the ranges of the later ones reach as far.`
-          : `No stack holds at most ${growth.compositions} different alloys with these compositions. ` +
+        this.totalNm !== null && !this.fits(repaired(this, new Int32Array(this.places.length)))
+          ? `No stack is ${growth.totalNm![0]} to ${growth.totalNm![1]} nm thick with these widths. Change growth.total, or the ranges.`
+          : this.rising.length > 0
+            ? `No stack has widths that rise along ${stack.rising.join(', ')}. Let the ranges of the later ones reach as far.`
+            : `No stack holds at most ${growth.compositions} different alloys with these compositions. ` +
               'Raise growth.compositions, or give the layers compositions in common.',
       )
     }
   }
 
   feasible(assignment: Int32Array): boolean {
-    if (this.compositions === null && this.rising.length === 0) {
+    if (this.compositions === null && this.rising.length === 0 && this.totalNm === null) {
       return this.layers.every((layer) => layer.cell(assignment) !== null)
     }
     const alloys = new Set<string>()
@@ -100,7 +114,19 @@ export class Lattice {
       const alloy = this.countedAlloy(cell)
       if (alloy !== null) alloys.add(alloy)
     }
-    return (this.compositions === null || alloys.size <= this.compositions) && this.rises(assignment)
+    if (this.compositions !== null && alloys.size > this.compositions) return false
+    return this.rises(assignment) && this.fits(assignment)
+  }
+
+  /** Whether the stack is as thick as it may be. */
+  fits(assignment: Int32Array): boolean {
+    if (this.totalNm === null) return true
+    const widths = this.layers.map((layer) => {
+      const cell = layer.cell(assignment)
+      return cell === null ? Number.NaN : cell.count * cell.medium.widths.stepNm
+    })
+    const total = this.slots(assignment).reduce((sum, { layer }) => sum + widths[layer], 0)
+    return total >= this.totalNm[0] - 1e-9 && total <= this.totalNm[1] + 1e-9
   }
 
   /** Whether the layers of `rising` have widths that do not fall; equal within rounding is level. */
@@ -190,12 +216,12 @@ function merged(a: Stretch, b: Stretch): Stretch {
   const rest = { id: `${a.id}+${b.id}`, slices: a.slices + b.slices, biased: a.biased }
   if (a.medium.widths.stepNm === b.medium.widths.stepNm) return { ...rest, medium: a.medium, count: a.count + b.count }
   const stepNm = a.count * a.medium.widths.stepNm + b.count * b.medium.widths.stepNm
-  const widths = { first: 1, last: 1, stride: 1, stepNm, monolayers: false }
+  const widths = { first: 1, last: 1, stride: 1, stepNm, gap: 0, monolayers: false }
   return { ...rest, medium: { ...a.medium, widths }, count: 1 }
 }
 
 function strainedTo(material: string | null, lead: MediumChoice | 'hard wall'): MediumChoice | null {
   if (material === 'none') return null
   if (material !== null) return { kind: 'material', material, x: null }
-  return lead === 'hard wall' || lead.kind === 'numbers' ? null : lead
+  return lead === 'hard wall' || lead.kind !== 'material' ? null : lead
 }

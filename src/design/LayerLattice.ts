@@ -1,9 +1,10 @@
-import type { LayerSpec, MediumOption } from '../job/index.js'
+import type { GrowthSpec, LayerSpec, MediumOption } from '../job/index.js'
 import { needsX } from '../media/index.js'
 import { type MediumChoice, type ResolvedMedium, resolveMedium, type Situation } from '../model/index.js'
 import { DesignError } from './DesignError.js'
+import { mediumKey } from './mediumIdentity.js'
 import type { Place } from './types.js'
-import { type Widths, widthsOf } from './widthsOf.js'
+import { countsOf, type Widths, widthsOf } from './widthsOf.js'
 
 /** A medium that a layer may be of. */
 export interface Candidate {
@@ -26,7 +27,7 @@ export interface Cell {
 }
 
 /** The numbers that a medium may be free in, in the order of their places. */
-export const parameters = ['x', 'potential', 'mass', 'alpha'] as const
+export const parameters = ['x', 'potential', 'mass', 'alpha', 'index', 'extinction'] as const
 
 /**
  * The choices of one described layer. Its places stand together from `offset` on: the list of materials, the parameters, the
@@ -49,7 +50,7 @@ export class LayerLattice {
     readonly spec: LayerSpec,
     readonly offset: number,
     private readonly situation: Situation,
-    private readonly growthStepNm: number | null,
+    private readonly growth: Pick<GrowthSpec, 'stepNm' | 'thinnestNm'>,
   ) {
     this.options = spec.media!
     this.longest = parameters.map((_, p) => Math.max(...this.options.map((option) => valuesOf(option, p).length)))
@@ -76,9 +77,9 @@ export class LayerLattice {
   cell(assignment: Int32Array): Cell | null {
     const medium = this.medium(assignment)
     if (medium === null) return null
-    const { first, last } = medium.widths
+    const { first, last, gap } = medium.widths
     const count = this.freeCount(assignment) ?? first
-    return count >= first && count <= last ? { medium, count } : null
+    return count >= first && count <= last && (count === 0 || count >= gap) ? { medium, count } : null
   }
 
   /** The count that the width's place says, allowed or not; null where the width is fixed. */
@@ -116,10 +117,14 @@ export class LayerLattice {
   writeCount({ widths }: Candidate, count: number, assignment: Int32Array): void {
     const place = this.placeOf[widthRole]
     if (place < 0) return
-    const { first, last } = widths
+    const { first, last, gap } = widths
     const nearest = Math.round((count - first) / this.stride)
     const most = Math.floor((last - first) / this.stride)
-    assignment[place] = (first - this.leastCount) / this.stride + Math.min(Math.max(nearest, 0), most)
+    let steps = Math.min(Math.max(nearest, 0), most)
+    // Thinner than can be made: not there, or as thin as can be.
+    const thin = first + steps * this.stride
+    if (thin > 0 && thin < gap) steps = 2 * count < gap ? 0 : Math.ceil((gap - first) / this.stride)
+    assignment[place] = (first - this.leastCount) / this.stride + steps
   }
 
   /** Every medium that an option gives, in the order of the places; those without a width too. */
@@ -162,15 +167,15 @@ export class LayerLattice {
 
   /** Whether a count is among the widths of a medium of this layer. */
   allows({ widths }: Candidate, count: number): boolean {
-    const { first, last, stride } = widths
-    return count >= first && count <= last && (count - first) % stride === 0
+    const { first, last, stride, gap } = widths
+    return count >= first && count <= last && (count === 0 || count >= gap) && (count - first) % stride === 0
   }
 
   private fill(code: number): Candidate {
     const digits = this.digitsOf(code)
     const choice = choiceOf(this.options[digits[0]], digits.slice(1))
     const resolved = resolveMedium(choice, this.situation)
-    const widths = widthsOf(this.spec.width!, resolved.monolayerNm, this.growthStepNm)
+    const widths = widthsOf(this.spec.width!, resolved, this.growth)
     const medium = { choice, key: mediumKey(choice), alloy: alloyOf(choice), resolved, widths, digits }
     this.table.set(code, medium)
     return medium
@@ -193,15 +198,17 @@ export class LayerLattice {
       for (const { widths } of this.widthMedia(option)) {
         const count = countsOf(widths)
         if (count === 0) continue
-        const { first, stride } = widths
-        const end = first + stride * (count - 1)
+        const { first, last, stride } = widths
+        const end = first + stride * Math.floor((last - first) / stride)
         range = range ? [Math.min(range[0], first), Math.max(range[1], end), stride] : [first, end, stride]
       }
     }
     if (range) return range
-    const { from, to } = this.spec.width!
+    const { from, to, unit } = this.spec.width!
+    const { thinnestNm } = this.growth
+    const thin = thinnestNm === null ? '' : `, or thinner than ${thinnestNm} nm, growth.thinnest`
     throw new DesignError(
-      `Layer ${this.spec.id}: ${from}..${to} nm holds no whole step of any of its media. Widen the range, or give a finer step.`,
+      `Layer ${this.spec.id}: ${from}..${to} ${unit} holds no whole step of any of its media${thin}. Widen the range, or give a finer step.`,
     )
   }
 }
@@ -211,17 +218,24 @@ export const widthRole = 1 + parameters.length
 
 /** The values that an option leaves open for parameter `p`; a single one where it has none. */
 export function valuesOf(option: MediumOption, p: number): readonly number[] {
-  if (option.kind === 'material') return p === 0 && option.x !== null ? option.x : none
-  return p === 0 ? none : p === 1 ? option.potentialEv : p === 2 ? option.massRel : option.alphaPerEv
+  return listsOf(option)[p] ?? none
+}
+
+/** In the order of `parameters`; absent where the option has none. */
+export function listsOf(option: MediumOption): readonly (readonly number[] | undefined)[] {
+  switch (option.kind) {
+    case 'material':
+      return option.x === null ? [] : [option.x]
+    case 'numbers':
+      return [undefined, option.potentialEv, option.massRel, option.alphaPerEv]
+    case 'index':
+      return [undefined, undefined, undefined, undefined, option.index, option.extinction]
+    case 'table':
+      return []
+  }
 }
 
 const none: readonly number[] = [Number.NaN]
-
-/** Equal for equal media; a name given to numbers is no difference. */
-export function mediumKey(choice: MediumChoice): string {
-  if (choice.kind === 'material') return choice.x === null ? choice.material : `${choice.material}(${choice.x})`
-  return `[${choice.potentialEv} ${choice.massRel} ${choice.alphaPerEv}]`
-}
 
 /** The ends of an alloy are binaries. */
 export function alloyOf(choice: MediumChoice): string | null {
@@ -229,15 +243,15 @@ export function alloyOf(choice: MediumChoice): string | null {
   return needsX(choice.material) ? mediumKey(choice) : null
 }
 
-/** How many widths there are. */
-export function countsOf({ first, last, stride }: Widths): number {
-  return Math.max(0, Math.floor((last - first) / stride) + 1)
-}
-
 function choiceOf(option: MediumOption, digits: readonly number[]): MediumChoice {
   if (option.kind === 'material') {
     const { material, x } = option
     return { kind: 'material', material, x: x === null ? null : x[digits[0]] }
+  }
+  if (option.kind === 'table') return option
+  if (option.kind === 'index') {
+    const { name, index, extinction } = option
+    return { kind: 'index', name, index: index[digits[4]], extinction: extinction[digits[5]] }
   }
   const { name, potentialEv, massRel, alphaPerEv } = option
   return {
@@ -251,18 +265,27 @@ function choiceOf(option: MediumOption, digits: readonly number[]): MediumChoice
 
 /** Number of the value in each list, or null where the option does not give this medium. */
 function digitsOfChoice(option: MediumOption, choice: MediumChoice): number[] | null {
-  let digits: number[]
-  if (option.kind === 'material') {
-    if (choice.kind !== 'material' || choice.material !== option.material) return null
-    digits = [option.x === null ? 0 : option.x.indexOf(choice.x!), 0, 0, 0]
-  } else {
-    if (choice.kind !== 'numbers') return null
-    digits = [
-      0,
-      option.potentialEv.indexOf(choice.potentialEv),
-      option.massRel.indexOf(choice.massRel),
-      option.alphaPerEv.indexOf(choice.alphaPerEv),
-    ]
-  }
+  if (option.kind === 'material' && (choice.kind !== 'material' || choice.material !== option.material)) return null
+  if (option.kind === 'table' && mediumKey(option) !== mediumKey(choice)) return null
+  if (option.kind !== choice.kind) return null
+  const values = valuesOfChoice(choice)
+  const digits = parameters.map((_, p) => {
+    const list = listsOf(option)[p]
+    return list === undefined ? 0 : list.indexOf(values[p]!)
+  })
   return digits.includes(-1) ? null : digits
+}
+
+/** In the order of `parameters`. */
+function valuesOfChoice(choice: MediumChoice): readonly (number | undefined)[] {
+  switch (choice.kind) {
+    case 'material':
+      return [choice.x ?? undefined]
+    case 'numbers':
+      return [undefined, choice.potentialEv, choice.massRel, choice.alphaPerEv]
+    case 'index':
+      return [undefined, undefined, undefined, undefined, choice.index, choice.extinction]
+    case 'table':
+      return []
+  }
 }

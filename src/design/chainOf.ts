@@ -6,12 +6,13 @@ import type { Chain } from './types.js'
 
 /**
  * The lattice as a chain of independent layers. Null where layers depend on more than their own places (a bias falls over all of
- * them, a count of repetitions moves them, widths rise along them), where a medium absorbs, and where they are too many to tabulate.
+ * them, a count of repetitions moves them, widths rise along them, their sum is limited), where a medium absorbs or a stack is more
+ * than one wave, and where they are too many to tabulate.
  */
 export function chainOf(lattice: Lattice): Chain | null {
-  const { layers, situations, repeats, rising } = lattice
-  if (repeats.length > 0 || rising.length > 0) return null
-  if (situations.some(({ biasV }) => biasV !== 0)) return null
+  const { layers, situations, repeats, rising, totalNm } = lattice
+  if (repeats.length > 0 || rising.length > 0 || totalNm !== null) return null
+  if (situations.some((situation) => situation.kind === 'electron' && situation.biasV !== 0)) return null
   if (layers.some((layer) => combinations(layer) > mostCells)) return null
   const cells: Cell[] = []
   const numbers = new Map<string, number>()
@@ -32,7 +33,11 @@ export function chainOf(lattice: Lattice): Chain | null {
     biased: false,
   }))
   const systems = situations.map((situation) => buildSystem(situation, rows))
-  if (systems.some(({ media, stack }) => !media.lossless || stack.exit === hardWall)) return null
+  const single = systems.every(
+    ({ media, stack, beside, behind }) =>
+      media.lossless && stack.exit !== hardWall && beside === undefined && behind === undefined,
+  )
+  if (!single) return null
   const links = lattice
     .slots(new Int32Array(lattice.places.length))
     .map(({ layer }) => ({ places: placesOf(layers[layer]), cells: numbered[layer] }))

@@ -1,6 +1,8 @@
 import type { Lattice } from './Lattice.js'
-import { type Candidate, countsOf } from './LayerLattice.js'
+import { type Candidate, listsOf } from './LayerLattice.js'
+import { mediumKey } from './mediumIdentity.js'
 import { canonicalOf, partners } from './mirror.js'
+import { countsOf } from './widthsOf.js'
 
 /**
  * How many different stacks a lattice holds, mirror images counted once where they are one.
@@ -32,7 +34,12 @@ export function countsUpperBound(lattice: Lattice): boolean {
 
 /** No formula tells how many there are: layers may coincide, widths may not fall, or images depend on counts of repetitions. */
 function needsEach(lattice: Lattice): boolean {
-  return mayCoincide(lattice) || lattice.rising.length > 0 || (lattice.repeats.length > 0 && lattice.reversible)
+  return (
+    mayCoincide(lattice) ||
+    lattice.rising.length > 0 ||
+    lattice.totalNm !== null ||
+    (lattice.repeats.length > 0 && lattice.reversible)
+  )
 }
 
 const enumerated = 200_000
@@ -116,8 +123,10 @@ function valuesByAlloy(lattice: Lattice, { fits }: ValueClass): Map<string | nul
   return groups
 
   function commonCounts(medium: Candidate): number[] {
-    const { first: from, stride } = medium.widths
-    const counts = Array.from({ length: countsOf(medium.widths) }, (_, i) => from + i * stride)
+    const { first: from, last, stride, gap } = medium.widths
+    const length = Math.max(0, Math.floor((last - from) / stride) + 1)
+    const all = Array.from({ length }, (_, i) => from + i * stride)
+    const counts = all.filter((n) => n === 0 || n >= gap)
     if (alike) return counts
     const theirs = others.map((layer) => ({ layer, own: layer.equalOf(medium) }))
     return counts.filter((n) => theirs.every(({ layer, own }) => own !== null && layer.allows(own, n)))
@@ -149,10 +158,10 @@ function mayShareMedium(a: Lattice['layers'][number], b: Lattice['layers'][numbe
       if (one.kind === 'material' && other.kind === 'material') {
         return one.material === other.material && (one.x === null || one.x.some((x) => other.x!.includes(x)))
       }
-      if (one.kind === 'material' || other.kind === 'material') return false
-      return (['potentialEv', 'massRel', 'alphaPerEv'] as const).every((key) =>
-        one[key].some((value) => other[key].includes(value)),
-      )
+      if (one.kind !== other.kind || one.kind === 'material') return false
+      if (one.kind === 'table' && other.kind === 'table') return mediumKey(one) === mediumKey(other)
+      const theirs = listsOf(other)
+      return listsOf(one).every((list, p) => list === undefined || list.some((value) => theirs[p]!.includes(value)))
     }),
   )
 }

@@ -1,3 +1,4 @@
+import type { MediumChoice } from '../model/index.js'
 import type { Lattice, Stretch } from './Lattice.js'
 
 /**
@@ -28,10 +29,23 @@ function isBehind(stretches: readonly Stretch[]): boolean {
     if (Math.abs(thicker) > sameNm) return thicker < 0
     const [a, b] = [ours.medium, theirs.medium]
     if (a.key === b.key) continue
-    const [x, y] = [a, b].map(({ choice }) => (choice.kind === 'material' ? (choice.x ?? 0) : choice.potentialEv))
+    const [x, y] = [a, b].map(({ choice }) => rankOf(choice))
     return x === y ? a.key < b.key : x < y
   }
   return false
+}
+
+function rankOf(choice: MediumChoice): number {
+  switch (choice.kind) {
+    case 'material':
+      return choice.x ?? 0
+    case 'numbers':
+      return choice.potentialEv
+    case 'index':
+      return choice.index
+    case 'table':
+      return 0
+  }
 }
 
 const sameNm = 1e-9
@@ -55,5 +69,5 @@ function mirrored(lattice: Lattice, assignment: Int32Array): Int32Array | null {
     layer.writeMedium(own, out)
     layer.writeCount(own, count, out)
   }
-  return lattice.rises(out) ? out : null
+  return lattice.feasible(out) ? out : null
 }

@@ -1,14 +1,23 @@
-import { buildSystem, type MediumChoice, regionDerivative, resolveMedium, type Situation } from '../model/index.js'
+import {
+  buildSystem,
+  type ElectronSituation,
+  type MediumChoice,
+  regionDerivative,
+  resolveMedium,
+  resolveRegion,
+  type Situation,
+} from '../model/index.js'
 import type { WaveSystem } from '../wave/index.js'
 import type { Lattice } from './Lattice.js'
-import { type Cell, countsOf, type LayerLattice, parameters, valuesOf } from './LayerLattice.js'
+import { type Cell, type LayerLattice, parameters, valuesOf } from './LayerLattice.js'
 import { repaired } from './repair.js'
 import type { Relaxed } from './types.js'
+import { countsOf } from './widthsOf.js'
 
 /**
  * Everything ordered around an assignment as continuous variables, the materials of lists held. A width varies in steps (so that an
  * alloy's monolayer, which grows with x through strain, takes the width along), scaled to one nm; x in tenths, potentials in 50 meV,
- * masses in a fifth of their mean, alpha in 1/eV. A layer that stands several times adds up in none of these: each slot is a row of its
+ * masses in a fifth of their mean, alpha in 1/eV, indices in tenths; films are scaled to ten nm. An extinction stays as it is. A layer that stands several times adds up in none of these: each slot is a row of its
  * own, and the variable moves them all.
  */
 export function relaxed(lattice: Lattice, assignment: Int32Array): Relaxed {
@@ -79,6 +88,7 @@ class RelaxedStack implements Relaxed {
 
   private directionsAt(layers: readonly FreeLayer[], situation: Situation): Float64Array {
     const slots = this.lattice.slots(this.origin)
+    const stride = strideOf(situation)
     const row = slots.length * stride
     const out = new Float64Array(this.variables.length * row)
     this.variables.forEach((variable, v) => {
@@ -127,8 +137,9 @@ class RelaxedStack implements Relaxed {
 
   /** d[width, potential, mass, alpha]/d(variable) of a layer. */
   private changeOf({ what, unit, layer }: Variable, at: FreeLayer, situation: Situation): Float64Array {
-    const change = new Float64Array(stride)
+    const change = new Float64Array(strideOf(situation))
     if (what === width) change[0] = at.stepNm * unit
+    else if (situation.kind === 'light') change[1] = unit
     else if (what > 0) change[what] = unit
     else {
       const { potentialEv, massRel, alphaPerEv } = regionDerivative(at.choice, situation)
@@ -139,34 +150,40 @@ class RelaxedStack implements Relaxed {
   }
 }
 
-/** Width, potential, mass, alpha. */
-const stride = 4
+/** Width, then potential, mass, alpha; or width and index. */
+function strideOf({ kind }: Situation): number {
+  return kind === 'electron' ? 4 : 2
+}
 
 function variablesOf(layer: LayerLattice, number: number, { medium, count }: Cell): Variable[] {
   const variables: Variable[] = []
   parameters.forEach((name, what) => {
     const values = valuesOf(layer.options[medium.digits[0]], what)
-    if (values.length < 2) return
+    if (values.length < 2 || name === 'extinction') return
     const [first, last] = [values[0], values[values.length - 1]]
     const unit = name === 'mass' ? (first + last) / 10 : units[name]
     const start = values[medium.digits[what + 1]] / unit
     variables.push({ layer: number, what, unit, start, lower: first / unit, upper: last / unit })
   })
-  const { first, stride: by, stepNm } = medium.widths
+  const { first, last, stride: by, stepNm } = medium.widths
   const choices = countsOf(medium.widths)
   if (choices > 1) {
-    const unit = 1 / stepNm
-    const [start, lower, upper] = [count, first, first + by * (choices - 1)].map((n) => n / unit)
+    const unit = (medium.resolved.kind === 'light' ? filmNm : 1) / stepNm
+    const most = first + by * Math.floor((last - first) / by)
+    const [start, lower, upper] = [count, first, most].map((n) => n / unit)
     variables.push({ layer: number, what: width, unit, start, lower, upper })
   }
   return variables
 }
 
 /** What changes a transmission by about as much as one nm does. */
-const units = { x: 0.1, potential: 0.05, alpha: 1 }
+const units = { x: 0.1, potential: 0.05, alpha: 1, index: 0.1 }
+const filmNm = 10
 
 function movedChoice(choice: MediumChoice, to: ReadonlyMap<number, number>): MediumChoice {
   if (choice.kind === 'material') return { ...choice, x: to.get(0) ?? choice.x }
+  if (choice.kind === 'table') return choice
+  if (choice.kind === 'index') return { ...choice, index: to.get(4) ?? choice.index }
   const [potentialEv, massRel, alphaPerEv] = [1, 2, 3].map((what) => to.get(what))
   return {
     ...choice,
@@ -177,9 +194,9 @@ function movedChoice(choice: MediumChoice, to: ReadonlyMap<number, number>): Med
 }
 
 /** d(nm per monolayer)/dx; the central difference is good to 1e-8, for the monolayer is nearly straight in x. */
-function monolayerDerivative(choice: MediumChoice, situation: Situation): number {
-  if (choice.kind === 'numbers') return 0
-  const at = (shift: number) => resolveMedium({ ...choice, x: choice.x! + shift }, situation).monolayerNm!
+function monolayerDerivative(choice: MediumChoice, situation: ElectronSituation): number {
+  if (choice.kind !== 'material') return 0
+  const at = (shift: number) => resolveRegion({ ...choice, x: choice.x! + shift }, situation).monolayerNm!
   return (at(1e-3) - at(-1e-3)) / 2e-3
 }
 

@@ -1,5 +1,6 @@
 import type { Lattice } from './Lattice.js'
-import { type Candidate, countsOf, type LayerLattice, parameters, valuesOf } from './LayerLattice.js'
+import { type Candidate, type LayerLattice, parameters, valuesOf } from './LayerLattice.js'
+import { countsOf } from './widthsOf.js'
 
 /**
  * The assignment itself when it is feasible, else a feasible one near it: choices beyond a list's end are taken back to it, widths
@@ -12,7 +13,37 @@ export function repaired(lattice: Lattice, assignment: Int32Array): Int32Array {
   for (const layer of lattice.layers) withinLists(layer, out)
   if (lattice.compositions !== null && !lattice.feasible(out)) limitAlloys(lattice, out)
   if (!lattice.feasible(out)) raise(lattice, out)
+  if (!lattice.fits(out)) intoTotal(lattice, out)
   return out
+}
+
+/** Moves the widths towards the limits of the whole stack: all by the same share of what each has left, then one by one. */
+function intoTotal(lattice: Lattice, out: Int32Array): void {
+  const [least, most] = lattice.totalNm!
+  const slots = lattice.slots(out)
+  const times = lattice.layers.map((_, i) => slots.filter(({ layer }) => layer === i).length)
+  const widthOf = (i: number) => {
+    const cell = lattice.layers[i].cell(out)
+    return cell === null ? 0 : cell.count * cell.medium.widths.stepNm
+  }
+  const total = () => times.reduce((sum, n, i) => sum + n * widthOf(i), 0)
+  for (let round = 0; round < 60 && !lattice.fits(out); round++) {
+    const now = total()
+    const goal = now > most ? most : least
+    const ends = lattice.layers.map((layer) => {
+      const { first, last, stepNm } = layer.medium(out)!.widths
+      return (now > most ? first : last) * stepNm
+    })
+    const room = times.reduce((sum, n, i) => sum + n * (ends[i] - widthOf(i)), 0)
+    if (room === 0) return
+    // A little further each time, for counts are whole.
+    const share = Math.min(1, ((goal - now) / room) * (1 + 0.05 * round))
+    lattice.layers.forEach((layer, i) => {
+      if (layer.freeCount(out) === null) return
+      const medium = layer.medium(out)!
+      layer.writeCount(medium, (widthOf(i) + share * (ends[i] - widthOf(i))) / medium.widths.stepNm, out)
+    })
+  }
 }
 
 /**
@@ -139,7 +170,7 @@ function nearest(media: readonly Candidate[], to: Candidate): Candidate | null {
 /** Squared change of composition; another material of the list is further than any composition. */
 function distance({ choice: a, digits }: Candidate, { choice: b, digits: digitsB }: Candidate): number {
   if (digits[0] !== digitsB[0]) return 4
-  if (a.kind === 'numbers' || b.kind === 'numbers') return 0
+  if (a.kind !== 'material' || b.kind !== 'material') return 0
   const change = (a.x ?? 0) - (b.x ?? 0)
   return change * change
 }

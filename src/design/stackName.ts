@@ -2,6 +2,8 @@ import { createHash } from 'node:crypto'
 import { canonicalJson } from '../job/index.js'
 import type { MediumChoice } from '../model/index.js'
 import type { Lattice, Stretch } from './Lattice.js'
+import { listsOf } from './LayerLattice.js'
+import { mediumIdentity } from './mediumIdentity.js'
 
 /**
  * First 12 hex digits of SHA-256 over the canonical JSON of leads, what the layers are strained to, and the layers from entry to exit:
@@ -11,10 +13,10 @@ import type { Lattice, Stretch } from './Lattice.js'
 export function stackId(lattice: Lattice, stretches: readonly Stretch[]): string {
   const { entry, exit } = lattice.situations[0]
   const content = {
-    leads: [identity(entry), exit === 'hard wall' ? exit : identity(exit)],
-    strain: lattice.strainedTo && identity(lattice.strainedTo),
+    leads: [mediumIdentity(entry), exit === 'hard wall' ? exit : mediumIdentity(exit)],
+    strain: lattice.strainedTo && mediumIdentity(lattice.strainedTo),
     layers: stretches.map(({ medium, count }) => ({
-      ...identity(medium.choice),
+      ...mediumIdentity(medium.choice),
       count,
       ...(medium.widths.monolayers ? {} : { stepNm: medium.widths.stepNm }),
     })),
@@ -24,9 +26,9 @@ export function stackId(lattice: Lattice, stretches: readonly Stretch[]): string
 
 /** `AlGaAs(0.35) 12 / GaAs 18 / AlGaAs(0.35) 12 ML`; the unit stands at each layer where they differ. */
 export function stackText({ layers }: Lattice, stretches: readonly Stretch[]): string {
-  const options = layers.flatMap((layer) => layer.options).filter((option) => option.kind === 'numbers')
-  const free = options.filter((o) => o.potentialEv.length * o.massRel.length * o.alphaPerEv.length > 1)
-  const ranging = new Set(free.map(({ name }) => name))
+  const options = layers.flatMap((layer) => layer.options)
+  const free = options.filter((option) => listsOf(option).some((list) => list !== undefined && list.length > 1))
+  const ranging = new Set(free.map((option) => (option.kind === 'material' ? null : option.name)))
   const units = stretches.map(({ medium }) => (medium.widths.monolayers ? 'ML' : 'nm'))
   const single = units.every((unit) => unit === units[0])
   const parts = stretches.map(({ medium, count }, i) => {
@@ -36,15 +38,15 @@ export function stackText({ layers }: Lattice, stretches: readonly Stretch[]): s
   return single && parts.length > 0 ? `${parts.join(' / ')} ${units[0]}` : parts.join(' / ')
 }
 
-function identity(choice: MediumChoice): Record<string, unknown> {
-  if (choice.kind === 'material') return { material: choice.material, ...(choice.x === null ? {} : { x: choice.x }) }
-  const { potentialEv, massRel, alphaPerEv } = choice
-  return { potentialEv, massRel, alphaPerEv }
-}
-
 /** A name says enough unless its numbers are free. */
 function mediumText(choice: MediumChoice, ranging: ReadonlySet<string | null>): string {
   if (choice.kind === 'material') return choice.x === null ? choice.material : `${choice.material}(${choice.x})`
+  if (choice.kind === 'table') return choice.name
+  if (choice.kind === 'index') {
+    const { name, index, extinction } = choice
+    if (name !== null && !ranging.has(name)) return name
+    return `${name ?? ''}(${rounded(index)}${extinction === 0 ? '' : ` + ${rounded(extinction)}i`})`
+  }
   const { name, potentialEv, massRel, alphaPerEv } = choice
   if (name !== null && !ranging.has(name)) return name
   const alpha = alphaPerEv === 0 ? '' : `, ${rounded(alphaPerEv)} /eV`

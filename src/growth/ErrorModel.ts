@@ -13,6 +13,8 @@ export class ErrorModel {
   readonly alloys: readonly string[]
   /** The alloy of each layer by its number in `alloys`, -1 for none. */
   readonly alloyOf: readonly number[]
+  /** Distinct films, by the names of their sources: one error of the index each; none for electrons. */
+  readonly films: readonly string[]
   /** Place of each layer, counted from the substrate, from 1: one error of its width each. */
   readonly places: readonly number[]
   /** One standard deviation of each layer's own width. */
@@ -22,8 +24,9 @@ export class ErrorModel {
     readonly layers: readonly GrownLayer[],
     growth: Pick<GrowthSpec, 'startsAt' | 'sources' | 'spread'>,
   ) {
-    this.feeds = layers.map(({ choice }) => feedsOf(choice, growth.sources))
+    this.feeds = layers.map(({ choice, resolved }) => feedsOf(choice, resolved.kind, growth.sources))
     this.sources = [...new Set(this.feeds.flat().map(({ source }) => source))]
+    this.films = layers.some(({ resolved }) => resolved.kind === 'light') && growth.spread.index > 0 ? this.sources : []
     const alloys = layers.map(({ choice }) => alloyName(choice))
     this.alloys = [...new Set(alloys.filter((name) => name !== null))]
     this.alloyOf = alloys.map((name) => (name === null ? -1 : this.alloys.indexOf(name)))

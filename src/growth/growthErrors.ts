@@ -4,13 +4,10 @@ import { regionDerivative, type Situation } from '../model/index.js'
 import { ErrorModel } from './ErrorModel.js'
 import type { GrowthError } from './types.js'
 
-/** Width, potential, mass, alpha. */
-const perLayer = 4
-
 /**
  * The independent errors of growth to first order: one of the rate for each source (it scales that source's share of every layer
  * that it feeds, and moves x: dx = x (1 - x) of the first-named element's cell, the opposite of the other's), one of the width
- * for each layer, one of x for each alloy, which changes the material and not the width.
+ * for each layer, one of x for each alloy, which changes the material and not the width; for light one of the index of each film.
  */
 export function growthErrors(
   layers: readonly GrownLayer[],
@@ -19,7 +16,10 @@ export function growthErrors(
 ): GrowthError[] {
   const model = new ErrorModel(layers, growth)
   const { spread } = growth
+  // Width, then potential, mass, alpha; or width and index.
+  const perLayer = situation.kind === 'electron' ? 4 : 2
   const slopes = layers.map(({ choice }) => {
+    if (situation.kind === 'light') return []
     const { potentialEv, massRel, alphaPerEv } = regionDerivative(choice, situation)
     return [potentialEv, massRel, alphaPerEv]
   })
@@ -29,7 +29,7 @@ export function growthErrors(
       model.feeds[j].forEach((feed, i) => {
         if (feed.source !== source) return
         direction[perLayer * j] += feed.share * widthNm
-        if (choice.kind === 'numbers' || choice.x === null) return
+        if (choice.kind !== 'material' || choice.x === null) return
         addX(direction, j, (i === 0 ? 1 : -1) * choice.x * (1 - choice.x))
       })
     })
@@ -47,7 +47,14 @@ export function growthErrors(
     })
     return { name: `x of ${name}`, sd: spread.x, direction }
   })
-  return [...rates, ...widths, ...alloys]
+  const indices = model.films.map((film) => {
+    const direction = empty()
+    model.feeds.forEach(([{ source }], j) => {
+      if (source === film) direction[perLayer * j + 1] = 1
+    })
+    return { name: `index of ${film}`, sd: spread.index, direction }
+  })
+  return [...rates, ...widths, ...alloys, ...indices]
 
   function empty(): Float64Array {
     return new Float64Array(perLayer * layers.length)

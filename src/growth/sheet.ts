@@ -3,7 +3,7 @@ import type { GrowthSpec } from '../job/index.js'
 import { buildSystem, type Situation } from '../model/index.js'
 import type { Evaluation, Limit, Target } from '../target/index.js'
 import { ErrorModel } from './ErrorModel.js'
-import { secondsPerMl } from './feeds.js'
+import { secondsPerUnit } from './feeds.js'
 
 /** What a layer's line of the sheet adds to the layer. */
 export interface SheetRow {
@@ -13,7 +13,7 @@ export interface SheetRow {
   readonly seconds: number | null
   /** Change of this layer alone that uses up the least slack, first order; null when unmet or when it moves no limit. */
   readonly toleranceNm: number | null
-  /** Shift of the peak for one more monolayer (or lattice step), from the stack that has it; null without a peak. */
+  /** Shift of the peak for one more monolayer (or lattice step; of a film one more nm), from the stack that has it; null without a peak. */
   readonly shiftEv: number | null
 }
 
@@ -49,11 +49,11 @@ export function sheetOf({ layers, situation, growth, target, evaluation, limits 
   const energy = slope && peak ? target.maximumNear(system, peak.energyEv) : null
 
   const rows = layers.map((layer, j): SheetRow => {
-    const perMl = secondsPerMl(model.feeds[j])
-    const { monolayerNm } = layer.resolved
+    const perUnit = secondsPerUnit(model.feeds[j])
+    const unitNm = layer.resolved.kind === 'light' ? 1 : layer.resolved.monolayerNm
     return {
       fromSubstrate: model.places[j],
-      seconds: perMl === null || monolayerNm === null ? null : perMl * (layer.widthNm / monolayerNm),
+      seconds: perUnit === null || unitNm === null ? null : perUnit * (layer.widthNm / unitNm),
       toleranceNm: met ? tolerance(j) : null,
       shiftEv: slope && energy !== null ? shift(j, slope[perLayer * j], energy) : null,
     }
@@ -73,7 +73,8 @@ export function sheetOf({ layers, situation, growth, target, evaluation, limits 
   }
 
   function shift(j: number, slopeOfWidth: number, from: number): number | null {
-    const step = layers[j].resolved.monolayerNm ?? layers[j].stepNm
+    const { resolved, stepNm } = layers[j]
+    const step = resolved.kind === 'light' ? 1 : (resolved.monolayerNm ?? stepNm)
     const thicker = layers.map((layer, i) => (i === j ? { ...layer, widthNm: layer.widthNm + step } : layer))
     const energy = target.maximumNear(buildSystem(situation, thicker), from + slopeOfWidth * step)
     return energy === null ? null : energy - from

@@ -8,6 +8,6 @@ export function elementsOf(material: string): string[] {
 /** The compositions that pairs of cells, one for each element, give by their rates; ascending. */
 export function reachableX([first, second]: readonly string[], cells: readonly Source[]): number[] {
   const of = (element: string) => cells.filter((cell) => cell.element === element)
-  const found = of(first).flatMap((a) => of(second).map((b) => a.rateMlPerS / (a.rateMlPerS + b.rateMlPerS)))
+  const found = of(first).flatMap((a) => of(second).map((b) => a.rate / (a.rate + b.rate)))
   return [...new Set(found)].sort((a, b) => a - b)
 }

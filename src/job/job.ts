@@ -32,6 +32,9 @@ export interface Condition {
   readonly temperatureK: number
   readonly biasV: number
   readonly inPlaneEv: number
+  /** Of light, in the entry; below 90. */
+  readonly angleDeg: number
+  readonly polarisation: 'mean' | 'p' | 's'
 }
 
 export interface StackSpec {
@@ -47,6 +50,10 @@ export interface StackSpec {
   readonly biasOver: readonly [string, string] | null
   /** Ids of layers whose widths (nm) may not fall in this order; empty: no such rule. */
   readonly rising: readonly string[]
+  /** Vacuum wavelength at which quarter waves are counted and indices are told; null for electrons. */
+  readonly referenceNm: number | null
+  /** The exit is a plate so thick that what runs to and fro in it adds up by intensities, with this behind it. */
+  readonly back: { readonly thicknessNm: number; readonly behind: MediumOption } | null
 }
 
 export type StackItem = LayerSpec | PeriodSpec
@@ -89,10 +96,26 @@ export type MediumOption =
       readonly massRel: readonly number[]
       readonly alphaPerEv: readonly number[]
     }
+  | {
+      readonly kind: 'index'
+      readonly name: string | null
+      /** n + i kappa, at every wavelength. */
+      readonly index: readonly number[]
+      readonly extinction: readonly number[]
+    }
+  | {
+      readonly kind: 'table'
+      readonly name: string
+      /** Vacuum wavelength (nm, ascending), n, kappa. */
+      readonly rows: readonly (readonly [number, number, number])[]
+    }
 
-/** A width as written. ML count monolayers of whatever medium the layer gets; equal ends mean a fixed width. */
+/**
+ * A width as written. ML count monolayers of whatever medium the layer gets, qw its quarter waves at `stack.reference` and normal
+ * incidence; equal ends mean a fixed width.
+ */
 export interface WidthSpec {
-  readonly unit: 'ML' | 'nm'
+  readonly unit: 'ML' | 'nm' | 'qw'
   readonly from: number
   readonly to: number
   /** In the same unit; null: one ML, or the growth step. */
@@ -106,12 +129,19 @@ interface DemandBase {
   readonly accept: Accepted | null
   /** The condition at which it holds; null: at all of them. */
   readonly at: string | null
+  /** What is limited: the transmitted, reflected or absorbed share. */
+  readonly quantity: Quantity
 }
+
+export type Quantity = 'A' | 'R' | 'T'
+
+/** The axis that a line is stated on: energies, or vacuum wavelengths of light. */
+export type Axis = 'eV' | 'nm'
 
 /** What `accept` states, in the demand's own terms. */
 export interface Accepted {
-  readonly withinEv?: number
-  readonly fwhmEv?: readonly [number, number]
+  readonly within?: number
+  readonly fwhm?: readonly [number, number]
   readonly height?: number
   readonly alone?: number
   readonly top?: number
@@ -122,22 +152,24 @@ export interface Accepted {
   readonly rms?: number
 }
 
-export interface PeakDemand extends DemandBase {
+interface LineDemand extends DemandBase {
+  /** What `centre`, `within` and `fwhm` are stated in. */
+  readonly axis: Axis
+  readonly centre: number
+  readonly within: number
+  readonly fwhm: readonly [number, number] | null
+}
+
+export interface PeakDemand extends LineDemand {
   readonly kind: 'peak'
-  readonly energyEv: number
-  readonly withinEv: number
-  readonly fwhmEv: readonly [number, number] | null
   readonly height: number | null
   /** No other maximum in the scan above this; null: not stated. */
   readonly alone: number | null
 }
 
 /** A flat top. */
-export interface BandDemand extends DemandBase {
+export interface BandDemand extends LineDemand {
   readonly kind: 'band'
-  readonly energyEv: number
-  readonly withinEv: number
-  readonly fwhmEv: readonly [number, number] | null
   /** Least mean of T over the inner 80 % between the half-height points. */
   readonly top: number | null
   /** Greatest dip of T there. */
@@ -184,8 +216,13 @@ export interface GrowthSpec {
   readonly sources: readonly Source[]
   /** At most so many different alloys in one stack; null: no limit. */
   readonly compositions: number | null
-  /** Lattice step of nm ranges; null: one ML for materials, 0.1 nm for media by numbers. */
+  /** Lattice step of nm ranges; null: one ML for materials, 0.1 nm for media by numbers and for light. */
   readonly stepNm: number | null
+  /** The thinnest layer that can be made, and the limits of the whole stack (nm); null: none. */
+  readonly thinnestNm: number | null
+  readonly totalNm: readonly [number, number] | null
+  /** Thickness on the part over that on the monitor, by medium. */
+  readonly tooling: Readonly<Record<string, number>>
   readonly spread: Spread
   /** True where the job has no `spread`: everything that uses it says "assumed". */
   readonly assumed: boolean
@@ -194,8 +231,10 @@ export interface GrowthSpec {
 
 export interface Source {
   readonly name: string
+  /** What it feeds: an element, or for light the name of a medium. */
   readonly element: string
-  readonly rateMlPerS: number
+  /** ML/s; for light nm/s. */
+  readonly rate: number
 }
 
 /** One standard deviation each. */
@@ -205,6 +244,8 @@ export interface Spread {
   /** Per grown layer, in monolayers of its own or in nm. */
   readonly layer: { readonly value: number; readonly unit: 'ML' | 'nm' }
   readonly x: number
+  /** Of the refractive index of each medium. */
+  readonly index: number
 }
 
 export interface SearchSpec {

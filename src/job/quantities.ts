@@ -37,11 +37,15 @@ export const dimensions = {
     examples: { single: '1.2 /eV', range: '0.8..1.2 /eV step 0.1 /eV' },
   },
   width: { units: { ML: 0, ...lengths }, examples: { single: '12 ML', range: '6..20 ML' } },
+  filmWidth: { units: { qw: 0, ...lengths }, examples: { single: '1 qw', range: '20..200 nm' } },
+  wavelength: { units: lengths, examples: { single: '633 nm', range: '400..700 nm' } },
+  angle: { units: { deg: 0, '\u00b0': 0 }, examples: { single: '45 deg', range: '45 deg' } },
   length: { units: lengths, examples: { single: '0.1 nm', range: '1..2 nm' } },
   layerError: { units: { ML: 0, ...lengths }, examples: { single: '0.5 ML', range: '0.5 ML' } },
   voltage: { units: { mV: -3, V: 0 }, examples: { single: '350 mV', range: '0..350 mV' } },
   temperature: { units: { K: 0 }, examples: { single: '77 K', range: '300 K' } },
   rate: { units: { 'ML/s': 0 }, examples: { single: '0.70 ML/s', range: '0.70 ML/s' } },
+  filmRate: { units: { 'nm/s': 0, '\u00c5/s': -1 }, examples: { single: '0.5 nm/s', range: '0.5 nm/s' } },
   percent: { units: { '%': -2 }, examples: { single: '1 %', range: '1 %' } },
   plain: { units: {}, examples: { single: '0.25', range: '0.1..0.3 step 0.01' } },
 } satisfies Record<string, Dimension>
@@ -83,8 +87,8 @@ export function parseQuantity(label: string, raw: string | number, name: Dimensi
     const remedy = `Write "${text.slice(0, text.indexOf('step'))}step ${step} ${writtenUnit}".`
     return complain(stepUnit ? `has a step in ${shortened(stepUnit)}` : 'has a step without a unit', remedy)
   }
-  if ((writtenUnit === 'ML') !== (stepUnit === 'ML') && step !== undefined) {
-    return complain('mixes ML and nm', 'Write range and step in the same unit.')
+  if (step !== undefined && countedIn(writtenUnit) !== countedIn(stepUnit)) {
+    return complain(`mixes ${writtenUnit} and ${stepUnit}`, 'Write range and step in the same unit.')
   }
   const from = shifted(a, exponent)
   const to = shifted(b, exponent)
@@ -131,7 +135,23 @@ function scaled(value: number, exponent: number): number {
   return exponent < 0 ? value / Number(`1e${-exponent}`) : value * Number(`1e${exponent}`)
 }
 
-const aliases = new Set(['\u00b5m', '\u03bcm', 'mm', 'pm', '\u00c5', '\u212b', 'angstrom', '1/eV'])
+/** Units that no power of ten leads from one to another. */
+function countedIn(unit: string): string {
+  return unit === 'ML' || unit === 'qw' ? unit : ''
+}
+
+const aliases = new Set([
+  '\u00b5m',
+  '\u03bcm',
+  'mm',
+  'pm',
+  '\u00c5',
+  '\u212b',
+  'angstrom',
+  '1/eV',
+  '\u00b0',
+  '\u00c5/s',
+])
 
 function exponentOf(unit: string, units: Readonly<Record<string, number>>): number | null {
   if (unit === '') return Object.keys(units).length === 0 ? 0 : null

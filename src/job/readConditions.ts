@@ -5,10 +5,17 @@ import type { Reader } from './Reader.js'
 import type { JobAsWritten } from './schema.js'
 import type { Path } from './YamlSource.js'
 
-type Written = Pick<Loose<JobAsWritten>, 'temperature' | 'bias' | 'in-plane' | 'conditions'>
+type Written = Pick<Loose<JobAsWritten>, 'temperature' | 'bias' | 'in-plane' | 'angle' | 'polarisation' | 'conditions'>
 
 const mostConditions = 16
-const rest: Condition = { name: '', temperatureK: 300, biasV: 0, inPlaneEv: 0 }
+const rest: Condition = {
+  name: '',
+  temperatureK: 300,
+  biasV: 0,
+  inPlaneEv: 0,
+  angleDeg: 0,
+  polarisation: 's',
+}
 
 /** The operating points: those of `conditions`, which take from the top of the job what they don't state, else the one stated there. */
 export function readConditions(written: Written, reader: Reader): Condition[] {
@@ -52,5 +59,9 @@ function readCondition(written: Omit<Written, 'conditions'>, path: Path, top: Co
   const inPlaneEv = reader.single(written['in-plane'], at('in-plane'), 'energy') ?? top.inPlaneEv
   if (inPlaneEv < 0)
     reader.complain(at('in-plane'), 'is negative', 'Write the kinetic energy along the layers, like "10 meV".')
-  return { name: '', temperatureK, biasV: biasV === 0 ? 0 : biasV, inPlaneEv }
+  const angleDeg = reader.single(written.angle, at('angle'), 'angle') ?? top.angleDeg
+  if (!(angleDeg >= 0 && angleDeg < 90))
+    reader.complain(at('angle'), 'is outside 0..90 deg, 90 left out', 'Write the angle in the entry, like "45 deg".')
+  const polarisation = written.polarisation ?? top.polarisation
+  return { name: '', temperatureK, biasV: biasV === 0 ? 0 : biasV, inPlaneEv, angleDeg, polarisation }
 }

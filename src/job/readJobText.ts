@@ -1,19 +1,21 @@
-import { materialNotes } from '../media/index.js'
+import { hcEvNm, materialNotes, opticalMaterial } from '../media/index.js'
+import type { Tables } from './CsvTable.js'
+import { checkOptics } from './checkOptics.js'
 import { checkShape, type Loose } from './checkShape.js'
-import type { Job } from './job.js'
+import type { Job, MediumOption } from './job.js'
 import { Problems } from './Problems.js'
 import { shortened } from './problemAt.js'
 import { Reader } from './Reader.js'
 import { readBiasOver } from './readBiasOver.js'
 import { readConditions } from './readConditions.js'
-import type { Tables } from './readCurve.js'
 import { readGrowth, readSources, readStep } from './readGrowth.js'
 import { readMedia } from './readMedia.js'
 import { readStack } from './readStack.js'
-import { readTarget } from './readTarget.js'
+import { readScan, readTarget } from './readTarget.js'
 import { readYaml } from './readYaml.js'
 import { refuse } from './refuse.js'
 import type { JobAsWritten } from './schema.js'
+import type { SpectralRange } from './spectral.js'
 import { largestFile, refusedName } from './tableFile.js'
 import { YamlSource } from './YamlSource.js'
 
@@ -47,31 +49,26 @@ export function assembleJob(text: string, file: string, tables: Tables): Job {
   const value = readYaml(source, problems)
   if (value === undefined) problems.throwIfAny()
 
-  const light = (value as { kind?: unknown }).kind === 'light'
   const written = checkShape(value, problems)
-  if (light) {
-    // Everything else in it would be judged by the rules of electrons.
-    problems.add(
-      ['kind'],
-      "kind: light is part of the job format, but this version can't run it yet.",
-      'Write "kind: electron".',
-    )
-    problems.throwIfAny()
-  }
-  refuse(written, problems)
+  const kind = written.kind ?? 'electron'
+  refuse(written, kind, problems)
 
   const files: Record<string, string> = Object.create(null)
   const reader = new Reader(problems)
   const name = readName(written.name, problems)
   const conditions = readConditions(written, reader)
-  const media = readMedia(written.media, reader)
+  const keep = keeping(tables, files)
+  const media = readMedia(written.media, kind, keep, reader)
   const stepNm = readStep(written.growth, reader)
-  const sources = readSources(written.growth?.sources, reader)
+  const sources = readSources(written.growth?.sources, media, reader)
   const cells = sources.filter((source) => source !== null)
-  const stack = readStack(written.stack, media, stepNm, cells, reader)
+  const scan = readScan(written.target, kind, conditions, reader)
+  const stack = readStack(written.stack, media, stepNm, cells, scanMiddleNm(scan), reader)
   const biasOver = readBiasOver(written['bias over'], stack.layers, reader)
-  const target = readTarget(written.target, conditions, keeping(tables, files), reader)
-  const growth = readGrowth(written.growth, stepNm, stack.layers, sources, reader)
+  const hardWall = stack.spec?.exit === 'hard wall'
+  const target = readTarget(written.target, { kind, scan, conditions, hardWall, tables: keep }, reader)
+  const growth = readGrowth(written.growth, stepNm, stack.layers, sources, kind, reader)
+  if (kind === 'light' && scan && stack.spec) checkOptics(stack.spec, stack.layers, scan, problems)
   const seed =
     written.search?.seed === undefined ? 1 : reader.whole(written.search.seed, ['search', 'seed'], 0, 4294967295)
   const candidates =
@@ -86,11 +83,11 @@ export function assembleJob(text: string, file: string, tables: Tables): Job {
     files,
     format: 1 as const,
     name,
-    kind: 'electron' as const,
+    kind,
     note: written.note ?? '',
     conditions,
     stack: { ...stack.spec!, biasOver },
-    scanEv: target.scanEv!,
+    scanEv: [scan!.lowEv, scan!.highEv],
     resolutionEv: target.resolutionEv,
     demands: target.demands,
     growth,
@@ -102,6 +99,13 @@ export function assembleJob(text: string, file: string, tables: Tables): Job {
     deliver: { candidates: candidates! },
   } as const
   return { ...job, notes: notesOf(job, statesTemperature(written)) }
+}
+
+/** In the unit that the scan is written in. */
+function scanMiddleNm(scan: SpectralRange | null): number | null {
+  if (scan === null) return null
+  const { from, to } = scan.written
+  return scan.axis === 'nm' ? 0.5 * (from + to) : hcEvNm / (0.5 * (from + to))
 }
 
 function readName(name: string | undefined, problems: Problems): string {
@@ -131,14 +135,15 @@ function keeping(tables: Tables, files: Record<string, string>): Tables {
 }
 
 function notesOf(job: Omit<Job, 'notes'>, statesTemperature: boolean): string[] {
-  const { growth, stack, conditions } = job
+  const { growth, stack, conditions, kind } = job
   const notes: string[] = []
-  if (!statesTemperature) notes.push('The job states no temperature: 300 K is assumed.')
+  if (!statesTemperature && kind === 'electron') notes.push('The job states no temperature: 300 K is assumed.')
   if (growth.assumed) {
     const { rate, layer, x } = growth.spread
-    const values = `rates ${rate * 100} %, layers ${layer.value} ${layer.unit}, x ${x}`
+    const values = `rates ${rate * 100} %, layers ${layer.value} ${layer.unit}${kind === 'electron' ? `, x ${x}` : ''}`
     notes.push(`The job states no growth.spread: ${values} (one standard deviation) are assumed.`)
   }
+  if (kind === 'light') return [...notes, ...opticalNotes(stack)]
   const seen = new Set<string>()
   for (const option of optionsOf(stack)) {
     if (option.kind !== 'material') continue
@@ -153,10 +158,33 @@ function notesOf(job: Omit<Job, 'notes'>, statesTemperature: boolean): string[] 
   return [...notes, ...seen]
 }
 
+/** What the engineer must know of the listed media; a layer of a bulk medium is a film that has other indices. */
+function opticalNotes({ entry, exit, back, layers }: Job['stack']): string[] {
+  const notes = new Set<string>()
+  const leads = [entry, exit, back?.behind].filter((lead) => lead !== undefined && lead !== 'hard wall')
+  for (const option of leads) {
+    if (option.kind === 'material') for (const remark of opticalMaterial(option.material).remarks) notes.add(remark)
+  }
+  for (const option of insideOf(layers)) {
+    if (option.kind !== 'material') continue
+    const { form, name, remarks } = opticalMaterial(option.material)
+    for (const remark of remarks) notes.add(remark)
+    if (form === 'bulk') {
+      notes.add(
+        `${name} is listed as bulk, but stands in a layer: a deposited film is less dense, and its index lies some per cent lower. Give ` +
+          'measured values by a table.',
+      )
+    }
+  }
+  return [...notes]
+}
+
 function optionsOf({ entry, exit, layers }: Job['stack']) {
-  const inside = (items: typeof layers): Exclude<typeof exit, 'hard wall'>[] =>
-    items.flatMap((item) =>
-      item.kind === 'period' ? [...inside(item.period), ...inside(item.between)] : (item.media ?? []),
-    )
-  return [entry, ...inside(layers), ...(exit === 'hard wall' ? [] : [exit])]
+  return [entry, ...insideOf(layers), ...(exit === 'hard wall' ? [] : [exit])]
+}
+
+function insideOf(items: Job['stack']['layers']): MediumOption[] {
+  return items.flatMap((item) =>
+    item.kind === 'period' ? [...insideOf(item.period), ...insideOf(item.between)] : (item.media ?? []),
+  )
 }

@@ -1,6 +1,6 @@
 import { readFile } from 'node:fs/promises'
 import { type CsvError, parse } from 'csv-parse/sync'
-import { isMaterial, material, materialNames, nearest } from '../media/index.js'
+import { isMaterial, isOptical, material, materialNames, nearest, opticalNames } from '../media/index.js'
 
 /** One layer of a table. Either a material (with x for an alloy) or numbers; a count of monolayers, a width, or both. */
 export interface LayerRow {
@@ -16,6 +16,7 @@ export interface LayerRow {
         readonly massRel: number
         readonly alphaPerEv: number
       }
+    | { readonly kind: 'index'; readonly name: string | null; readonly index: number; readonly extinction: number }
   /** Of the layer's own, strained material; not whole for a stack as grown. Null for numbers. */
   readonly ml: number | null
   readonly widthNm: number | null
@@ -30,12 +31,16 @@ export class LayersError extends Error {
   }
 }
 
-const known = ['no', 'id', 'material', 'x', 'ml', 'width_nm', 'potential_eV', 'mass_rel', 'alpha_per_eV'] as const
+const known = [
+  ...(['no', 'id', 'material', 'x', 'ml', 'width_nm', 'potential_eV', 'mass_rel', 'alpha_per_eV'] as const),
+  ...(['index', 'extinction'] as const),
+]
 type Column = (typeof known)[number]
 
 /**
  * Reads a stack from CSV (commas, one header line): a layers.csv of a result, or any table with `ml` or `width_nm` and either
- * `material` (and `x`) or `potential_eV` and `mass_rel` (and `alpha_per_eV`, 0 where empty). Other columns are passed over. A
+ * `material` (and `x`) or numbers: `potential_eV` and `mass_rel` (and `alpha_per_eV`, 0 where empty), or for light `index` (and
+ * `extinction`, 0 where empty). Other columns are passed over. A
  * known material wins over numbers beside it; another word beside numbers is the name of the user's own medium. Rows come back
  * from entry to exit: in the order of `no` where there is one, else as they stand. Throws LayersError that holds every problem.
  */
@@ -74,7 +79,7 @@ export function parseLayers(text: string, file: string): LayerRow[] {
 }
 
 const needed =
-  'Give a header with ml or width_nm, and material (with x for alloys) or potential_eV and mass_rel; columns are separated by commas.'
+  'Give a header with ml or width_nm, and material (with x for alloys), potential_eV and mass_rel, or index; columns are separated by commas.'
 
 interface Line {
   readonly record: readonly string[]
@@ -106,8 +111,8 @@ function headProblems(columns: ReadonlyMap<string, number>, where: string): stri
   const hint = [needed, ...misspelt].join(' ')
   if (!columns.has('ml') && !columns.has('width_nm'))
     problems.push(`${where}  There is no column ml or width_nm. ${hint}`)
-  if (!columns.has('material') && !columns.has('potential_eV')) {
-    problems.push(`${where}  There is no column material or potential_eV. ${hint}`)
+  if (!columns.has('material') && !columns.has('potential_eV') && !columns.has('index')) {
+    problems.push(`${where}  There is no column material, potential_eV or index. ${hint}`)
   }
   return problems
 }
@@ -159,7 +164,7 @@ function layerRow(cells: Cells): LayerRow | null {
     cells.problem('ml and width_nm are both empty. Give one of them.')
   }
   if (!medium) return null
-  if (medium.kind === 'numbers' && ml !== null) {
+  if (medium.kind !== 'material' && ml !== null) {
     cells.problem(`ml is ${ml}, but a medium given by numbers has no monolayer. Give width_nm and leave ml empty.`)
   }
   return { where: cells.where, id: cells.text('id'), medium, ml, widthNm }
@@ -172,12 +177,15 @@ function notNegative(value: number): boolean {
 function mediumOf(cells: Cells): LayerRow['medium'] | null {
   const name = cells.text('material')
   if (name !== null && isMaterial(name)) return materialOf(name, cells)
+  if (name !== null && isOptical(name)) return { kind: 'material', material: name, x: null }
+  if (cells.text('index') !== null) return opticsOf(name, cells)
   const hasNumbers = cells.text('potential_eV') !== null || cells.text('mass_rel') !== null
   if (name !== null && (!hasNumbers || cells.text('ml') !== null)) {
-    const near = nearest(name, materialNames)
-    const remedy = near.length > 0 ? `Did you mean ${near.join(' or ')}?` : `Built in: ${materialNames.join(', ')}.`
+    const builtIn = [...materialNames, ...opticalNames]
+    const near = nearest(name, builtIn)
+    const remedy = near.length > 0 ? `Did you mean ${near.join(' or ')}?` : `Built in: ${builtIn.join(', ')}.`
     cells.problem(
-      `"${name}" is no built-in material. ${remedy} Another medium needs potential_eV, mass_rel and width_nm.`,
+      `"${name}" is no built-in material. ${remedy} Another medium needs potential_eV and mass_rel, or index, and width_nm.`,
     )
     return null
   }
@@ -186,6 +194,12 @@ function mediumOf(cells: Cells): LayerRow['medium'] | null {
   const alphaPerEv = cells.number('alpha_per_eV') ?? 0
   if (potentialEv === null || massRel === null) return null
   return { kind: 'numbers', name, potentialEv, massRel, alphaPerEv }
+}
+
+function opticsOf(name: string | null, cells: Cells): LayerRow['medium'] | null {
+  const index = cells.required('index', (value) => value > 0, 'a refractive index above 0')
+  const extinction = cells.number('extinction', notNegative, '0 or more (positive absorbs)') ?? 0
+  return index === null ? null : { kind: 'index', name, index, extinction }
 }
 
 function materialOf(name: string, cells: Cells): LayerRow['medium'] | null {

@@ -1,7 +1,7 @@
 import type { Loose } from './checkShape.js'
 import type { MediumOption } from './job.js'
 import type { Reader } from './Reader.js'
-import { isAlloy, readComposition, readNamed, readNumbers, type UserMedia } from './readMedia.js'
+import { isAlloy, type KnownMedia, readComposition, readNamed, readNumbers } from './readMedia.js'
 import type { JobAsWritten } from './schema.js'
 
 type Lead = Loose<JobAsWritten['stack']['entry']>
@@ -9,15 +9,19 @@ type Lead = Loose<JobAsWritten['stack']['entry']>
 /** A lead: a material, numbers, or (exit only) `hard wall`. Nothing about it may be left to the search. */
 export function readLead(
   lead: Lead | undefined,
-  side: 'entry' | 'exit',
-  media: UserMedia,
+  side: 'back' | 'entry' | 'exit',
+  media: KnownMedia,
   reader: Reader,
 ): MediumOption | 'hard wall' | null {
-  const path = ['stack', side]
+  const path = side === 'back' ? ['stack', 'back', 'then'] : ['stack', side]
   const { problems } = reader
   if (lead === undefined) return null
   if (typeof lead === 'string') {
     if (lead === 'hard wall') {
+      if (media.kind === 'light') {
+        problems.add(path, 'A hard wall is a lead of electrons.', 'Name a medium, like "air", or a metal, like "Ag".')
+        return null
+      }
       if (side === 'exit') return lead
       problems.add(
         path,
@@ -36,7 +40,9 @@ export function readLead(
     }
     return fixed(readNamed(lead, path, null, media, reader))
   }
-  const byNumbers = (['potential', 'mass', 'alpha'] as const).filter((key) => lead[key] !== undefined)
+  const byNumbers = (['potential', 'mass', 'alpha', 'index', 'extinction'] as const).filter(
+    (key) => lead[key] !== undefined,
+  )
   if (lead.material === undefined) {
     if (problems.source.has([...path, 'material'])) return null
     if (problems.source.has([...path, 'x'])) {
@@ -46,7 +52,7 @@ export function readLead(
         'Add "material: AlGaAs", or take x out.',
       )
     }
-    return fixed(readNumbers(lead, path, null, reader))
+    return fixed(readNumbers(lead, path, null, media.kind, reader))
   }
   for (const key of byNumbers) {
     problems.addAtKey(
@@ -56,7 +62,7 @@ export function readLead(
     )
   }
   const name = lead.material
-  const hasX = problems.source.has([...path, 'x'])
+  const hasX = media.kind === 'electron' && problems.source.has([...path, 'x'])
   const x = readComposition(lead.x, [...path, 'x'], reader)
   const named = readNamed(name, [...path, 'material'], x, media, reader)
   if (isAlloy(name, media) && !hasX) {
@@ -71,14 +77,25 @@ export function readLead(
 
   function fixed(option: MediumOption | null): MediumOption | null {
     if (option === null) return null
-    const lists =
-      option.kind === 'material' ? [option.x ?? [0]] : [option.potentialEv, option.massRel, option.alphaPerEv]
-    if (lists.every((list) => list.length === 1)) return option
+    if (listsOf(option).every((list) => list.length === 1)) return option
     problems.add(
       path,
-      `The ${side} is a lead and has to be fixed; here it has several values.`,
+      `The ${side === 'back' ? 'medium behind the exit' : side} is a lead and has to be fixed; here it has several values.`,
       'Write single numbers.',
     )
     return null
+  }
+}
+
+function listsOf(option: MediumOption): readonly (readonly number[])[] {
+  switch (option.kind) {
+    case 'material':
+      return option.x === null ? [] : [option.x]
+    case 'numbers':
+      return [option.potentialEv, option.massRel, option.alphaPerEv]
+    case 'index':
+      return [option.index, option.extinction]
+    case 'table':
+      return []
   }
 }

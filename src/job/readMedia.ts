@@ -1,26 +1,30 @@
-import { isMaterial, materialNames, nearest, needsX } from '../media/index.js'
+import { isMaterial, isOptical, materialNames, nearest, needsX, opticalNames } from '../media/index.js'
+import type { Tables } from './CsvTable.js'
 import type { Loose } from './checkShape.js'
 import { stepped, stepsBetween } from './decimal.js'
-import type { MediumOption } from './job.js'
+import type { Kind, MediumOption } from './job.js'
 import { shortened } from './problemAt.js'
 import type { DimensionName } from './quantities.js'
 import type { Reader } from './Reader.js'
+import { readTable } from './readTable.js'
 import type { ItemAsWritten, JobAsWritten } from './schema.js'
 import type { Path } from './YamlSource.js'
 
-export type NumbersOption = Extract<MediumOption, { kind: 'numbers' }>
+/** What a name in a job may mean. */
+export interface KnownMedia {
+  readonly kind: Kind
+  /** The user's own; null where one is not in order. */
+  readonly own: ReadonlyMap<string, MediumOption | null>
+}
 
-/** The user's own media by name; null where the numbers of one are not in order. */
-export type UserMedia = ReadonlyMap<string, NumbersOption | null>
-
-type Numbers = Loose<Pick<ItemAsWritten, 'potential' | 'mass' | 'alpha'>>
+type Numbers = Loose<Pick<ItemAsWritten, 'potential' | 'mass' | 'alpha' | 'index' | 'extinction'>>
 type Composition = Loose<ItemAsWritten>['x']
 
 /** More choices than this of one number is no lattice to search. */
 const mostChoices = 10_000
 
-export function readMedia(media: Loose<JobAsWritten>['media'], reader: Reader): UserMedia {
-  const found = new Map<string, NumbersOption | null>()
+export function readMedia(media: Loose<JobAsWritten>['media'], kind: Kind, tables: Tables, reader: Reader): KnownMedia {
+  const found = new Map<string, MediumOption | null>()
   for (const [name, numbers] of Object.entries(media ?? {})) {
     const path = ['media', name]
     if (!/^[A-Za-z][A-Za-z0-9_-]{0,39}$/.test(name)) {
@@ -30,16 +34,55 @@ export function readMedia(media: Loose<JobAsWritten>['media'], reader: Reader): 
         'Use letters, digits and dashes, a letter first.',
       )
     }
-    const medium = numbers === undefined ? null : readNumbers(numbers, path, name, reader)
-    if (isMaterial(name)) {
+    const medium = numbers === undefined ? null : readMedium(numbers, path, name)
+    if (isBuiltIn(name, kind)) {
       reader.problems.addAtKey(path, `${name} is a built-in material.`, `Choose another name, like "my-${name}".`)
     } else found.set(name, medium)
   }
-  return found
+  return { kind, own: found }
+
+  function readMedium(
+    { table, ...numbers }: Numbers & { readonly table?: string },
+    path: Path,
+    name: string,
+  ): MediumOption | null {
+    if (table === undefined) return readNumbers(numbers, path, name, kind, reader)
+    for (const key of Object.keys(numbers)) {
+      reader.problems.addAtKey([...path, key], `"${key}" has no place beside "table".`, 'Keep one of the two.')
+    }
+    const rows = readTable(table, [...path, 'table'], tables, reader)
+    return rows && { kind: 'table', name, rows }
+  }
 }
 
 /** A medium by numbers; every number may be a range with a step. Null where one is missing or wrong. */
-export function readNumbers(numbers: Numbers, path: Path, name: string | null, reader: Reader): NumbersOption | null {
+export function readNumbers(
+  numbers: Numbers,
+  path: Path,
+  name: string | null,
+  kind: Kind,
+  reader: Reader,
+): MediumOption | null {
+  return kind === 'electron' ? readRegion(numbers, path, name, reader) : readIndex(numbers, path, name, reader)
+}
+
+/** n and, where it absorbs, kappa, at every wavelength. */
+function readIndex(numbers: Numbers, path: Path, name: string | null, reader: Reader): MediumOption | null {
+  const { problems } = reader
+  const reported = problems.source.keyCount(path) > Object.keys(numbers).length
+  if (!reported && !problems.source.has([...path, 'index'])) {
+    const what = '"index" is missing: a medium of light by numbers needs it.'
+    problems.add([...path, 'index'], what, 'Add "index: 1.46".')
+  }
+  const index = choices(numbers.index, [...path, 'index'], 'plain', [1e-3, 20], '', reader)
+  const hasExtinction = problems.source.has([...path, 'extinction'])
+  const extinction = hasExtinction
+    ? choices(numbers.extinction, [...path, 'extinction'], 'plain', [0, 100], '', reader)
+    : [0]
+  return index && extinction ? { kind: 'index', name, index, extinction } : null
+}
+
+function readRegion(numbers: Numbers, path: Path, name: string | null, reader: Reader): MediumOption | null {
   const { problems } = reader
   // A key that was refused or unknown may have been meant for one of them.
   const reported = problems.source.keyCount(path) > Object.keys(numbers).length
@@ -62,24 +105,37 @@ export function readNamed(
   name: string,
   namePath: Path,
   x: readonly number[] | null,
-  media: UserMedia,
+  media: KnownMedia,
   reader: Reader,
 ): MediumOption | null {
-  const own = media.get(name)
+  const own = media.own.get(name)
   if (own !== undefined) return own
-  if (!isMaterial(name)) {
-    const known = [...media.keys(), ...materialNames]
+  if (!isBuiltIn(name, media.kind)) {
+    const known = [...media.own.keys(), ...(media.kind === 'electron' ? materialNames : opticalNames)]
+    if (isBuiltIn(name, media.kind === 'electron' ? 'light' : 'electron')) {
+      const [other, own] = media.kind === 'electron' ? ['light', 'electron'] : ['electron', 'light']
+      reader.problems.add(
+        namePath,
+        `${name} is listed for jobs with kind: ${other}.`,
+        `Known for ${own}: ${known.slice(0, 40).join(', ')}.`,
+      )
+      return null
+    }
     const near = nearest(name, known)
     const remedy = near.length > 0 ? `Did you mean ${near.join(' or ')}?` : `Known: ${known.slice(0, 40).join(', ')}.`
     reader.problems.add(namePath, `Unknown material "${shortened(name)}".`, remedy)
     return null
   }
-  return { kind: 'material', material: name, x: needsX(name) ? x : null }
+  return { kind: 'material', material: name, x: media.kind === 'electron' && needsX(name) ? x : null }
+}
+
+export function isBuiltIn(name: string, kind: Kind): boolean {
+  return kind === 'electron' ? isMaterial(name) : isOptical(name)
 }
 
 /** Whether a name needs an x beside it. */
-export function isAlloy(name: string, media: UserMedia): boolean {
-  return !media.has(name) && isMaterial(name) && needsX(name)
+export function isAlloy(name: string, { kind, own }: KnownMedia): boolean {
+  return kind === 'electron' && !own.has(name) && isMaterial(name) && needsX(name)
 }
 
 /** The compositions of an alloy, ascending. Null where there are none or they are not in order. */
@@ -144,7 +200,12 @@ function within(
 ): boolean {
   if (value >= low && value <= high) return true
   const limits = `${low}..${high}${unit ? ` ${unit}` : ''}`
-  const label = path.includes('x') ? 'x counts the share of the first-named element' : 'Check the unit'
+  const last = path[path.length - 1]
+  const hints: Record<string, string> = {
+    index: 'It is that of the medium over vacuum',
+    extinction: 'Positive absorbs',
+  }
+  const label = path.includes('x') ? 'x counts the share of the first-named element' : (hints[last] ?? 'Check the unit')
   reader.complain(path, `is outside ${limits}`, `Write a number within it. ${label}.`)
   return false
 }

@@ -5,7 +5,7 @@ import type { LayerSpec, MediumOption, PeriodSpec, Source, StackItem, StackSpec 
 import { shortened } from './problemAt.js'
 import type { Reader } from './Reader.js'
 import { readLead } from './readLead.js'
-import { isAlloy, readComposition, readNamed, readNumbers, type UserMedia } from './readMedia.js'
+import { isAlloy, type KnownMedia, readComposition, readNamed, readNumbers } from './readMedia.js'
 import { readWidth } from './readWidth.js'
 import type { ItemAsWritten, JobAsWritten } from './schema.js'
 import { tieLayers } from './tieLayers.js'
@@ -33,14 +33,18 @@ type Item = Loose<ItemAsWritten>
 
 export function readStack(
   stack: Loose<JobAsWritten>['stack'],
-  media: UserMedia,
+  media: KnownMedia,
   stepNm: number | null,
   cells: readonly Source[],
+  /** Where quarter waves are counted if the stack does not say; null where there is no scan. */
+  middleNm: number | null,
   reader: Reader,
 ): ReadStack {
   const { problems } = reader
   const layers: PlacedLayer[] = []
   const periods = new Map<string, Path>()
+  const electrons = media.kind === 'electron'
+  const own: OwnIds = { suffix: '', ids: new Set() }
   if (stack === undefined) return { spec: null, layers }
   const entry = readLead(stack.entry, 'entry', media, reader) as MediumOption | null
   const exit = readLead(stack.exit, 'exit', media, reader)
@@ -52,6 +56,8 @@ export function readStack(
     problems.addAtKey(['stack', 'layers'], `The stack has more than ${mostLayers} layers.`, 'Repeat less.')
   }
   const strainedTo = readStrain(stack['strained to'])
+  const referenceNm = electrons ? null : readReference(stack.reference)
+  const back = stack.back === undefined ? null : readBack(stack.back)
   commonZero()
   if (!entry || !exit || !items) return { spec: null, layers }
   const spec: StackSpec = {
@@ -63,49 +69,91 @@ export function readStack(
     strainedTo,
     biasOver: null,
     rising: readRising(stack.rising),
+    referenceNm,
+    back,
   }
   return { spec, layers }
 
   function readItems(written: readonly (Item | undefined)[], path: Path): StackItem[] {
     if (written.length === 0) {
       const what = path.length > 2 ? 'The period has no layers.' : 'The stack has no layers.'
-      problems.add(path, what, 'Write at least one, like "- { material: GaAs, width: 10..30 ML }".')
+      const like = electrons ? '{ material: GaAs, width: 10..30 ML }' : '{ material: SiO2, width: 20..200 nm }'
+      problems.add(path, what, `Write at least one, like "- ${like}".`)
     }
-    return written.flatMap((item, i) => (item === undefined ? [] : [readItem(item, [...path, i])]))
+    return written.flatMap((item, i) => (item === undefined ? [] : readItem(item, [...path, i])))
   }
 
-  function readItem(item: Item, path: Path): StackItem {
+  function readItem(item: Item, path: Path): StackItem[] {
     const form = formOf(item, path)
     for (const key of Object.keys(item)) {
       if (form === null || forms[form].includes(key)) continue
-      problems.addAtKey([...path, key], `"${key}" has no place in ${meaning[form]}.`, misplaced(form, key))
+      problems.addAtKey([...path, key], `"${key}" has no place in ${meaning[form]}.`, misplaced(form, key, electrons))
     }
-    const id = readId(item.id, [...path, 'id'])
-    if (form === 'period') return readPeriod(item, id, path)
+    const id = ownId(readId(item.id, [...path, 'id']))
+    if (form === 'period') return item.alike === false ? readUnlike(item, path) : [readPeriod(item, id, path)]
     const media = form === 'material' ? readMaterial(item, path) : form === 'numbers' ? byNumbers(item, path) : null
     if (form !== 'like' && form !== null && !problems.source.has([...path, 'width'])) {
       problems.add(
         [...path, 'width'],
         '"width" is missing: a layer has a width, fixed or a range.',
-        'Add "width: 6..20 ML".',
+        electrons ? 'Add "width: 6..20 ML".' : 'Add "width: 20..200 nm".',
       )
     }
     // A tied width was refused before; only the text of a width is left.
     const text = typeof item.width === 'object' ? undefined : item.width
-    const width = form === 'like' ? null : readWidth(text, [...path, 'width'], media, stepNm, reader)
-    const like = form === 'like' ? (item.like ?? null) : null
+    const width = form === 'like' ? null : readWidth(text, [...path, 'width'], media, stepNm, electrons, reader)
+    const like =
+      form === 'like' && item.like !== undefined ? (own.ids.has(item.like) ? ownId(item.like) : item.like) : null
     const spec: LayerSpec = { kind: 'layer', id: id ?? '', like, media, width }
     layers.push({ path, writtenId: id, spec })
-    return spec
+    return [spec]
+  }
+
+  /** An id inside a period whose repetitions are not alike stands once for each: with the number behind it. */
+  function ownId(id: string | null): string | null {
+    return id === null ? null : `${id}${own.suffix}`
+  }
+
+  /** A period whose repetitions have widths and media of their own: its layers written out. */
+  function readUnlike(item: Item, path: Path): StackItem[] {
+    const repeat = readRepeat(item.repeat, [...path, 'repeat'])
+    for (const key of ['mirror', 'id'] as const) {
+      if (item[key] === undefined) continue
+      problems.addAtKey([...path, key], `"${key}" has no place in a period that is not alike.`, 'Take it out.')
+    }
+    if (repeat && repeat[0] !== repeat[1]) {
+      const rule = 'A period that is not alike has a fixed count.'
+      problems.add([...path, 'repeat'], rule, `Write "repeat: ${repeat[1]}", with widths that may be 0.`)
+      return []
+    }
+    if (!item.period || !repeat) {
+      if (!repeat && item.repeat === undefined) missingOf(path, 'repeat')
+      if (!item.period) missingOf(path, 'period')
+      return []
+    }
+    const { suffix, ids } = own
+    own.ids = new Set([...item.period, ...(item.between ?? [])].flatMap((inner) => inner?.id ?? []))
+    const items: StackItem[] = []
+    for (let i = 1; i <= repeat[0]; i++) {
+      own.suffix = `${suffix}-${i}`
+      if (i > 1 && item.between) items.push(...readItems(item.between, [...path, 'between']))
+      items.push(...readItems(item.period, [...path, 'period']))
+    }
+    own.suffix = suffix
+    own.ids = ids
+    return items
+  }
+
+  function missingOf(path: Path, key: 'period' | 'repeat'): void {
+    if (problems.source.has([...path, key])) return
+    const what = key === 'repeat' ? '"repeat: 3"' : '"period:" with the layers of one period'
+    problems.add([...path, key], `"${key}" is missing: a period says its layers and how often.`, `Add ${what}.`)
   }
 
   function readPeriod(item: Item, id: string | null, path: Path): PeriodSpec {
     if (id !== null) periods.set(id, path)
-    for (const key of ['repeat', 'period']) {
-      if (problems.source.has([...path, key])) continue
-      const what = key === 'repeat' ? '"repeat: 3"' : '"period:" with the layers of one period'
-      problems.add([...path, key], `"${key}" is missing: a period says its layers and how often.`, `Add ${what}.`)
-    }
+    missingOf(path, 'repeat')
+    missingOf(path, 'period')
     const repeat = readRepeat(item.repeat, [...path, 'repeat'])
     const period = item.period ? readItems(item.period, [...path, 'period']) : []
     const mirror = readMirror(item.mirror, item.period, [...path, 'mirror'])
@@ -135,7 +183,7 @@ export function readStack(
 
   function readMaterial(item: Item, path: Path): readonly MediumOption[] | null {
     const xPath = [...path, 'x']
-    const hasX = problems.source.has(xPath)
+    const hasX = electrons && problems.source.has(xPath)
     const fromSources = typeof item.x === 'object' && 'from' in item.x
     const x = fromSources ? null : readComposition(item.x, xPath, reader)
     const { material } = item
@@ -147,7 +195,7 @@ export function readStack(
       problems.add(
         [...path, 'material'],
         'The list of materials is empty.',
-        'Write "material: { pick: [GaAs, AlAs] }".',
+        electrons ? 'Write "material: { pick: [GaAs, AlAs] }".' : 'Write "material: { pick: [SiO2, MgF2] }".',
       )
     const options: MediumOption[] = []
     names.forEach((name, i) => {
@@ -196,7 +244,7 @@ export function readStack(
   }
 
   function byNumbers(item: Item, path: Path): readonly MediumOption[] | null {
-    const option = readNumbers(item, path, null, reader)
+    const option = readNumbers(item, path, null, media.kind, reader)
     return option && [option]
   }
 
@@ -244,6 +292,26 @@ export function readStack(
     })
   }
 
+  /** The middle of the scan where nothing is written. */
+  function readReference(written: string | number | undefined): number | null {
+    const path = ['stack', 'reference']
+    const nm = reader.single(written, path, 'wavelength') ?? middleNm
+    if (written !== undefined && nm !== null && !(nm > 0)) {
+      reader.complain(path, 'is not above 0', 'Write a wavelength, like "633 nm".')
+      return null
+    }
+    return nm
+  }
+
+  function readBack({ thickness, then }: NonNullable<NonNullable<typeof stack>['back']>): StackSpec['back'] {
+    const path = ['stack', 'back']
+    const thicknessNm = reader.single(thickness, [...path, 'thickness'], 'length')
+    if (thicknessNm !== null && !(thicknessNm > 0))
+      reader.complain([...path, 'thickness'], 'is not above 0', 'Write the thickness of the plate, like "1 mm".')
+    const behind = readLead(then, 'back', media, reader)
+    return thicknessNm === null || behind === null || behind === 'hard wall' ? null : { thicknessNm, behind }
+  }
+
   function readStrain(name: string | undefined): string | null {
     if (name === undefined || name === 'none') return name ?? null
     const path = ['stack', 'strained to']
@@ -280,25 +348,32 @@ export function readStack(
     if (stated('like')) return 'like'
     if (stated('period') || stated('repeat')) return 'period'
     if (stated('material')) return 'material'
-    if (stated('potential') || stated('mass') || stated('alpha')) return 'numbers'
+    if ((electrons ? (['potential', 'mass', 'alpha'] as const) : (['index', 'extinction'] as const)).some(stated))
+      return 'numbers'
     // A key that was refused or unknown may have said it.
     if (problems.source.keyCount(path) > Object.keys(item).length) return null
     problems.add(
       path,
       'This layer says nothing of what it is made of.',
-      'Add "material: GaAs", numbers, or "like: id".',
+      `Add "material: ${electrons ? 'GaAs' : 'SiO2'}", numbers, or "like: id".`,
     )
     return null
   }
+}
+
+/** Ids of a period whose repetitions are not alike, and what the repetition that is being read puts behind them. */
+interface OwnIds {
+  suffix: string
+  ids: ReadonlySet<string>
 }
 
 type Form = 'like' | 'period' | 'material' | 'numbers'
 
 const forms: Readonly<Record<Form, readonly string[]>> = {
   like: ['id', 'like'],
-  period: ['id', 'repeat', 'period', 'between', 'mirror'],
+  period: ['id', 'repeat', 'period', 'between', 'mirror', 'alike'],
   material: ['id', 'material', 'x', 'width'],
-  numbers: ['id', 'potential', 'mass', 'alpha', 'width'],
+  numbers: ['id', 'potential', 'mass', 'alpha', 'index', 'extinction', 'width'],
 }
 
 const meaning: Readonly<Record<Form, string>> = {
@@ -308,17 +383,21 @@ const meaning: Readonly<Record<Form, string>> = {
   numbers: 'a layer given by numbers',
 }
 
-function misplaced(form: Form, key: string): string {
+function misplaced(form: Form, key: string, electrons: boolean): string {
   if (form === 'like') return `Take "${key}" out, or take "like" out and describe the layer in full.`
   if (form === 'period') return 'Put it on a layer inside "period".'
   if (key === 'mirror') return '"mirror" belongs to the stack or to a period.'
-  if (form === 'numbers' && key === 'x')
+  if (key === 'alike') return '"alike" belongs to a period.'
+  if (form === 'numbers' && key === 'x' && electrons)
     return 'Only materials have a composition: add "material: AlGaAs", or take x out.'
   return 'Give a material or numbers, not both.'
 }
 
-function alloyHint(name: string, media: UserMedia): string {
-  const alloys = materialNames.filter((known) => needsX(known) && known.includes(name.slice(0, 2)) && !media.has(name))
+function alloyHint(name: string, media: KnownMedia): string {
+  if (media.kind === 'light') return ''
+  const alloys = materialNames.filter(
+    (known) => needsX(known) && known.includes(name.slice(0, 2)) && !media.own.has(name),
+  )
   return alloys.length > 0 ? `, or name an alloy (${alloys.join(', ')})` : ''
 }
 

@@ -1,15 +1,23 @@
 import { nearest } from '../media/index.js'
+import type { Tables } from './CsvTable.js'
 import type { Loose } from './checkShape.js'
-import type { Condition, CurveRow, Demand } from './job.js'
+import type { Condition, CurveRow, Demand, Kind, Quantity } from './job.js'
 import { shortened } from './problemAt.js'
-import { parseLevel, pointsOf, type Quantity } from './quantities.js'
+import { parseLevel } from './quantities.js'
 import { isComplaint, type Reader } from './Reader.js'
-import { readCurve, type Tables } from './readCurve.js'
+import { readCurve } from './readCurve.js'
 import type { JobAsWritten } from './schema.js'
+import {
+  axisOf,
+  dimensionOn,
+  energiesIn,
+  readSpectralPlace,
+  readSpectralRange,
+  type SpectralRange,
+} from './spectral.js'
 import type { Path } from './YamlSource.js'
 
 export interface ReadTarget {
-  readonly scanEv: readonly [number, number] | null
   readonly resolutionEv: number | null
   readonly demands: readonly Demand[]
 }
@@ -22,32 +30,54 @@ const defaultPoints = 64
 const mostDemands = 256
 const mostTables = 16
 
-/** Scan and demands; every demand has to lie within the scan. */
-export function readTarget(
+/** What the demands are held against. */
+export interface TargetContext {
+  readonly kind: Kind
+  readonly scan: SpectralRange | null
+  readonly conditions: readonly Condition[]
+  readonly hardWall: boolean
+  readonly tables: Tables
+}
+
+/** The range that is looked at. Energies of electrons start above everything at which nothing comes in. */
+export function readScan(
   target: Target,
+  kind: Kind,
   conditions: readonly Condition[],
-  tables: Tables,
   reader: Reader,
-): ReadTarget {
-  const { problems } = reader
-  const scan = reader.range(target?.scan, ['target', 'scan'], 'energy')
-  if (scan && scan.from <= 0) {
-    const remedy = `Start above 0: "${Math.min(5, scan.written[1] / 2)}..${scan.written[1]} ${scan.unit}".`
-    reader.complain(['target', 'scan'], "starts at or below the entry's band edge, where nothing comes in", remedy)
+): SpectralRange | null {
+  const path = ['target', 'scan']
+  const scan = readSpectralRange(target?.scan, path, kind, reader)
+  if (scan === null) return null
+  const { lowEv, written } = scan
+  if (lowEv <= 0) {
+    const remedy = `Start above 0: "${Math.min(5, written.written[1] / 2)}..${written.written[1]} ${written.unit}".`
+    const what =
+      kind === 'electron' ? "starts at or below the entry's band edge, where nothing comes in" : 'starts at or below 0'
+    reader.complain(path, what, remedy)
+    return null
   }
-  const inPlane = conditions.find(({ inPlaneEv }) => scan && scan.from > 0 && scan.from <= inPlaneEv)
+  const inPlane = conditions.find(({ inPlaneEv }) => lowEv <= inPlaneEv)
   if (inPlane) {
     reader.complain(
-      ['target', 'scan'],
+      path,
       `starts at or below the in-plane energy${inPlane.name && ` of "${inPlane.name}"`}, ${inPlane.inPlaneEv * 1000} meV, where nothing comes in`,
       'Energies of the scan are total energies: start above it.',
     )
   }
-  const within = scan && scan.from > 0 ? scan : null
+  return scan
+}
+
+/** The demands; every one has to lie within the scan. */
+export function readTarget(target: Target, context: TargetContext, reader: Reader): ReadTarget {
+  const { problems } = reader
+  const { kind, scan } = context
   const { resolution } = target ?? {}
   const resolutionPath = ['target', 'resolution']
   const resolutionEv =
-    resolution === 'none' ? null : (reader.single(resolution, resolutionPath, 'energy') ?? defaultResolutionEv)
+    resolution === 'none'
+      ? null
+      : (reader.single(resolution, resolutionPath, 'energy') ?? (kind === 'electron' ? defaultResolutionEv : null))
   if (resolutionEv !== null && !(resolutionEv > 0))
     reader.complain(resolutionPath, 'is not above 0', 'Write "0.01 meV", or none.')
 
@@ -56,7 +86,7 @@ export function readTarget(
     problems.add(
       ['target', 'demands'],
       'There are no demands.',
-      'Write at least one, like "- { peak: 80 meV, within: 5 meV }".',
+      `Write at least one, like "- { ${kind === 'electron' ? 'peak: 80 meV, within: 5 meV' : 'peak: 633 nm, within: 2 nm'} }".`,
     )
   }
   if (written && written.length > mostDemands) {
@@ -65,7 +95,7 @@ export function readTarget(
       `There are more than ${mostDemands} demands.`,
       'A "curve" holds many points in one demand.',
     )
-    return { scanEv: within && [within.from, within.to], resolutionEv, demands: [] }
+    return { resolutionEv, demands: [] }
   }
   const demands: Demand[] = []
   const curves = new Map<string, readonly CurveRow[] | null>()
@@ -73,7 +103,7 @@ export function readTarget(
   written?.forEach((demand, i) => {
     if (demand === undefined) return
     const path = ['target', 'demands', i]
-    const read = readDemand(demand, path, `d${i + 1}`, within, conditions, curveOf, reader)
+    const read = readDemand(demand, path, `d${i + 1}`, context, curveOf, reader)
     if (demand.id !== undefined && ids.has(demand.id)) {
       problems.add(
         [...path, 'id'],
@@ -84,18 +114,19 @@ export function readTarget(
     ids.add(demand.id ?? `d${i + 1}`)
     if (read) demands.push(read)
   })
-  return { scanEv: within && [within.from, within.to], resolutionEv, demands }
+  return { resolutionEv, demands }
 
   /** A table may stand in several demands; it is read once. */
-  function curveOf(name: string, path: Path): readonly CurveRow[] | null {
-    const known = curves.get(name)
+  function curveOf(name: string, quantity: Quantity, path: Path): readonly CurveRow[] | null {
+    const key = `${quantity} ${name}`
+    const known = curves.get(key)
     if (known !== undefined) return known
     if (curves.size >= mostTables) {
       problems.add(path, `The job names more than ${mostTables} tables.`, 'Join some of them.')
       return null
     }
-    const rows = readCurve(name, path, within, tables, reader)
-    curves.set(name, rows)
+    const rows = readCurve(name, path, scan, { kind, quantity, tables: context.tables }, reader)
+    curves.set(key, rows)
     return rows
   }
 }
@@ -110,13 +141,15 @@ const forms = {
 
 type Form = keyof typeof forms
 
+/** Keys of every form. */
+const common: readonly string[] = ['id', 'weight', 'at', 'quantity']
+
 function readDemand(
   demand: Written,
   path: Path,
   defaultId: string,
-  scan: Quantity | null,
-  conditions: readonly Condition[],
-  curveOf: (name: string, path: Path) => readonly CurveRow[] | null,
+  { kind: jobKind, scan, conditions, hardWall }: TargetContext,
+  curveOf: (name: string, quantity: Quantity, path: Path) => readonly CurveRow[] | null,
   reader: Reader,
 ): Demand | null {
   const { problems } = reader
@@ -130,11 +163,13 @@ function readDemand(
     return null
   }
   for (const key of Object.keys(demand)) {
-    if (key === 'id' || key === 'weight' || key === 'at' || (forms[kind] as readonly string[]).includes(key)) continue
+    if (common.includes(key) || (forms[kind] as readonly string[]).includes(key)) continue
     const owner = (Object.keys(forms) as Form[]).find((form) => (forms[form] as readonly string[]).includes(key))
     const remedy = owner === key ? 'Make it a demand of its own.' : `It belongs to "${owner}": take it out.`
     problems.addAtKey([...path, key], `"${key}" has no place beside "${kind}".`, remedy)
   }
+  const axis = kind === 'peak' || kind === 'band' ? axisOf(demand[kind], jobKind) : 'eV'
+  const like = { within: axis === 'eV' ? '5 meV' : '2 nm' }
   const id = demand.id ?? defaultId
   if (!/^[A-Za-z][A-Za-z0-9_-]{0,39}$/.test(id)) {
     problems.add([...path, 'id'], `id "${shortened(id)}" is no id.`, 'Use letters, digits and dashes, a letter first.')
@@ -142,14 +177,15 @@ function readDemand(
   const weight = demand.weight ?? 1
   if (!(weight > 0))
     reader.complain([...path, 'weight'], 'is not above 0', 'Write a number above 0, or take the demand out.')
-  const head = { id, weight, accept: null, at: readAt() }
+  const quantity = readQuantity()
+  const head = { id, weight, accept: null, at: readAt(), quantity }
 
   if (kind === 'peak' || kind === 'band') return readLine(kind)
   if (kind === 'curve') {
-    const rows = demand.curve === undefined ? null : curveOf(demand.curve, [...path, 'curve'])
+    const rows = demand.curve === undefined ? null : curveOf(demand.curve, quantity, [...path, 'curve'])
     return rows && accepting({ ...head, kind, file: demand.curve!, rows, mostRms: null })
   }
-  const range = reader.range(demand[kind], [...path, kind], 'energy')
+  const range = readSpectralRange(demand[kind], [...path, kind], jobKind, reader)
   if (range) inScan(range, [...path, kind])
   const limitKey = kind === 'pass' ? 'above' : 'below'
   if (!stated(limitKey)) {
@@ -165,33 +201,51 @@ function readDemand(
   const points =
     demand.points === undefined ? defaultPoints : reader.whole(demand.points, [...path, 'points'], 2, 10_000)
   if (range === null || limit === null || points === null) return null
-  const pointsEv = pointsOf(range, points)
+  const pointsEv = energiesIn(range, points)
   return accepting(
     kind === 'pass' ? { ...head, kind, pointsEv, above: limit } : { ...head, kind, pointsEv, below: limit },
   )
 
   function readLine(kind: 'peak' | 'band'): Demand | null {
-    const energyEv = reader.single(demand[kind], [...path, kind], 'energy')
-    if (energyEv !== null && scan && (energyEv < scan.from || energyEv > scan.to)) outside([...path, kind])
+    const place = readSpectralPlace(demand[kind], [...path, kind], jobKind, reader)
+    if (place && scan && (place.energyEv < scan.lowEv || place.energyEv > scan.highEv)) outside([...path, kind])
     if (!stated('within')) {
       problems.add(
         [...path, 'within'],
         `"within" is missing: a ${kind} says how far it may lie off.`,
-        'Add "within: 5 meV".',
+        `Add "within: ${like.within}".`,
       )
     }
-    const withinEv = readWithin(demand.within, [...path, 'within'])
+    const within = readWithin(demand.within, [...path, 'within'])
     const fwhm = readFwhm(demand.fwhm, [...path, 'fwhm'])
     if (kind === 'peak') {
       const height = reader.share(demand.height, [...path, 'height'])
       const alone = level(demand.alone, [...path, 'alone'])
-      if (energyEv === null || withinEv === null) return null
-      return accepting({ ...head, kind, energyEv, withinEv, fwhmEv: fwhm, height, alone })
+      if (place === null || within === null) return null
+      return accepting({ ...head, kind, axis: place.axis, centre: place.value, within, fwhm, height, alone })
     }
     const top = reader.share(demand.top, [...path, 'top'])
     const ripple = reader.share(demand.ripple, [...path, 'ripple'])
-    if (energyEv === null || withinEv === null) return null
-    return accepting({ ...head, kind, energyEv, withinEv, fwhmEv: fwhm, top, ripple })
+    if (place === null || within === null) return null
+    return accepting({ ...head, kind, axis: place.axis, centre: place.value, within, fwhm, top, ripple })
+  }
+
+  /** Within and fwhm are stated on the axis of the line itself. */
+  function otherAxis(written: string | number | undefined, here: Path): boolean {
+    if (written === undefined || axisOf(written, jobKind) === axis) return false
+    const [own, other] = axis === 'nm' ? ['a wavelength', 'an energy'] : ['an energy', 'a length']
+    reader.complain(here, `is ${other}, but the line is at ${own}`, `Write it like "${like.within}".`)
+    return true
+  }
+
+  function readQuantity(): Quantity {
+    const quantity = demand.quantity ?? 'T'
+    const here = [...path, 'quantity']
+    if (jobKind === 'electron' && quantity === 'A')
+      reader.complain(here, 'is what media absorb, which is nothing for electrons', 'Demand T or R.')
+    if (hardWall && quantity === 'R')
+      reader.complain(here, "can't be judged: at a hard wall everything comes back", 'Give the stack another exit.')
+    return quantity
   }
 
   function readAt(): string | null {
@@ -212,11 +266,12 @@ function readDemand(
   }
 
   function readWithin(written: Written['within'], here: Path): number | null {
-    const withinEv = reader.single(written, here, 'energy')
-    if (withinEv !== null && !(withinEv > 0)) {
-      reader.complain(here, 'is not above 0', 'Write how far it may lie off, like "5 meV".')
+    if (otherAxis(written, here)) return null
+    const within = reader.single(written, here, dimensionOn[axis])
+    if (within !== null && !(within > 0)) {
+      reader.complain(here, 'is not above 0', `Write how far it may lie off, like "${like.within}".`)
     }
-    return withinEv
+    return within
   }
 
   /** The demand with what its `accept` states; each must be looser than the demand's own, and stated there. */
@@ -263,8 +318,9 @@ function readDemand(
     return fwhm && [fwhm.from, fwhm.to]
   }
 
-  function fwhmRange(asWritten: Written['fwhm'], here: Path): Quantity | null {
-    const fwhm = reader.quantity(asWritten, here, 'energy')
+  function fwhmRange(asWritten: Written['fwhm'], here: Path): { readonly from: number; readonly to: number } | null {
+    if (otherAxis(asWritten, here)) return null
+    const fwhm = reader.quantity(asWritten, here, dimensionOn[axis])
     if (fwhm === null) return null
     const { unit, written } = fwhm
     const around = `"${Number((written[1] / 2).toPrecision(3))}..${Number((written[1] * 1.5).toPrecision(3))} ${unit}"`
@@ -288,8 +344,8 @@ function readDemand(
     return null
   }
 
-  function inScan(range: Quantity, here: Path): void {
-    if (scan && (range.from < scan.from || range.to > scan.to)) outside(here)
+  function inScan({ lowEv, highEv }: SpectralRange, here: Path): void {
+    if (scan && (lowEv < scan.lowEv || highEv > scan.highEv)) outside(here)
   }
 
   function outside(here: Path): void {
@@ -300,8 +356,8 @@ function readDemand(
 
 /** Names of `Accepted`, by the key that states them. */
 const acceptNames = {
-  within: 'withinEv',
-  fwhm: 'fwhmEv',
+  within: 'within',
+  fwhm: 'fwhm',
   height: 'height',
   alone: 'alone',
   top: 'top',

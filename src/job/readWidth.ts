@@ -4,10 +4,10 @@ import type { Reader } from './Reader.js'
 import type { Path } from './YamlSource.js'
 
 /** Thicker than any layer that an electron tunnels through or rings in; a slip of the unit. */
-const widest = { ML: 40_000, nm: 10_000 }
+const widest = { ML: 40_000, nm: 100_000, qw: 1000 }
 
 /**
- * A width in whole monolayers or in nm. `media` are what the layer may be made of (null when that was wrong); media by
+ * A width in whole monolayers, in nm or, of light, in quarter waves. `media` are what the layer may be made of (null when that was wrong); media by
  * numbers have no monolayer. `stepNm` is growth.step, null where the job has none.
  */
 export function readWidth(
@@ -15,11 +15,12 @@ export function readWidth(
   path: Path,
   media: readonly MediumOption[] | null,
   stepNm: number | null,
+  electrons: boolean,
   reader: Reader,
 ): WidthSpec | null {
-  const quantity = reader.quantity(value, path, 'width')
+  const quantity = reader.quantity(value, path, electrons ? 'width' : 'filmWidth')
   if (quantity === null) return null
-  const unit = quantity.unit === 'ML' ? 'ML' : 'nm'
+  const unit = quantity.unit === 'ML' || quantity.unit === 'qw' ? quantity.unit : 'nm'
   const { from, to, step, range } = quantity
   const written = quantity.written
   if (from < 0) {
@@ -38,7 +39,7 @@ export function readWidth(
     )
     return null
   }
-  const byNumbers = media?.some((option) => option.kind === 'numbers') ?? false
+  const byNumbers = !electrons || (media?.some((option) => option.kind === 'numbers') ?? false)
   if (unit === 'ML') {
     if (![from, to, step ?? 1].every(Number.isInteger)) {
       const whole = `${Math.round(from)}${range ? `..${Math.round(to)}` : ''} ML`

@@ -1,53 +1,69 @@
+import type { Kind } from './job.js'
 import type { Problems } from './Problems.js'
 import type { Path } from './YamlSource.js'
 
-/**
- * Keys of the job format whose capability is not built yet. Each is reported with what to do instead, and taken out of the
- * value (in place), so that nothing else trips over it. When a capability comes, its line goes.
- */
-const refused: Readonly<Record<Room, Readonly<Record<string, string>>>> = {
-  job: {
-    angle: 'Take it out: it belongs to jobs with kind: light.',
-    polarisation: 'Take it out: it belongs to jobs with kind: light.',
-  },
-  medium: {
-    table: 'Give the numbers themselves: { potential: 0.2 eV, mass: 0.09 }.',
-    index: 'Electrons need { potential: 0.2 eV, mass: 0.09 } instead.',
-    extinction: 'Electrons need { potential: 0.2 eV, mass: 0.09 } instead.',
-  },
-  stack: {
-    reference: 'Take it out: it belongs to jobs with kind: light.',
-    back: 'Take it out: it belongs to jobs with kind: light.',
-  },
+/** Keys that belong to one kind of job, with what to do in the other. */
+const ofLight: Keys = {
+  job: { angle: 'Take it out.', polarisation: 'Take it out.' },
+  medium: { table: byRegion(), index: byRegion(), extinction: byRegion() },
+  stack: { reference: 'Take it out.', back: 'Take it out.' },
   item: {
     index: 'Electrons need potential and mass instead.',
     extinction: 'Electrons need potential and mass instead.',
   },
-  demand: {
-    quantity: 'Take it out: demands are on T. R is 1 - T here.',
-  },
-  growth: {
-    thinnest: 'Take it out: it belongs to jobs with kind: light. Set the least width on the layers.',
-    total: 'Take it out: it belongs to jobs with kind: light. Set the greatest width on the layers.',
-    index: 'Take it out: it belongs to jobs with kind: light.',
-  },
-  spread: { index: 'Take it out: it belongs to jobs with kind: light.' },
+  growth: { index: 'Take it out.', tooling: 'Take it out.' },
 }
 
-type Room = 'job' | 'medium' | 'stack' | 'item' | 'demand' | 'growth' | 'spread'
+const ofElectrons: Keys = {
+  job: {
+    temperature: 'Take it out: the listed indices are those of room temperature.',
+    bias: 'Take it out.',
+    'in-plane': 'Write "angle: 45 deg".',
+    'bias over': 'Take it out.',
+  },
+  medium: {
+    potential: byIndex(),
+    mass: byIndex(),
+    alpha: byIndex(),
+    x: 'Take it out: media of light have no composition.',
+  },
+  stack: { mass: 'Take it out.', 'strained to': 'Take it out.' },
+  item: {
+    potential: byIndex(),
+    mass: byIndex(),
+    alpha: byIndex(),
+    x: 'Take it out: media of light have no composition.',
+  },
+  growth: { compositions: 'Take it out: media of light have no composition.' },
+  spread: { x: 'Write "growth: { index: 0.002 }" for the spread of an index.' },
+}
+
+function byRegion(): string {
+  return 'Give the numbers of electrons: { potential: 0.2 eV, mass: 0.09 }.'
+}
+
+function byIndex(): string {
+  return 'Light needs { index: 1.46, extinction: 0.001 } instead.'
+}
+
+type Room = 'job' | 'medium' | 'stack' | 'item' | 'growth' | 'spread'
+type Keys = { readonly [room in Room]?: Readonly<Record<string, string>> }
 type Map = Record<string, unknown>
 
-export function refuse(job: unknown, problems: Problems): void {
+/**
+ * Reports keys that belong to the other kind of job, and those whose capability is not built yet, each with what to do instead; and
+ * takes them out of the value (in place), so that nothing else trips over them.
+ */
+export function refuse(job: unknown, kind: Kind, problems: Problems): void {
+  const keys = kind === 'electron' ? ofLight : ofElectrons
+  const owner = kind === 'electron' ? 'light' : 'electron'
   visit(job, 'job', [])
-  const { conditions, media, stack, target, growth } = (job ?? {}) as Record<string, Map | undefined>
+  const { conditions, media, stack, growth } = (job ?? {}) as Record<string, Map | undefined>
   for (const name of Object.keys(conditions ?? {})) visit(conditions?.[name], 'job', ['conditions', name])
   for (const name of Object.keys(media ?? {})) visit(media?.[name], 'medium', ['media', name])
   visit(stack, 'stack', ['stack'])
   for (const side of ['entry', 'exit']) visit(stack?.[side], 'medium', ['stack', side])
   items(stack?.layers, ['stack', 'layers'])
-  list(target?.demands).forEach((demand, i) => {
-    visit(demand, 'demand', ['target', 'demands', i])
-  })
   visit(growth, 'growth', ['growth'])
   visit(growth?.spread, 'spread', ['growth', 'spread'])
 
@@ -58,12 +74,10 @@ export function refuse(job: unknown, problems: Problems): void {
       const here = [...path, i]
       visit(map, 'item', here)
       const { width, x, repeat } = map
-      if (isMap(width)) refusal(map, 'width', 'A width tied alone, "width: { like: ... }",', tied, here)
-      if (typeof width === 'string' && /\bqw\b/.test(width))
-        refusal(map, 'width', 'A width in qw', 'Write it in ML or nm.', here)
+      if (isMap(width)) notYet(map, 'width', 'A width tied alone, "width: { like: ... }",', tied, here)
       if (isMap(x) && x.like !== undefined)
-        refusal(map, 'x', 'A composition tied alone, "x: { like: ... }",', tied, here)
-      if (isMap(repeat)) refusal(map, 'repeat', 'A tied count, "repeat: { like: ... }",', 'Write the number.', here)
+        notYet(map, 'x', 'A composition tied alone, "x: { like: ... }",', tied, here)
+      if (isMap(repeat)) notYet(map, 'repeat', 'A tied count, "repeat: { like: ... }",', 'Write the number.', here)
       items(map.period, [...here, 'period'])
       items(map.between, [...here, 'between'])
     })
@@ -72,14 +86,16 @@ export function refuse(job: unknown, problems: Problems): void {
   function visit(value: unknown, room: Room, path: Path): void {
     if (!isMap(value)) return
     for (const key of Object.keys(value)) {
-      if (Object.hasOwn(refused[room], key)) refusal(value, key, `"${key}"`, refused[room][key], path)
+      const remedy = keys[room] && Object.hasOwn(keys[room], key) ? keys[room][key] : null
+      if (remedy === null) continue
+      problems.addAtKey([...path, key], `"${key}" belongs to jobs with kind: ${owner}.`, remedy)
+      delete value[key]
     }
   }
 
-  function refusal(map: Map, key: string, what: string, instead: string, path: Path, atKey = true): void {
+  function notYet(map: Map, key: string, what: string, instead: string, path: Path): void {
     const rule = `${what} is part of the job format, but this version can't run it yet.`
-    if (atKey) problems.addAtKey([...path, key], rule, instead)
-    else problems.add([...path, key], rule, instead)
+    problems.addAtKey([...path, key], rule, instead)
     delete map[key]
   }
 }

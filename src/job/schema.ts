@@ -46,7 +46,10 @@ const itemFields = {
   x: composition.optional().describe('Composition of an alloy: 0.3, "0.1..0.3 step 0.01" or { pick: [0.25, 0.35] }.'),
   ...numbers('range'),
   width: z
-    .union([quantity('width', 'Fixed or a range, in whole monolayers (ML) or nm.'), like])
+    .union([
+      quantity(['width', 'filmWidth'], 'Fixed or a range: whole monolayers (ML), nm, or quarter waves (qw).'),
+      like,
+    ])
     .optional()
     .describe('Fixed or a range: "12 ML", "6..20 ML", "1..5 nm step 0.1 nm".'),
   repeat: z
@@ -54,6 +57,10 @@ const itemFields = {
     .optional()
     .describe('How often the period is repeated.'),
   mirror: z.boolean().optional().describe('Reflect the period about its last layer, which must be a single one.'),
+  alike: z
+    .boolean()
+    .optional()
+    .describe('false: the layers of each repetition have widths and media of their own; true by default.'),
 }
 
 /** A layer or a period. One shape for all forms: which keys go together is readStack's business, with better sentences. */
@@ -74,7 +81,7 @@ const item: z.ZodType<ItemAsWritten, ItemAsWritten> = z.strictObject({
 
 const medium = z.strictObject({
   ...numbers('range'),
-  table: z.string().optional().describe('A CSV of index and extinction.'),
+  table: z.string().optional().describe('A CSV beside the job: wavelength_nm, n, k.'),
 })
 
 const condition = {
@@ -84,8 +91,8 @@ const condition = {
     .optional()
     .describe('Voltage across the stack; positive lowers the edge of the exit.'),
   'in-plane': quantity('energy', 'Kinetic energy along the layers, in the entry.').optional(),
-  angle: z.union([z.string(), z.number()]).optional().describe('Angle of incidence in the entry.'),
-  polarisation: z.enum(['s', 'p', 'mean']).optional().describe('Of the light.'),
+  angle: quantity('angle', 'Angle of incidence in the entry, below 90 degrees; light.').optional(),
+  polarisation: z.enum(['s', 'p', 'mean']).optional().describe('Of the light; s by default, mean: half of each.'),
 }
 
 const demand = z
@@ -95,13 +102,16 @@ const demand = z
     peak: z
       .union([z.string(), z.number()])
       .optional()
-      .describe('A transmission maximum at this energy; needs `within`.'),
-    band: z.union([z.string(), z.number()]).optional().describe('A flat top centred at this energy; needs `within`.'),
+      .describe('A maximum at this energy or wavelength; needs `within`.'),
+    band: z
+      .union([z.string(), z.number()])
+      .optional()
+      .describe('A flat top centred at this energy or wavelength; needs `within`.'),
     within: z.union([z.string(), z.number()]).optional().describe('How far the peak may lie from its energy.'),
     fwhm: z
       .union([z.string(), z.number()])
       .optional()
-      .describe('Full width at half of its own height: "1..4 meV" or "..4 meV".'),
+      .describe('Full width at half of its own height: "1..4 meV", "..4 meV" or "2..5 nm".'),
     height: z.number().optional().describe('Least height of the peak, 0..1.'),
     alone: z.union([z.number(), z.string()]).optional().describe('No other maximum in the scan above this.'),
     top: z.number().optional().describe('Least mean over the inner 80 % of a band.'),
@@ -117,9 +127,12 @@ const demand = z
     curve: z
       .string()
       .optional()
-      .describe('A CSV beside the job: energy_meV, T, optional sense, scale, tolerance, weight.'),
+      .describe('A CSV beside the job: energy_meV or wavelength_nm, T, optional sense, scale, tolerance, weight.'),
     at: z.string().optional().describe('The condition at which it holds.'),
-    quantity: z.enum(['T', 'R', 'A']).optional().describe('What is limited; T by default.'),
+    quantity: z
+      .enum(['T', 'R', 'A'])
+      .optional()
+      .describe('The share that is limited: transmitted, reflected or absorbed; T by default.'),
     accept: z
       .strictObject({
         within: z.union([z.string(), z.number()]).optional(),
@@ -173,20 +186,28 @@ export const jobFormat = z
           .string()
           .optional()
           .describe('A binary that fixes the lattice, or `none`; the lead at the substrate by default.'),
-        reference: z
-          .union([z.string(), z.number()])
-          .optional()
-          .describe('Wavelength at which `qw` counts quarter waves.'),
+        reference: quantity(
+          'wavelength',
+          'Wavelength at which `qw` counts quarter waves; the middle of the scan by default.',
+        ).optional(),
         back: z
-          // biome-ignore lint/suspicious/noThenProperty: the job format calls it so, and a schema is never awaited.
-          .strictObject({ thickness: z.union([z.string(), z.number()]), then: lead })
+          .strictObject({
+            thickness: quantity('length', 'Of the plate, for the sheet; the spectrum does not depend on it.'),
+            // biome-ignore lint/suspicious/noThenProperty: the job format calls it so, and a schema is never awaited.
+            then: lead.describe('The medium behind the plate.'),
+          })
           .optional()
-          .describe('The back face of a thick plate.'),
+          .describe(
+            'The exit is a thick plate with this behind it: light that runs to and fro in it adds up by intensities.',
+          ),
       })
       .describe('The layers and the leads.'),
     target: z
       .strictObject({
-        scan: quantity('energy', 'The range that is looked at, above the edge of the entry.'),
+        scan: quantity(
+          ['energy', 'wavelength'],
+          'The range that is looked at: above the edge of the entry, or wavelengths.',
+        ),
         resolution: z
           .union([quantity('energy', 'Lines narrower than this count less in a block.'), z.literal('none')])
           .optional()
@@ -200,7 +221,9 @@ export const jobFormat = z
         sources: z
           .record(z.string(), z.union([z.string(), z.number()]))
           .optional()
-          .describe('Rates of the binaries by element, or element and cell: { Ga: 0.70 ML/s, Al-1: 0.233 ML/s }.'),
+          .describe(
+            'Rates of the binaries by element, or element and cell: { Ga: 0.70 ML/s, Al-1: 0.233 ML/s }; for light of each medium: { SiO2: 0.8 nm/s }.',
+          ),
         compositions: z
           .number()
           .optional()
@@ -208,17 +231,25 @@ export const jobFormat = z
         step: quantity('length', 'Lattice step of widths in nm.').optional(),
         spread: z
           .strictObject({
-            rate: quantity('percent', 'Of the rate of each source; 1 % by default.').optional(),
-            layer: quantity('layerError', 'Of each grown layer; 0.5 ML by default.').optional(),
+            rate: quantity('percent', 'Of the rate of each source; 1 % by default, 0.5 % for light.').optional(),
+            layer: quantity('layerError', 'Of each grown layer; 0.5 ML by default, 0.2 nm for light.').optional(),
             x: quantity('plain', 'Of each alloy; 0.005 by default.').optional(),
-            index: z.number().optional().describe('Of the refractive index.'),
           })
           .optional()
           .describe('One standard deviation of each error of growth.'),
         trials: z.number().optional().describe('How often each candidate is grown on paper; 2048 by default.'),
+        tooling: z
+          .record(z.string(), z.number())
+          .optional()
+          .describe(
+            'Thickness on the part over that on the monitor, by medium of light: { SiO2: 1.05 }; for the sheet.',
+          ),
         thinnest: quantity('length', 'The thinnest layer that can be made.').optional(),
-        total: z.union([z.string(), z.number()]).optional().describe('Limit of the total thickness.'),
-        index: z.number().optional().describe('Spread of the refractive index.'),
+        total: quantity('length', 'Limits of the thickness of the whole stack, like "..6 um".').optional(),
+        index: z
+          .number()
+          .optional()
+          .describe('One standard deviation of the refractive index of each medium of light; 0 by default.'),
       })
       .optional()
       .describe('What the machine can grow, and how well.'),
@@ -265,15 +296,17 @@ function numbers(form: 'fixed' | 'range') {
     potential: quantity('energy', `Band edge, counted from that of the entry.${how}`).optional(),
     mass: quantity('plain', `Effective mass at the band edge over that of the free electron.${how}`).optional(),
     alpha: quantity('nonparabolicity', `Nonparabolicity: m(E) = m (1 + alpha (E - V)).${how}`).optional(),
-    index: quantity('plain', 'Refractive index.').optional(),
-    extinction: quantity('plain', 'Extinction coefficient, positive absorbs.').optional(),
+    index: quantity('plain', `Refractive index.${how}`).optional(),
+    extinction: quantity('plain', `Extinction coefficient, positive absorbs; 0 by default.${how}`).optional(),
   }
 }
 
-function quantity(name: DimensionName, text: string) {
-  const { units, examples } = dimensions[name]
-  const known = Object.keys(units)
-  const meta = { description: text, examples: [examples.single, examples.range] }
+/** A quantity of one dimension, or, where electrons and light differ, of either. */
+function quantity(name: DimensionName | readonly DimensionName[], text: string) {
+  const either = (typeof name === 'string' ? [name] : name).map((one) => dimensions[one])
+  const known = [...new Set(either.flatMap(({ units }) => Object.keys(units)))]
+  const examples = either.flatMap(({ examples: { single, range } }) => [single, range])
+  const meta = { description: text, examples: [...new Set(examples)] }
   const shape = z.union([z.string(), z.number()])
   if (known.length === 0) return shape.meta(meta)
   return shape.meta({ ...meta, pattern: `(${known.map((unit) => unit.replace('/', '\\/')).join('|')})$` })

@@ -1,6 +1,6 @@
 import { closeSync, constants, fstatSync, openSync, readSync, realpathSync } from 'node:fs'
 import { dirname, join, sep } from 'node:path'
-import type { Tables } from './readCurve.js'
+import type { Tables } from './CsvTable.js'
 
 /** Larger than any table of a spectrum. */
 export const largestFile = 1_000_000

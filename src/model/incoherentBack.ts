@@ -1,4 +1,4 @@
-import { log10, type MediaTable, mediaTable, spectrumInto, type WaveStack, type WaveSystem } from '../wave/index.js'
+import { log10, type MediaTable, spectrumInto, type WaveStack } from '../wave/index.js'
 import type { Spectrum } from './spectrum.js'
 
 /** Intensities of one face, from either side. */
@@ -20,55 +20,73 @@ interface Face {
  * with the dashed ones for a wave from inside the plate. Where the plate carries no wave, T = 0 and the front stands alone. `from`
  * 'exit': the wave comes through the back face. `back`: number of the medium behind it.
  */
-export function incoherentBack(
-  system: WaveSystem,
-  back: number,
-  energies: Float64Array,
-  from: 'entry' | 'exit',
-): Spectrum {
-  const { media, stack } = system
-  const points = energies.length
-  const table = mediaTable(media, points)
-  media.fill(energies, table)
+export function incoherentBack(table: MediaTable, stack: WaveStack, back: number, from: 'entry' | 'exit'): Spectrum {
+  const { points } = table
   const rear: WaveStack = { entry: stack.exit, exit: back, medium: new Int32Array(0), width: new Float64Array(0) }
   const [T, R, A, log10T] = [0, 1, 2, 3].map(() => new Float64Array(points).fill(Number.NaN))
+  const [firstFace, secondFace] = from === 'entry' ? [stack, rear] : [rear, stack]
   let fluxError = 0
-  for (let e = 0; e < points; e++) {
-    const one = column(table, e)
-    if (from === 'entry') {
-      const front = faceOf(one, stack, 'entry')
-      const plate = one.q[stack.exit] > 0 ? faceOf(one, rear, 'entry') : null
-      combine(e, front, plate)
-    } else combine(e, faceOf(one, rear, 'exit'), one.q[stack.exit] > 0 ? faceOf(one, stack, 'exit') : null)
+  // Energies at which the plate carries a wave, and the others.
+  const all = Array.from({ length: points }, (_, e) => e)
+  const inside = all.filter((e) => table.q[stack.exit * points + e] > 0)
+  const outside = all.filter((e) => !(table.q[stack.exit * points + e] > 0))
+  if (inside.length > 0) {
+    const part = inside.length === points ? table : columns(table, inside)
+    combine(inside, faceOf(part, firstFace, from), faceOf(part, secondFace, from))
   }
+  if (outside.length > 0) combine(outside, nearFace(columns(table, outside), firstFace, from), null)
   return { T, R, A, log10T, fluxError }
 
   /** `first` as the wave meets it. */
-  function combine(e: number, first: Face, second: Face | null): void {
-    const r = second === null ? 0 : second.R[0]
-    const often = second === null ? 0 : 1 / (1 - first.farR[0] * r)
-    const inside = first.T[0] * often
-    T[e] = second === null ? 0 : inside * second.T[0]
-    R[e] = first.R[0] + inside * r * first.T[0]
-    A[e] = first.A[0] + inside * r * first.farA[0] + (second === null ? 0 : inside * second.A[0])
-    log10T[e] = T[e] > 0 ? log10(T[e]) : Number.NEGATIVE_INFINITY
-    fluxError = Math.max(fluxError, Math.abs(T[e] + R[e] + A[e] - 1))
+  function combine(energies: readonly number[], first: Face, second: Face | null): void {
+    energies.forEach((e, i) => {
+      const r = second === null ? 0 : second.R[i]
+      const often = second === null ? 0 : 1 / (1 - first.farR[i] * r)
+      const passed = first.T[i] * often
+      T[e] = second === null ? 0 : passed * second.T[i]
+      R[e] = first.R[i] + passed * r * first.T[i]
+      A[e] = first.A[i] + passed * r * first.farA[i] + (second === null ? 0 : passed * second.A[i])
+      log10T[e] = T[e] > 0 ? log10(T[e]) : Number.NEGATIVE_INFINITY
+      fluxError = Math.max(fluxError, Math.abs(T[e] + R[e] + A[e] - 1))
+    })
   }
 }
 
 /** A face from the side `from`, and, where its other side carries a wave, from there. */
 function faceOf(table: MediaTable, stack: WaveStack, from: 'entry' | 'exit'): Face {
-  const row = () => new Float64Array(1)
-  const near = { T: row(), R: row(), A: row() }
-  spectrumInto(table, stack, near, from)
-  const far = { T: row(), R: row(), A: row() }
+  const near = nearFace(table, stack, from)
+  const { points } = table
   const other = from === 'entry' ? 'exit' : 'entry'
-  if (table.q[stack[other]] > 0 && !(table.qIm && table.qIm[stack[other]] !== 0)) spectrumInto(table, stack, far, other)
-  return { ...near, farR: far.R, farA: far.A }
+  const open = Array.from({ length: points }, (_, e) => e).filter((e) => isOpen(table, stack[other], e))
+  if (open.length === 0) return near
+  const row = () => new Float64Array(open.length)
+  const far = { T: row(), R: row(), A: row() }
+  spectrumInto(open.length === points ? table : columns(table, open), stack, far, other)
+  open.forEach((e, i) => {
+    near.farR[e] = far.R[i]
+    near.farA[e] = far.A[i]
+  })
+  return near
 }
 
-function column({ count, points, q, mu, qIm, muIm }: MediaTable, e: number): MediaTable {
-  const of = (row: Float64Array) => Float64Array.from({ length: count }, (_, m) => row[m * points + e])
-  const real = { count, points: 1, q: of(q), mu: of(mu) }
+function nearFace(table: MediaTable, stack: WaveStack, from: 'entry' | 'exit'): Face {
+  const row = () => new Float64Array(table.points)
+  const near = { T: row(), R: row(), A: row() }
+  spectrumInto(table, stack, near, from)
+  return { ...near, farR: row(), farA: row() }
+}
+
+function isOpen({ points, q, qIm }: MediaTable, medium: number, e: number): boolean {
+  return q[medium * points + e] > 0 && !(qIm && qIm[medium * points + e] !== 0)
+}
+
+function columns({ count, points, q, mu, qIm, muIm }: MediaTable, energies: readonly number[]): MediaTable {
+  const of = (row: Float64Array) => {
+    const out = new Float64Array(count * energies.length)
+    for (let m = 0; m < count; m++)
+      for (const [i, e] of energies.entries()) out[m * energies.length + i] = row[m * points + e]
+    return out
+  }
+  const real = { count, points: energies.length, q: of(q), mu: of(mu) }
   return qIm && muIm ? { ...real, qIm: of(qIm), muIm: of(muIm) } : real
 }

@@ -1,6 +1,12 @@
 import { bandParameters } from '../media/index.js'
+import { resolveOptics } from './resolveOptics.js'
 import { StackError } from './StackError.js'
-import type { MediumChoice, ResolvedMedium, Situation } from './types.js'
+import type { ElectronSituation, MediumChoice, ResolvedMedium, ResolvedRegion, Situation } from './types.js'
+
+/** A medium at a job's situation. Throws as resolveRegion and resolveOptics do. */
+export function resolveMedium(choice: MediumChoice, situation: Situation): ResolvedMedium {
+  return situation.kind === 'electron' ? resolveRegion(choice, situation) : resolveOptics(choice, situation)
+}
 
 /**
  * A medium at the job's temperature and strain, its potential counted from the edge of the entry at the same conditions.
@@ -10,13 +16,14 @@ import type { MediumChoice, ResolvedMedium, Situation } from './types.js'
  * as written, alpha too. Throws StackError where a material has no zero to count from (the entry is given by numbers) or no
  * gap is left, MaterialError for a material that does not exist.
  */
-export function resolveMedium(choice: MediumChoice, situation: Situation): ResolvedMedium {
+export function resolveRegion(choice: MediumChoice, situation: ElectronSituation): ResolvedRegion {
+  if (choice.kind === 'index' || choice.kind === 'table') throw new StackError('A medium of light has no band edge.')
   if (choice.kind === 'numbers') {
     const { potentialEv, massRel, alphaPerEv } = choice
-    return { region: { potentialEv, massRel, alphaPerEv }, monolayerNm: null, strain: null }
+    return { kind: 'electron', region: { potentialEv, massRel, alphaPerEv }, monolayerNm: null, strain: null }
   }
   const { entry } = situation
-  if (entry.kind === 'numbers') {
+  if (entry.kind !== 'material') {
     throw new StackError(
       `${choice.material} has no potential here: potentials count from the entry's edge, and the entry is given by numbers. ` +
         'Give the entry as a material, or every layer and lead by numbers.',
@@ -24,6 +31,7 @@ export function resolveMedium(choice: MediumChoice, situation: Situation): Resol
   }
   const band = strainedBand(choice, situation)
   return {
+    kind: 'electron',
     region: {
       potentialEv: band.edgeEv - strainedBand(entry, situation).edgeEv,
       massRel: band.massRel,
@@ -44,7 +52,7 @@ interface StrainedBand {
 
 type MaterialChoice = Extract<MediumChoice, { kind: 'material' }>
 
-function strainedBand({ material, x }: MaterialChoice, { temperatureK, substrateNm }: Situation): StrainedBand {
+function strainedBand({ material, x }: MaterialChoice, { temperatureK, substrateNm }: ElectronSituation): StrainedBand {
   const band = bandParameters(material, x, temperatureK)
   const parallel = substrateNm === null ? 0 : (substrateNm - band.latticeNm) / band.latticeNm
   const perpendicular = -2 * (band.c12 / band.c11) * parallel

@@ -1,8 +1,8 @@
 import type { Condition, Job, MediumOption } from '../job/index.js'
 import { bandParameters, hbar2Over2m0 } from '../media/index.js'
-import { resolveMedium } from './resolveMedium.js'
+import { resolveRegion } from './resolveMedium.js'
 import { StackError } from './StackError.js'
-import type { MediumChoice, Situation } from './types.js'
+import type { ElectronSituation, LightSituation, MediumChoice, Situation } from './types.js'
 
 /**
  * The conditions and the strain of a job at one of its operating points. Layers are strained to `strained to`, else to the lead
@@ -10,11 +10,30 @@ import type { MediumChoice, Situation } from './types.js'
  * the in-plane kinetic energy in the entry, of its own mass model. Throws StackError for a lead that leaves a
  * choice.
  */
-export function situationOf(job: Pick<Job, 'stack' | 'growth'>, condition: Condition): Situation {
-  const { stack, growth } = job
+export function situationOf(job: Pick<Job, 'kind' | 'stack' | 'growth'>, condition: Condition): Situation {
+  return job.kind === 'electron' ? ofElectrons(job, condition) : ofLight(job, condition)
+}
+
+function ofLight({ stack }: Pick<Job, 'stack'>, { angleDeg, polarisation }: Condition): LightSituation {
+  const { entry, exit, back, referenceNm } = stack
+  if (exit === 'hard wall') throw new StackError('A hard wall is a lead of electrons.')
+  return {
+    kind: 'light',
+    entry: onlyChoice(entry, 'entry'),
+    exit: onlyChoice(exit, 'exit'),
+    back: back && onlyChoice(back.behind, 'medium behind the exit'),
+    angleDeg,
+    // Alike at normal incidence.
+    polarisation: angleDeg === 0 ? 's' : polarisation,
+    referenceNm: referenceNm!,
+  }
+}
+
+function ofElectrons({ stack, growth }: Pick<Job, 'stack' | 'growth'>, condition: Condition): ElectronSituation {
   const entry = onlyChoice(stack.entry, 'entry')
   const exit = stack.exit === 'hard wall' ? stack.exit : onlyChoice(stack.exit, 'exit')
-  const rest: Situation = {
+  const rest: ElectronSituation = {
+    kind: 'electron',
     temperatureK: condition.temperatureK,
     substrateNm: substrateNm(stack.strainedTo, growth.startsAt === 'entry' ? entry : exit),
     massModel: stack.massModel,
@@ -24,7 +43,7 @@ export function situationOf(job: Pick<Job, 'stack' | 'growth'>, condition: Condi
     biasV: condition.biasV,
   }
   if (condition.inPlaneEv === 0) return rest
-  const { massRel, alphaPerEv } = resolveMedium(entry, rest).region
+  const { massRel, alphaPerEv } = resolveRegion(entry, rest).region
   const { inPlaneEv } = condition
   return { ...rest, inPlaneKPerNm: Math.sqrt((massRel * (1 + alphaPerEv * inPlaneEv) * inPlaneEv) / hbar2Over2m0) }
 }
@@ -33,7 +52,7 @@ export function situationOf(job: Pick<Job, 'stack' | 'growth'>, condition: Condi
 function substrateNm(strainedTo: string | null, lead: MediumChoice | 'hard wall'): number | null {
   if (strainedTo === 'none') return null
   if (strainedTo !== null) return bandParameters(strainedTo, null, 300).latticeNm
-  if (lead === 'hard wall' || lead.kind === 'numbers') return null
+  if (lead === 'hard wall' || lead.kind !== 'material') return null
   return bandParameters(lead.material, lead.x, 300).latticeNm
 }
 
@@ -41,6 +60,11 @@ function onlyChoice(option: MediumOption, lead: string): MediumChoice {
   if (option.kind === 'material') {
     const { material, x } = option
     return { kind: 'material', material, x: x === null ? null : only(x, `x of ${material}`, lead) }
+  }
+  if (option.kind === 'table') return option
+  if (option.kind === 'index') {
+    const { name, index, extinction } = option
+    return { kind: 'index', name, index: only(index, 'index', lead), extinction: only(extinction, 'extinction', lead) }
   }
   return {
     kind: 'numbers',

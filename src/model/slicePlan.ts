@@ -1,6 +1,6 @@
 import type { LayerSpec, MediumOption, StackItem, StackSpec } from '../job/index.js'
-import { resolveMedium } from './resolveMedium.js'
-import type { Situation } from './types.js'
+import { resolveRegion } from './resolveMedium.js'
+import type { ElectronSituation } from './types.js'
 
 /** Slices of a biased stack are at most this wide. */
 const widestNm = 0.5
@@ -20,7 +20,7 @@ export interface SlicePlan {
 }
 
 /** Throws as resolveMedium does. */
-export function slicePlan(stack: StackSpec, situation: Situation): SlicePlan {
+export function slicePlan(stack: StackSpec, situation: ElectronSituation): SlicePlan {
   const described = new Map<string, LayerSpec>()
   collect(stack.layers, described)
   const counts = new Map<string, number>()
@@ -49,15 +49,15 @@ function collect(items: readonly StackItem[], into: Map<string, LayerSpec>): voi
   }
 }
 
-function widest({ media, width }: LayerSpec, situation: Situation): number {
+function widest({ media, width }: LayerSpec, situation: ElectronSituation): number {
   const { to, unit } = width!
   return unit === 'nm' ? to : to * Math.max(...media!.map((option) => widestMonolayer(option, situation)))
 }
 
 /** nm per ML grows or falls with x all the way, so that the ends tell. */
-function widestMonolayer(option: MediumOption, situation: Situation): number {
-  if (option.kind === 'numbers') return 0
+function widestMonolayer(option: MediumOption, situation: ElectronSituation): number {
+  if (option.kind !== 'material') return 0
   const { material, x } = option
   const ends = x === null ? [null] : [x[0], x[x.length - 1]]
-  return Math.max(...ends.map((end) => resolveMedium({ kind: 'material', material, x: end }, situation).monolayerNm!))
+  return Math.max(...ends.map((end) => resolveRegion({ kind: 'material', material, x: end }, situation).monolayerNm!))
 }

@@ -1,6 +1,6 @@
 import type { RowMap } from '../wave/index.js'
-import { resolveMedium } from './resolveMedium.js'
-import type { ModelLayer, Region, Situation } from './types.js'
+import { resolveRegion } from './resolveMedium.js'
+import type { ElectronSituation, ModelLayer, Region } from './types.js'
 
 /** Layers as the wave core reads them: rows of constant edge, and what the rows have to do with the layers (null: they are the layers). */
 export interface SlicedLayers {
@@ -13,12 +13,12 @@ export interface SlicedLayers {
  * Under a bias U every layer is cut into its slices, of equal width, each at the potential of its middle: the edge falls linearly, from 0
  * to -U, over the layers that are biased. Throws as resolveMedium does.
  */
-export function slicedLayers(situation: Situation, layers: readonly ModelLayer[]): SlicedLayers {
+export function slicedLayers(situation: ElectronSituation, layers: readonly ModelLayer[]): SlicedLayers {
   const { biasV } = situation
   if (biasV === 0) {
     const width = new Float64Array(layers.length)
     for (let j = 0; j < width.length; j++) width[j] = layers[j].widthNm
-    return { regions: layers.map(({ choice }) => resolveMedium(choice, situation).region), width, rowMap: null }
+    return { regions: layers.map(({ choice }) => resolveRegion(choice, situation).region), width, rowMap: null }
   }
   const total = layers.reduce((sum, { widthNm, biased }) => sum + (biased ? widthNm : 0), 0)
   const slices = layers.reduce((sum, layer) => sum + layer.slices, 0)
@@ -28,7 +28,7 @@ export function slicedLayers(situation: Situation, layers: readonly ModelLayer[]
   let behind = false
   let begun = 0
   for (const { choice, widthNm, biased, slices: count } of layers) {
-    const region = resolveMedium(choice, situation).region
+    const region = resolveRegion(choice, situation).region
     behind ||= biased
     for (let i = 0; i < count; i++) {
       const s = regions.length

@@ -44,12 +44,10 @@ export function spectrum(
   const { from: side = 'entry' } = options
   if (stack.kind === 'light' && stack.back) {
     const { system, back } = platedSystem(stack, side)
-    return incoherentBack(
-      system,
-      back,
-      energiesOf(side === 'entry' ? stack : { ...stack, exit: stack.back.exit }, points, side),
-      side,
-    )
+    const energies = energiesOf(side === 'entry' ? stack : { ...stack, exit: stack.back.exit }, points, side)
+    const table = mediaTable(system.media, energies.length)
+    system.media.fill(energies, table)
+    return incoherentBack(table, system.stack, back, side)
   }
   const { table, stack: waves, from } = prepareSpectrum(stack, points, options)
   const row = () => new Float64Array(points.length).fill(Number.NaN)

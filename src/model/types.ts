@@ -43,9 +43,19 @@ export type MediumChoice =
       readonly massRel: number
       readonly alphaPerEv: number
     }
+  | { readonly kind: 'index'; readonly name: string | null; readonly index: number; readonly extinction: number }
+  | {
+      readonly kind: 'table'
+      readonly name: string
+      /** Vacuum wavelength (nm, ascending), n, kappa. */
+      readonly rows: readonly (readonly [number, number, number])[]
+    }
 
-/** What turns a medium of the job into a region: the job's conditions and its strain. */
-export interface Situation {
+/** What turns a medium of the job into numbers: an operating point and what else the job says of all media. */
+export type Situation = ElectronSituation | LightSituation
+
+export interface ElectronSituation {
+  readonly kind: 'electron'
   readonly temperatureK: number
   /** Lattice constant (nm, 300 K) that the layers are strained to; null: no strain. */
   readonly substrateNm: number | null
@@ -58,16 +68,45 @@ export interface Situation {
   readonly biasV: number
 }
 
+export interface LightSituation {
+  readonly kind: 'light'
+  readonly entry: MediumChoice
+  readonly exit: MediumChoice
+  /** Behind the exit, where that is a thick plate. */
+  readonly back: MediumChoice | null
+  readonly angleDeg: number
+  readonly polarisation: 'mean' | 'p' | 's'
+  /** Vacuum wavelength at which quarter waves are counted. */
+  readonly referenceNm: number
+}
+
 /** A layer of a job; slices and the share of a bias count only where there is one. */
 export interface ModelLayer {
   readonly choice: MediumChoice
   readonly widthNm: number
   readonly slices: number
   readonly biased: boolean
+  /** Of light: by so much the index differs from the listed one; absent: not at all. */
+  readonly indexShift?: number
 }
 
 /** A medium at the job's situation. */
-export interface ResolvedMedium {
+export type ResolvedMedium = ResolvedRegion | ResolvedOptics
+
+export interface ResolvedOptics {
+  readonly kind: 'light'
+  readonly medium: Required<Medium>
+  /** At the reference. */
+  readonly index: number
+  readonly extinction: number
+  /** Width of a quarter wave at the reference, normal incidence. */
+  readonly quarterNm: number
+  readonly monolayerNm: null
+  readonly strain: null
+}
+
+export interface ResolvedRegion {
+  readonly kind: 'electron'
   readonly region: Required<Region>
   /** Half of the strained lattice constant along (001) at 300 K; null for media by numbers. */
   readonly monolayerNm: number | null

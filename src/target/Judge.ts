@@ -1,3 +1,4 @@
+import type { Quantity } from '../job/index.js'
 import type { Landscape } from './Landscape.js'
 import type { DemandResult, Limit } from './types.js'
 
@@ -6,6 +7,8 @@ export interface Judge {
   readonly id: string
   readonly kind: DemandResult['kind']
   readonly weight: number
+  /** The share that it judges. */
+  readonly quantity: Quantity
   /** What it reads at fixed energies; null for a peak or band. */
   readonly terms: PointTerms | null
   /** How many parts a peak or band states, which the fit takes one by one; 0 for the others. */

@@ -1,7 +1,13 @@
+import type { Quantity } from '../job/index.js'
 import type { Extremum } from '../wave/index.js'
 import { type Judge, type JudgeLimit, nothing, type Verdict } from './Judge.js'
 import type { Landscape } from './Landscape.js'
+import { type LineScale, lineScale } from './lineScale.js'
+import type { PeakSlopes } from './peakSlopes.js'
 import type { PeakFigures } from './types.js'
+
+/** A line narrower than this share of its energy. */
+const needle = 1e-9
 
 /** Every part of a line that has no maximum at all. */
 const none = 10
@@ -15,6 +21,7 @@ export abstract class LineJudge<Figures> implements Judge {
   abstract readonly id: string
   abstract readonly weight: number
   abstract readonly parts: number
+  abstract readonly quantity: Quantity
   abstract readonly rangeEv: readonly [number, number]
   readonly terms = null
 
@@ -100,28 +107,46 @@ export abstract class LineJudge<Figures> implements Judge {
   }
 }
 
-/** max(0, abs(E - E0) - within)/within. */
-export function offPlace(energyEv: number, { energyEv: wanted, withinEv }: Place): number {
-  return Math.max(0, Math.abs(energyEv - wanted) - withinEv) / withinEv
+/** max(0, abs(x - x0) - within)/within, x the place on the axis of the line. */
+export function offPlace(x: number, { centre, within }: Place): number {
+  return Math.max(0, Math.abs(x - centre) - within) / within
 }
 
 /** max(0, a - f, f - b)/((b - a)/2). */
-export function offWidth(fwhmEv: number, [a, b]: readonly [number, number]): number {
-  return Math.max(0, a - fwhmEv, fwhmEv - b) / ((b - a) / 2)
+export function offWidth(fwhm: number, [a, b]: readonly [number, number]): number {
+  return Math.max(0, a - fwhm, fwhm - b) / ((b - a) / 2)
 }
 
 interface Place {
-  readonly energyEv: number
-  readonly withinEv: number
+  readonly centre: number
+  readonly within: number
 }
 
 /** Slopes of `offPlace` and `offWidth` in what they are unmet by. */
-export function placeSlope(energyEv: number, { energyEv: wanted, withinEv }: Place): number {
-  return (energyEv > wanted ? 1 : -1) / withinEv
+export function placeSlope(x: number, { centre, within }: Place): number {
+  return (x > centre ? 1 : -1) / within
 }
 
-export function widthSlope(fwhmEv: number, [a, b]: readonly [number, number]): number {
-  return (fwhmEv > b ? 2 : -2) / (b - a)
+export function widthSlope(fwhm: number, [a, b]: readonly [number, number]): number {
+  return (fwhm > b ? 2 : -2) / (b - a)
+}
+
+/** The width of a line on its axis. */
+export function widthOn(scale: LineScale, { lowEv, highEv, fwhmEv }: PeakFigures): number {
+  // The ends of a needle have no digits of its width.
+  if (scale === lineScale('eV')) return fwhmEv
+  return fwhmEv < needle * highEv ? Math.abs(scale.slope(highEv)) * fwhmEv : scale.width(lowEv, highEv)
+}
+
+/** d(width on the axis)/d(layer parameter) from those of the ends. */
+export function widthSlopeOn(
+  scale: LineScale,
+  { lowEv, highEv }: PeakFigures,
+  slopes: Pick<PeakSlopes, 'fwhm' | 'high' | 'low'>,
+): Float64Array {
+  if (scale === lineScale('eV')) return slopes.fwhm
+  const [atLow, atHigh] = [Math.abs(scale.slope(lowEv)), Math.abs(scale.slope(highEv))]
+  return slopes.fwhm.map((_, k) => atHigh * slopes.high[k] - atLow * slopes.low[k])
 }
 
 export function scaled(values: Float64Array, factor: number): Float64Array {

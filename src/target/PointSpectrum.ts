@@ -1,31 +1,28 @@
-import { type MediaTable, spectrumInto, type WaveSystem } from '../wave/index.js'
+import type { Quantity } from '../job/index.js'
+import { Response } from '../model/index.js'
+import type { WaveSystem } from '../wave/index.js'
 
-/** T at a fixed list of energies (eV) of one system after the other; allocates when a system has more media than any before. */
+/** T, R or A at a fixed list of energies (eV) of one system after the other. */
 export class PointSpectrum {
-  private readonly energies: Float64Array
-  private readonly T: Float64Array
-  private readonly R: Float64Array
-  private q = new Float64Array(0)
-  private mu = new Float64Array(0)
+  private readonly response: Response
+  private readonly values: Float64Array
+  private readonly onlyT: boolean
 
-  constructor(energiesEv: readonly number[]) {
-    this.energies = Float64Array.from(energiesEv)
-    this.T = new Float64Array(energiesEv.length)
-    this.R = new Float64Array(energiesEv.length)
+  constructor(
+    energiesEv: readonly number[],
+    /** What is asked for at each. */
+    private readonly quantities: readonly Quantity[],
+  ) {
+    this.response = new Response(Float64Array.from(energiesEv))
+    this.values = new Float64Array(energiesEv.length)
+    this.onlyT = quantities.every((quantity) => quantity === 'T')
   }
 
   /** The array is reused by the next call. */
-  at({ media, stack }: WaveSystem): Float64Array {
-    const { energies, T, R } = this
-    const points = energies.length
-    if (points === 0) return T
-    if (this.q.length < media.count * points) {
-      this.q = new Float64Array(media.count * points)
-      this.mu = new Float64Array(media.count * points)
-    }
-    const table: MediaTable = { count: media.count, points, q: this.q, mu: this.mu }
-    media.fill(energies, table)
-    spectrumInto(table, stack, { T, R })
-    return T
+  at(system: WaveSystem): Float64Array {
+    const shares = this.response.at(system)
+    if (this.onlyT) return shares.T
+    for (let e = 0; e < this.values.length; e++) this.values[e] = shares[this.quantities[e]][e]
+    return this.values
   }
 }

@@ -1,9 +1,12 @@
-import type { BandDemand } from '../job/index.js'
+import { type BandDemand, energiesAround, type Quantity } from '../job/index.js'
 import type { Extremum } from '../wave/index.js'
-import { type BandShape, bandShapeOf, bandSlopes } from './bandFigures.js'
+import { type BandShape, type BandSlopes, bandShapeOf, bandSlopes } from './bandFigures.js'
 import type { JudgeLimit } from './Judge.js'
 import type { Landscape } from './Landscape.js'
-import { LineJudge, offPlace, offWidth, placeSlope, scaled, widthSlope } from './LineJudge.js'
+import { LineJudge, offPlace, offWidth, placeSlope, scaled, widthOn, widthSlope, widthSlopeOn } from './LineJudge.js'
+import { type LineScale, lineScale } from './lineScale.js'
+import { endsOf } from './peak.js'
+import type { PeakFigures } from './types.js'
 
 /** A flat top: its centre, and what is stated of its width, its mean height and its greatest dip. */
 export class BandJudge extends LineJudge<BandShape> {
@@ -11,17 +14,20 @@ export class BandJudge extends LineJudge<BandShape> {
   readonly id: string
   readonly weight: number
   readonly parts: number
+  readonly quantity: Quantity
   readonly rangeEv: readonly [number, number]
+  private readonly scale: LineScale
 
   constructor(private readonly demand: BandDemand) {
     super()
-    const { id, weight, energyEv, withinEv, fwhmEv, top, ripple } = demand
+    const { id, weight, quantity, axis, within, fwhm, top, ripple } = demand
     this.id = id
     this.weight = weight
+    this.quantity = quantity
+    this.scale = lineScale(axis)
     // As for a peak; the maximum may lie half a width from the centre.
-    const reach = withinEv + 3 * (fwhmEv?.[1] ?? withinEv)
-    this.rangeEv = fwhmEv ? [energyEv - reach, energyEv + reach] : [0, Number.POSITIVE_INFINITY]
-    this.parts = 1 + (fwhmEv ? 1 : 0) + (top === null ? 0 : 1) + (ripple === null ? 0 : 1)
+    this.rangeEv = fwhm ? energiesAround(demand, within + 3 * fwhm[1]) : [0, Number.POSITIVE_INFINITY]
+    this.parts = 1 + (fwhm ? 1 : 0) + (top === null ? 0 : 1) + (ripple === null ? 0 : 1)
   }
 
   protected figures(landscape: Landscape, maximum: Extremum): BandShape {
@@ -33,46 +39,64 @@ export class BandJudge extends LineJudge<BandShape> {
   }
 
   protected verdict({ centreEv, top, ripple, peak }: BandShape) {
-    return { reached: centreEv, peak, band: { centreEv, top, ripple, peak } }
+    const { scale } = this
+    return { reached: scale.energy(this.centreOf(peak)), peak, band: { centreEv, top, ripple, peak } }
+  }
+
+  /** Half way between the half-height points, on the axis of the demand. */
+  private centreOf({ lowEv, highEv }: PeakFigures): number {
+    return 0.5 * (this.scale.of(lowEv) + this.scale.of(highEv))
+  }
+
+  private centreSlope({ lowEv, highEv }: PeakFigures, { low, high }: BandSlopes): Float64Array {
+    const { scale } = this
+    return low.map((one, k) => 0.5 * (scale.slope(lowEv) * one + scale.slope(highEv) * high[k]))
   }
 
   /** What the half-height points tell. */
   protected cheap(landscape: Landscape, maximum: Extremum): number[] {
-    const { lowEv, highEv, fwhmEv: width } = landscape.figuresOf(maximum)
-    const { fwhmEv } = this.demand
-    const position = offPlace(0.5 * (lowEv + highEv), this.demand)
-    return fwhmEv ? [position, offWidth(width, fwhmEv)] : [position]
+    const peak = landscape.figuresOf(maximum)
+    const { fwhm } = this.demand
+    const position = offPlace(this.centreOf(peak), this.demand)
+    return fwhm ? [position, offWidth(widthOn(this.scale, peak), fwhm)] : [position]
   }
 
-  protected residuals(_: Landscape, { centreEv, top, ripple, peak }: BandShape): number[] {
-    const { fwhmEv, top: least, ripple: most } = this.demand
-    const parts = [offPlace(centreEv, this.demand)]
-    if (fwhmEv) parts.push(offWidth(peak.fwhmEv, fwhmEv))
+  protected residuals(_: Landscape, { top, ripple, peak }: BandShape): number[] {
+    const { fwhm, top: least, ripple: most } = this.demand
+    const parts = [offPlace(this.centreOf(peak), this.demand)]
+    if (fwhm) parts.push(offWidth(widthOn(this.scale, peak), fwhm))
     if (least !== null) parts.push(Math.max(0, least - top) / Math.max(1 - least, 0.01))
     if (most !== null) parts.push(Math.max(0, ripple - most) / Math.max(most, 0.01))
     return parts
   }
 
   protected slopes(landscape: Landscape, band: BandShape): Float64Array[] {
-    const { fwhmEv, top, ripple } = this.demand
+    const { fwhm, top, ripple } = this.demand
+    const { scale } = this
     const slopes = bandSlopes(landscape, band)
-    const rows = [scaled(slopes.centre, placeSlope(band.centreEv, this.demand))]
-    if (fwhmEv) rows.push(scaled(slopes.fwhm, widthSlope(band.peak.fwhmEv, fwhmEv)))
+    const { peak } = band
+    const rows = [scaled(this.centreSlope(peak, slopes), placeSlope(this.centreOf(peak), this.demand))]
+    if (fwhm) rows.push(scaled(widthSlopeOn(scale, peak, slopes), widthSlope(widthOn(scale, peak), fwhm)))
     if (top !== null) rows.push(scaled(slopes.top, -1 / Math.max(1 - top, 0.01)))
     if (ripple !== null) rows.push(scaled(slopes.ripple, 1 / Math.max(ripple, 0.01)))
     return rows
   }
 
   protected limitsOf(landscape: Landscape, band: BandShape): JudgeLimit[] {
-    const { energyEv, withinEv, fwhmEv, top, ripple } = this.demand
+    const { axis, centre, within, fwhm, top, ripple } = this.demand
+    const { scale } = this
+    const { peak } = band
     const slopes = bandSlopes(landscape, band)
+    const [x, slope] = [this.centreOf(peak), this.centreSlope(peak, slopes)]
+    const [lowest, highest] = endsOf[axis]
     const limits = [
-      this.limit('lowest energy', band.centreEv - energyEv + withinEv, slopes.centre),
-      this.limit('highest energy', energyEv + withinEv - band.centreEv, scaled(slopes.centre, -1)),
+      this.limit(lowest, x - centre + within, slope),
+      this.limit(highest, centre + within - x, scaled(slope, -1)),
     ]
-    if (fwhmEv) {
-      limits.push(this.limit('least fwhm', band.peak.fwhmEv - fwhmEv[0], slopes.fwhm))
-      limits.push(this.limit('greatest fwhm', fwhmEv[1] - band.peak.fwhmEv, scaled(slopes.fwhm, -1)))
+    if (fwhm) {
+      const [width, byWidth] = [widthOn(scale, peak), widthSlopeOn(scale, peak, slopes)]
+      limits.push(this.limit('least fwhm', width - fwhm[0], byWidth))
+      limits.push(this.limit('greatest fwhm', fwhm[1] - width, scaled(byWidth, -1)))
     }
     if (top !== null) limits.push(this.limit('top', band.top - top, slopes.top))
     if (ripple !== null) limits.push(this.limit('ripple', ripple - band.ripple, scaled(slopes.ripple, -1)))

@@ -1,4 +1,4 @@
-import { type Extremum, extremeOver } from '../wave/index.js'
+import type { Extremum } from '../wave/index.js'
 import type { Landscape } from './Landscape.js'
 import { peakSlopes } from './peakSlopes.js'
 import { gaussLegendre } from './quadrature.js'
@@ -50,11 +50,10 @@ export function bandShapeOf(landscape: Landscape, maximum: Extremum): BandShape 
       nodes: null,
     }
   }
-  const { system, extrema } = landscape
-  const greatest = extremeOver(system, innerEv, 'greatest', extrema)
-  const least = extremeOver(system, innerEv, 'least', extrema)
+  const greatest = landscape.extremeOver(innerEv, 'greatest')
+  const least = landscape.extremeOver(innerEv, 'least')
   const nodes = nodesOf(landscape, innerEv)
-  const values = landscape.transmission(nodes.energiesEv)
+  const values = landscape.values(nodes.energiesEv)
   const top = nodes.weights.reduce((sum, weight, i) => sum + weight * values[i], 0) / (innerEv[1] - innerEv[0])
   const places = { innerEv, greatestEv: greatest.energyEv, leastEv: least.energyEv, nodes }
   return { centreEv, top, ripple: greatest.T - least.T, peak, ...places }
@@ -62,7 +61,8 @@ export function bandShapeOf(landscape: Landscape, maximum: Extremum): BandShape 
 
 /** Slopes of the figures in the layer parameters. */
 export interface BandSlopes {
-  readonly centre: Float64Array
+  readonly low: Float64Array
+  readonly high: Float64Array
   readonly fwhm: Float64Array
   readonly top: Float64Array
   readonly ripple: Float64Array
@@ -75,11 +75,11 @@ export interface BandSlopes {
 export function bandSlopes(landscape: Landscape, band: BandShape): BandSlopes {
   const { low, high, fwhm, height } = peakSlopes(landscape, band.peak)
   const n = landscape.layerParameters
-  const centre = low.map((one, k) => 0.5 * (one + high[k]))
   const { nodes, innerEv } = band
   if (nodes === null) {
     return {
-      centre,
+      low,
+      high,
       fwhm,
       top: height.map((one) => lorentzianTop * one),
       ripple: height.map((one) => lorentzianDip * one),
@@ -100,7 +100,7 @@ export function bandSlopes(landscape: Landscape, band: BandShape): BandSlopes {
     const moved = (energyEv: number) => (energyEv === a ? aSlope * da : energyEv === b ? bSlope * db : 0)
     ripple[k] = gradient[2 * n + k] + moved(band.greatestEv) - gradient[3 * n + k] - moved(band.leastEv)
   }
-  return { centre, fwhm, top, ripple }
+  return { low, high, fwhm, top, ripple }
 }
 
 function nodesOf({ extrema }: Landscape, [a, b]: readonly [number, number]): Nodes {

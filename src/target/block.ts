@@ -1,5 +1,5 @@
-import type { BlockDemand } from '../job/index.js'
-import { type Extremum, extremeOver, log10 } from '../wave/index.js'
+import type { BlockDemand, Quantity } from '../job/index.js'
+import { type Extremum, log10 } from '../wave/index.js'
 import { decibelSlope, excess, unitDb } from './decibels.js'
 import { extremeError, type Judge, type JudgeLimit, nothing, type PointTerms, type Verdict } from './Judge.js'
 import type { Landscape } from './Landscape.js'
@@ -15,6 +15,7 @@ export class BlockJudge implements Judge {
   readonly parts = 0
   readonly id: string
   readonly weight: number
+  readonly quantity: Quantity
   readonly rangeEv: readonly [number, number]
   readonly terms: PointTerms
 
@@ -25,6 +26,7 @@ export class BlockJudge implements Judge {
   ) {
     this.id = demand.id
     this.weight = demand.weight
+    this.quantity = demand.quantity
     this.rangeEv = [demand.pointsEv[0], demand.pointsEv[demand.pointsEv.length - 1]]
     const { below, pointsEv } = demand
     this.terms = {
@@ -76,7 +78,7 @@ export class BlockJudge implements Judge {
   /** The greatest T that counts, and its energy. */
   private greatest(landscape: Landscape): { energyEv: number; T: number } {
     const counted = landscape.extrema.map((e) => ({ ...e, T: e.T * this.factor(e) }))
-    return extremeOver(landscape.system, this.rangeEv, 'greatest', counted)
+    return landscape.extremeOver(this.rangeEv, 'greatest', counted)
   }
 
   private factor({ kind, poleWidthEv }: Extremum): number {

@@ -1,4 +1,4 @@
-import type { Demand, Job } from '../job/index.js'
+import type { Demand, Job, Quantity } from '../job/index.js'
 import type { Extremum, WaveSystem } from '../wave/index.js'
 import { BandJudge } from './band.js'
 import { BlockJudge } from './block.js'
@@ -16,11 +16,11 @@ import { pointShares } from './pointShares.js'
 import type { DemandResult, Evaluation, Limit, PeakFigures, PointShare, Target } from './types.js'
 
 /** What of a job says how stacks are judged. */
-export type TargetSpec = Pick<Job, 'demands' | 'scanEv' | 'resolutionEv' | 'conditions'>
+export type TargetSpec = Pick<Job, 'kind' | 'demands' | 'scanEv' | 'resolutionEv' | 'conditions'>
 
 /**
  * The demands of a job, ready to judge stacks. Maxima are looked for between the entry's edge, from which energies count, and the
- * scan's end plus the scan's length. What is found of a system is kept with it: limits after an evaluation cost no second search.
+ * scan's end plus the scan's length; of light, within the scan, beyond which its media need not be listed. What is found of a system is kept with it: limits after an evaluation cost no second search.
  */
 export function compileTarget(job: TargetSpec): Target {
   return new CompiledTarget(job)
@@ -39,19 +39,26 @@ class CompiledTarget implements Target {
   private readonly limitsEv: readonly [number, number]
   private readonly onlyCurves: boolean
   private readonly scanEv: readonly [number, number]
-  private readonly landscapes = new WeakMap<WaveSystem, Landscape>()
+  private readonly landscapes = new WeakMap<WaveSystem, Map<Quantity, Landscape>>()
+  /** What the figures of the first peak are of. */
+  private readonly peakQuantity: Quantity
+  readonly onlyT: boolean
 
-  constructor({ demands, scanEv, resolutionEv, conditions }: TargetSpec) {
+  constructor({ kind, demands, scanEv, resolutionEv, conditions }: TargetSpec) {
     const points: number[] = []
+    const quantities: Quantity[] = []
     this.judges = demands.map((demand) => {
       const judge = judgeOf(demand, points.length, { scanEv, resolutionEv })
       if (judge.terms) points.push(...judge.terms.energiesEv)
+      while (quantities.length < points.length) quantities.push(demand.quantity)
       return judge
     })
     this.weights = this.judges.map(({ weight }) => weight)
-    this.spectrum = new PointSpectrum(points)
+    this.spectrum = new PointSpectrum(points, quantities)
+    this.onlyT = demands.every(({ quantity }) => quantity === 'T')
+    this.peakQuantity = demands.find((demand) => demand.kind === 'peak' || demand.kind === 'band')?.quantity ?? 'T'
     this.scanEv = scanEv
-    this.windowEv = [0, 2 * scanEv[1] - scanEv[0]]
+    this.windowEv = kind === 'electron' ? [0, 2 * scanEv[1] - scanEv[0]] : scanEv
     const ranges = this.judges.flatMap(({ rangeEv }) => (rangeEv ? [rangeEv] : []))
     this.limitsEv = [
       Math.max(this.windowEv[0], Math.min(...ranges.map(([from]) => from))),
@@ -97,14 +104,18 @@ class CompiledTarget implements Target {
   }
 
   meets(systems: readonly WaveSystem[]): boolean[] {
-    const landscapes = systems.map((system) => new Landscape(system, this.spectrum.at(system).slice(), this.limitsEv))
-    return this.judges.map((judge, d) => this.holds[d].every((c) => judge.met(landscapes[c]) !== false))
+    const landscapes = systems.map((system) => {
+      const T = this.spectrum.at(system).slice()
+      const made = new Map<Quantity, Landscape>()
+      return (quantity: Quantity) => landscapeIn(made, system, T, this.limitsEv, quantity)
+    })
+    return this.judges.map((judge, d) => this.holds[d].every((c) => judge.met(landscapes[c](judge.quantity)) !== false))
   }
 
   evaluate(systems: readonly WaveSystem[]): Evaluation {
     const { merit, demands } = this.judgeAll(systems)
     const first = demands.find(({ kind }) => kind === 'peak' || kind === 'band')
-    const peak = first ? first.peak : highestPeak(this.landscape(systems[0]), this.scanEv)
+    const peak = first ? first.peak : highestPeak(this.landscape(systems[0], 'T'), this.scanEv)
     const met = demands.every((demand) => demand.met !== false)
     return { merit, met, demands, peak, peakCondition: first?.condition ?? 0 }
   }
@@ -116,33 +127,33 @@ class CompiledTarget implements Target {
     residuals: Float64Array,
     jacobian: Float64Array,
   ): void {
-    const landscapes = systems.map((system) => this.landscape(system))
+    const landscapes = systems.map((system) => (quantity: Quantity) => this.landscape(system, quantity))
     fitInto(landscapes, this.judges, this.holds, directions, variables, residuals, jacobian)
   }
 
   limits(systems: readonly WaveSystem[]): Limit[] {
     return systems.flatMap((system, condition) => {
-      const landscape = this.landscape(system)
       const judges = this.judges.filter((_, d) => this.holds[d].includes(condition))
-      return judges.flatMap((judge) => judge.limits(landscape).map((limit) => ({ ...limit, condition })))
+      return judges.flatMap((judge) =>
+        judge.limits(this.landscape(system, judge.quantity)).map((limit) => ({ ...limit, condition })),
+      )
     })
   }
 
   maximumNear(system: WaveSystem, energyEv: number): number | null {
-    return nearestPeak(this.landscape(system), energyEv)?.energyEv ?? null
+    return nearestPeak(this.landscape(system, this.peakQuantity), energyEv)?.energyEv ?? null
   }
 
   maximumSlope(system: WaveSystem, energyEv: number): Float64Array | null {
-    const landscape = this.landscape(system)
+    const landscape = this.landscape(system, this.peakQuantity)
     const peak = nearestPeak(landscape, energyEv)
     return peak && peakSlopes(landscape, peak).energy
   }
 
   private judgeAll(systems: readonly WaveSystem[]): { merit: number; demands: DemandResult[] } {
-    const landscapes = systems.map((system) => this.landscape(system))
     const squares = new Float64Array(this.judges.length)
     const demands = this.judges.map((judge, d) => {
-      const verdicts = this.holds[d].map((c) => judge.judge(landscapes[c]))
+      const verdicts = this.holds[d].map((c) => judge.judge(this.landscape(systems[c], judge.quantity)))
       // As in pointMerit: its sum is a lower bound of this one to the last bit.
       for (const { square } of verdicts) squares[d] += square / verdicts.length
       return resultOf(judge, squares[d], verdicts, this.holds[d])
@@ -150,14 +161,29 @@ class CompiledTarget implements Target {
     return { merit: merit(squares, this.weights), demands }
   }
 
-  private landscape(system: WaveSystem): Landscape {
-    let landscape = this.landscapes.get(system)
-    if (!landscape) {
-      landscape = new Landscape(system, this.spectrum.at(system).slice(), this.windowEv)
-      this.landscapes.set(system, landscape)
+  private landscape(system: WaveSystem, quantity: Quantity): Landscape {
+    let made = this.landscapes.get(system)
+    if (!made) {
+      made = new Map()
+      this.landscapes.set(system, made)
     }
-    return landscape
+    const [any] = made.values()
+    return landscapeIn(made, system, any?.T ?? this.spectrum.at(system).slice(), this.windowEv, quantity)
   }
+}
+
+function landscapeIn(
+  made: Map<Quantity, Landscape>,
+  system: WaveSystem,
+  T: Float64Array,
+  windowEv: readonly [number, number],
+  quantity: Quantity,
+): Landscape {
+  const known = made.get(quantity)
+  if (known) return known
+  const landscape = new Landscape(system, T, windowEv, quantity)
+  made.set(quantity, landscape)
+  return landscape
 }
 
 function judgeOf(

@@ -1,4 +1,4 @@
-import type { CurveDemand, CurveRow } from '../job/index.js'
+import type { CurveDemand, CurveRow, Quantity } from '../job/index.js'
 import { log10 } from '../wave/index.js'
 import { type Judge, type JudgeLimit, nothing, type PointTerms, type Verdict } from './Judge.js'
 import type { Landscape } from './Landscape.js'
@@ -14,14 +14,16 @@ export class CurveJudge implements Judge {
   readonly rangeEv = null
   readonly id: string
   readonly weight: number
+  readonly quantity: Quantity
   readonly terms: PointTerms
 
   private readonly mostRms: number | null
 
-  constructor({ id, weight, rows, mostRms }: CurveDemand, first: number) {
+  constructor({ id, weight, quantity, rows, mostRms }: CurveDemand, first: number) {
     this.mostRms = mostRms
     this.id = id
     this.weight = weight
+    this.quantity = quantity
     const total = rows.reduce((sum, row) => sum + row.weight, 0)
     const goals = rows.map((row) => onScale(row, row.T))
     this.terms = {

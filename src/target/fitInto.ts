@@ -1,3 +1,4 @@
+import type { Quantity } from '../job/index.js'
 import type { Judge } from './Judge.js'
 import type { Landscape } from './Landscape.js'
 
@@ -7,7 +8,7 @@ import type { Landscape } from './Landscape.js'
  * d(layer parameter)/d(variable); jacobian[i * variables + v]. The adjoint runs only at points that have a slope.
  */
 export function fitInto(
-  landscapes: readonly Landscape[],
+  landscapes: readonly ((quantity: Quantity) => Landscape)[],
   judges: readonly Judge[],
   holds: readonly (readonly number[])[],
   directions: readonly Float64Array[],
@@ -18,14 +19,25 @@ export function fitInto(
   const total = judges.reduce((sum, { weight }) => sum + weight, 0)
   let next = 0
   for (let c = 0; c < landscapes.length; c++) {
-    const landscape = landscapes[c]
-    const size = landscape.layerParameters
     const held = judges.filter((_, d) => holds[d].includes(c))
-    const points = pointGradients(landscape, held)
+    const gradients = new Map<Quantity, ReturnType<typeof pointGradients>>()
+    const gradientOf = (quantity: Quantity) => {
+      const known = gradients.get(quantity)
+      if (known) return known
+      const found = pointGradients(
+        landscapes[c](quantity),
+        held.filter((judge) => judge.quantity === quantity),
+      )
+      gradients.set(quantity, found)
+      return found
+    }
     for (const judge of held) {
-      const { terms, parts, weight } = judge
+      const { terms, parts, weight, quantity } = judge
+      const landscape = landscapes[c](quantity)
+      const size = landscape.layerParameters
       const scale = Math.sqrt(weight / (total * holds[judges.indexOf(judge)].length))
       if (terms) {
+        const points = gradientOf(quantity)
         for (let i = 0; i < terms.energiesEv.length; i++) {
           const T = landscape.T[terms.first + i]
           const factor = scale * Math.sqrt(terms.share(i))

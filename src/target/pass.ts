@@ -1,5 +1,4 @@
-import type { PassDemand } from '../job/index.js'
-import { extremeOver } from '../wave/index.js'
+import type { PassDemand, Quantity } from '../job/index.js'
 import { extremeError, type Judge, type JudgeLimit, nothing, type PointTerms, type Verdict } from './Judge.js'
 import type { Landscape } from './Landscape.js'
 import { meanSquare } from './meanSquare.js'
@@ -10,6 +9,7 @@ export class PassJudge implements Judge {
   readonly parts = 0
   readonly id: string
   readonly weight: number
+  readonly quantity: Quantity
   readonly rangeEv: readonly [number, number]
   readonly terms: PointTerms
 
@@ -19,6 +19,7 @@ export class PassJudge implements Judge {
   ) {
     this.id = demand.id
     this.weight = demand.weight
+    this.quantity = demand.quantity
     this.rangeEv = [demand.pointsEv[0], demand.pointsEv[demand.pointsEv.length - 1]]
     const { above, pointsEv } = demand
     this.terms = {
@@ -54,8 +55,8 @@ export class PassJudge implements Judge {
     return [{ demand: this.id, part: 'least T', slack: T - this.demand.above, gradient }]
   }
 
-  private least({ system, extrema }: Landscape): { energyEv: number; T: number } {
-    return extremeOver(system, this.rangeEv, 'least', extrema)
+  private least(landscape: Landscape): { energyEv: number; T: number } {
+    return landscape.extremeOver(this.rangeEv, 'least')
   }
 
   private lack(T: number): number {

@@ -1,9 +1,10 @@
-import type { PeakDemand } from '../job/index.js'
+import { energiesAround, type PeakDemand, type Quantity } from '../job/index.js'
 import type { Extremum } from '../wave/index.js'
 import { decibelSlope, excess, unitDb } from './decibels.js'
 import type { JudgeLimit } from './Judge.js'
 import type { Landscape } from './Landscape.js'
-import { LineJudge, offPlace, offWidth, placeSlope, scaled, widthSlope } from './LineJudge.js'
+import { LineJudge, offPlace, offWidth, placeSlope, scaled, widthOn, widthSlope, widthSlopeOn } from './LineJudge.js'
+import { type LineScale, lineScale } from './lineScale.js'
 import { peakSlopes } from './peakSlopes.js'
 import type { PeakFigures } from './types.js'
 
@@ -13,21 +14,25 @@ export class PeakJudge extends LineJudge<PeakFigures> {
   readonly id: string
   readonly weight: number
   readonly parts: number
+  readonly quantity: Quantity
   readonly rangeEv: readonly [number, number]
+
+  private readonly scale: LineScale
 
   constructor(
     private readonly demand: PeakDemand,
     private readonly scanEv: readonly [number, number],
   ) {
     super()
-    const { id, weight, energyEv, withinEv, fwhmEv, height, alone } = demand
+    const { id, weight, quantity, axis, within, fwhm, height, alone } = demand
     this.id = id
     this.weight = weight
+    this.quantity = quantity
+    this.scale = lineScale(axis)
     // A width that is cut at twice its limit beyond the last allowed position is too wide for certain.
-    const reach = withinEv + 2 * (fwhmEv?.[1] ?? withinEv)
-    const around = [energyEv - reach, energyEv + reach] as const
+    const around = energiesAround(demand, within + 2 * (fwhm?.[1] ?? within))
     this.rangeEv = alone === null ? around : [Math.min(around[0], scanEv[0]), Math.max(around[1], scanEv[1])]
-    this.parts = 1 + (fwhmEv ? 1 : 0) + (height === null ? 0 : 1) + (alone === null ? 0 : 1)
+    this.parts = 1 + (fwhm ? 1 : 0) + (height === null ? 0 : 1) + (alone === null ? 0 : 1)
   }
 
   protected figures(landscape: Landscape, maximum: Extremum): PeakFigures {
@@ -45,38 +50,44 @@ export class PeakJudge extends LineJudge<PeakFigures> {
   /** All but the width. */
   protected cheap(landscape: Landscape, at: { readonly energyEv: number; readonly T: number }): number[] {
     const { height, alone } = this.demand
-    const parts = [offPlace(at.energyEv, this.demand)]
+    const parts = [offPlace(this.scale.of(at.energyEv), this.demand)]
     if (height !== null) parts.push(Math.max(0, height - at.T) / Math.max(1 - height, 0.01))
     if (alone !== null) parts.push(excess(this.other(landscape, at.energyEv)?.T ?? 0, alone))
     return parts
   }
 
   protected residuals(landscape: Landscape, peak: PeakFigures): number[] {
-    const { fwhmEv } = this.demand
+    const { fwhm } = this.demand
     const [position, ...rest] = this.cheap(landscape, peak)
-    return fwhmEv ? [position, offWidth(peak.fwhmEv, fwhmEv), ...rest] : [position, ...rest]
+    return fwhm ? [position, offWidth(widthOn(this.scale, peak), fwhm), ...rest] : [position, ...rest]
   }
 
   protected slopes(landscape: Landscape, peak: PeakFigures): Float64Array[] {
-    const { fwhmEv, height, alone } = this.demand
+    const { fwhm, height, alone } = this.demand
+    const { scale } = this
     const slopes = peakSlopes(landscape, peak)
-    const rows = [scaled(slopes.energy, placeSlope(peak.energyEv, this.demand))]
-    if (fwhmEv) rows.push(scaled(slopes.fwhm, widthSlope(peak.fwhmEv, fwhmEv)))
+    const [x, dx] = [scale.of(peak.energyEv), scale.slope(peak.energyEv)]
+    const rows = [scaled(slopes.energy, placeSlope(x, this.demand) * dx)]
+    if (fwhm) rows.push(scaled(widthSlopeOn(scale, peak, slopes), widthSlope(widthOn(scale, peak), fwhm)))
     if (height !== null) rows.push(scaled(slopes.height, -1 / Math.max(1 - height, 0.01)))
     if (alone !== null) rows.push(scaled(this.otherSlope(landscape, peak.energyEv), 1 / unitDb))
     return rows
   }
 
   protected limitsOf(landscape: Landscape, peak: PeakFigures): JudgeLimit[] {
-    const { energyEv, withinEv, fwhmEv, height, alone } = this.demand
+    const { axis, centre, within, fwhm, height, alone } = this.demand
+    const { scale } = this
     const slopes = peakSlopes(landscape, peak)
+    const [x, dx] = [scale.of(peak.energyEv), scale.slope(peak.energyEv)]
+    const [lowest, highest] = endsOf[axis]
     const limits = [
-      this.limit('lowest energy', peak.energyEv - energyEv + withinEv, slopes.energy),
-      this.limit('highest energy', energyEv + withinEv - peak.energyEv, scaled(slopes.energy, -1)),
+      this.limit(lowest, x - centre + within, scaled(slopes.energy, dx)),
+      this.limit(highest, centre + within - x, scaled(slopes.energy, -dx)),
     ]
-    if (fwhmEv) {
-      limits.push(this.limit('least fwhm', peak.fwhmEv - fwhmEv[0], slopes.fwhm))
-      limits.push(this.limit('greatest fwhm', fwhmEv[1] - peak.fwhmEv, scaled(slopes.fwhm, -1)))
+    if (fwhm) {
+      const [width, slope] = [widthOn(scale, peak), widthSlopeOn(scale, peak, slopes)]
+      limits.push(this.limit('least fwhm', width - fwhm[0], slope))
+      limits.push(this.limit('greatest fwhm', fwhm[1] - width, scaled(slope, -1)))
     }
     if (height !== null) limits.push(this.limit('height', peak.T - height, slopes.height))
     const other = alone === null ? null : this.other(landscape, peak.energyEv)
@@ -106,6 +117,12 @@ export class PeakJudge extends LineJudge<PeakFigures> {
     return scaled(gradient, decibelSlope(T[0]))
   }
 }
+
+/** What the ends of `within` are called. */
+export const endsOf = {
+  eV: ['lowest energy', 'highest energy'],
+  nm: ['shortest wavelength', 'longest wavelength'],
+} as const
 
 function signedExcess(T: number, t: number): number {
   return T > t ? excess(T, t) : -excess(t, T)

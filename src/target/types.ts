@@ -71,6 +71,8 @@ export interface PointShare {
 
 /** The demands of a job, ready to judge stacks. Systems come one a condition, in the job's order. */
 export interface Target {
+  /** All demands are on what is transmitted. */
+  readonly onlyT: boolean
   /** Residuals of the fit: point terms and the parts of peaks. */
   readonly fitSize: number
   /** All that a bound reads of a stack, over all conditions. */

@@ -69,6 +69,10 @@ export interface WaveSystem {
   readonly stack: WaveStack
   /** Absent: every row is a layer. */
   readonly rowMap?: RowMap
+  /** Another wave on the same stack: what is asked of the system is the mean of both. */
+  readonly beside?: WaveSystem
+  /** Number of the medium behind the exit, where that is so thick that what runs to and fro in it adds up by intensities. */
+  readonly behind?: number
 }
 
 export type Side = 'entry' | 'exit'

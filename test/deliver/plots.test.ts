@@ -154,8 +154,8 @@ function hardWall(): Candidate {
     log10T: energyEv.map(() => Number.NEGATIVE_INFINITY),
   }
   const inside = base.profile.zNm.filter((z) => z <= base.totalNm)
-  const edgeEv = base.profile.edgeEv.slice(0, inside.length)
-  return { ...base, spectra: [nothing], profile: { zNm: inside, edgeEv, densityPerNm: null } }
+  const edge = base.profile.edge.slice(0, inside.length)
+  return { ...base, spectra: [nothing], profile: { zNm: inside, edge, densityPerNm: null } }
 }
 
 function deep(decades: number): Candidate {
@@ -228,7 +228,16 @@ function hostile(): [Job, Candidate] {
 }
 
 function passDemand(): Demand {
-  return { id: 'band', weight: 1, kind: 'pass', accept: null, at: null, pointsEv: evenly(0.075, 0.085, 64), above: 0.5 }
+  return {
+    id: 'band',
+    weight: 1,
+    kind: 'pass',
+    accept: null,
+    at: null,
+    quantity: 'T',
+    pointsEv: evenly(0.075, 0.085, 64),
+    above: 0.5,
+  }
 }
 
 function curveDemand(): Demand {
@@ -236,7 +245,17 @@ function curveDemand(): Demand {
     ...({ energyEv, T: i % 7 === 0 ? 0 : 0.001, scale: 'decades', tolerance: 1, weight: 1 } as const),
     sense: (['equal', 'least', 'most'] as const)[i % 3],
   }))
-  return { id: 'goal', weight: 1, kind: 'curve', accept: null, at: null, mostRms: null, file: 'goal.csv', rows }
+  return {
+    id: 'goal',
+    weight: 1,
+    kind: 'curve',
+    accept: null,
+    at: null,
+    quantity: 'T',
+    mostRms: null,
+    file: 'goal.csv',
+    rows,
+  }
 }
 
 function thirty(): Demand[] {
@@ -247,6 +266,7 @@ function thirty(): Demand[] {
       kind: 'block',
       accept: null,
       at: null,
+      quantity: 'T',
       pointsEv: evenly(from, from + 0.004, 64),
       below: 1e-3,
     },
@@ -257,5 +277,5 @@ function flat(): Candidate {
   const energyEv = Float64Array.from(evenly(0.005, 0.2, 300))
   const one = energyEv.map(() => 1)
   const zero = energyEv.map(() => 0)
-  return { ...withoutPeak(), spectra: [{ condition: '', energyEv, T: one, R: zero, log10T: zero }] }
+  return { ...withoutPeak(), spectra: [{ condition: '', energyEv, T: one, R: zero, A: null, log10T: zero }] }
 }

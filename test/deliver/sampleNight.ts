@@ -20,16 +20,36 @@ export const demands: Demand[] = [
     id: 'd1',
     weight: 1,
     kind: 'peak',
-    energyEv: 0.08,
-    withinEv: 0.005,
-    fwhmEv: [0.001, 0.004],
+    axis: 'eV',
+    centre: 0.08,
+    within: 0.005,
+    fwhm: [0.001, 0.004],
     height: 0.8,
     alone: null,
     accept: null,
     at: null,
+    quantity: 'T',
   },
-  { id: 'd2', weight: 1, kind: 'block', accept: null, at: null, pointsEv: evenly(0.005, 0.06, 64), below: 0.02 },
-  { id: 'd3', weight: 0.5, kind: 'block', accept: null, at: null, pointsEv: evenly(0.11, 0.2, 64), below: 0.02 },
+  {
+    id: 'd2',
+    weight: 1,
+    kind: 'block',
+    accept: null,
+    at: null,
+    quantity: 'T',
+    pointsEv: evenly(0.005, 0.06, 64),
+    below: 0.02,
+  },
+  {
+    id: 'd3',
+    weight: 0.5,
+    kind: 'block',
+    accept: null,
+    at: null,
+    quantity: 'T',
+    pointsEv: evenly(0.11, 0.2, 64),
+    below: 0.02,
+  },
 ]
 
 export function sampleJob(changes: Partial<Job> = {}): Job {
@@ -41,7 +61,7 @@ export function sampleJob(changes: Partial<Job> = {}): Job {
     name: 'cold-collector-80',
     kind: 'electron',
     note: '',
-    conditions: [{ name: '', temperatureK: 77, biasV: 0, inPlaneEv: 0 }],
+    conditions: [{ name: '', temperatureK: 77, biasV: 0, inPlaneEv: 0, angleDeg: 0, polarisation: 's' }],
     stack: {
       entry: { kind: 'material', material: 'GaAs', x: null },
       exit: { kind: 'material', material: 'GaAs', x: null },
@@ -50,6 +70,9 @@ export function sampleJob(changes: Partial<Job> = {}): Job {
       massModel: 'two-band',
       strainedTo: null,
       biasOver: null,
+      rising: [],
+      referenceNm: null,
+      back: null,
     },
     scanEv: [0.005, 0.2],
     resolutionEv: 1e-5,
@@ -59,7 +82,10 @@ export function sampleJob(changes: Partial<Job> = {}): Job {
       sources: [],
       compositions: 1,
       stepNm: null,
-      spread: { rate: 0.01, layer: { value: 0.5, unit: 'ML' }, x: 0.005 },
+      thinnestNm: null,
+      totalNm: null,
+      tooling: {},
+      spread: { rate: 0.01, layer: { value: 0.5, unit: 'ML' }, x: 0.005, index: 0 },
       assumed: false,
       trials: 2048,
     },
@@ -85,12 +111,12 @@ export function layer(
   x: number | null,
   count: number,
   stepNm: number,
-  region: LayerReport['resolved']['region'],
+  region: Extract<LayerReport['resolved'], { kind: 'electron' }>['region'],
   fromSubstrate: number,
 ): LayerReport {
   return {
     ...{ id, choice: { kind: 'material', material, x }, count, stepNm, widthNm: count * stepNm, fromSubstrate },
-    resolved: { region, monolayerNm: stepNm, strain: 0 },
+    resolved: { kind: 'electron', region, monolayerNm: stepNm, strain: 0 },
     seconds: count / 0.7,
     toleranceNm: 0.1 + 0.2 * fromSubstrate,
     shiftEv: -0.00321,
@@ -113,7 +139,7 @@ export function sampleSpectrum(
       lines.reduce((sum, [e0, gamma]) => sum + (gamma * gamma) / 4 / ((e - e0) * (e - e0) + (gamma * gamma) / 4), 0),
     ),
   )
-  return { condition, energyEv, T, R: T.map((t) => 1 - t), log10T: T.map((t) => Math.log10(t)) }
+  return { condition, energyEv, T, R: T.map((t) => 1 - t), A: null, log10T: T.map((t) => Math.log10(t)) }
 }
 
 export function sampleCandidate(changes: Partial<Candidate> = {}): Candidate {
@@ -135,6 +161,7 @@ export function sampleCandidate(changes: Partial<Candidate> = {}): Candidate {
           kind: 'block',
           accept: null,
           at: null,
+          quantity: 'T',
           reached: 0.0006202906946,
           rms: 0,
           met: true,
@@ -146,6 +173,7 @@ export function sampleCandidate(changes: Partial<Candidate> = {}): Candidate {
           kind: 'block',
           accept: null,
           at: null,
+          quantity: 'T',
           reached: 0.005054526586,
           rms: 0,
           met: true,
@@ -177,11 +205,11 @@ export function sampleCandidate(changes: Partial<Candidate> = {}): Candidate {
 export function sampleProfile(layers: readonly LayerReport[]): Candidate['profile'] {
   const total = layers.reduce((sum, { widthNm }) => sum + widthNm, 0)
   const zNm: number[] = []
-  const edgeEv: number[] = []
+  const edges: number[] = []
   const run = (from: number, to: number, edge: number) => {
     for (const z of evenly(from, to, 60)) {
       zNm.push(z)
-      edgeEv.push(edge)
+      edges.push(edge)
     }
   }
   run(-5, 0, 0)
@@ -192,7 +220,7 @@ export function sampleProfile(layers: readonly LayerReport[]): Candidate['profil
   }
   run(total, total + 5, 0)
   const density = zNm.map((z) => 0.2 + 3 * Math.exp((-(z - total / 2) * (z - total / 2)) / 6))
-  return { zNm: Float64Array.from(zNm), edgeEv: Float64Array.from(edgeEv), densityPerNm: Float64Array.from(density) }
+  return { zNm: Float64Array.from(zNm), edge: Float64Array.from(edges), densityPerNm: Float64Array.from(density) }
 }
 
 export function sampleResult(candidates: readonly Candidate[] = [sampleCandidate()]): JobResult {

@@ -43,7 +43,12 @@ describe('yieldOf', () => {
   const film: GrownLayer = {
     id: 'film',
     choice: { kind: 'numbers', name: null, potentialEv: 0.3, massRel: 0.09, alphaPerEv: 0 },
-    resolved: { region: { potentialEv: 0.3, massRel: 0.09, alphaPerEv: 0 }, monolayerNm: null, strain: null },
+    resolved: {
+      kind: 'electron',
+      region: { potentialEv: 0.3, massRel: 0.09, alphaPerEv: 0 },
+      monolayerNm: null,
+      strain: null,
+    },
     count: 50,
     stepNm: 0.2,
     widthNm: 10,

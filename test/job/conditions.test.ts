@@ -21,16 +21,18 @@ const complaint = (text: string): string => {
 describe('the conditions of a job', () => {
   test('are one without the section, from the top', () => {
     const { conditions } = readJobText(job('temperature: 4.2 K\nbias: -120 mV\nin-plane: 3 meV\n'), 'any.yaml')
-    expect(conditions).toEqual([{ name: '', temperatureK: 4.2, biasV: -0.12, inPlaneEv: 0.003 }])
+    expect(conditions).toEqual([
+      { name: '', temperatureK: 4.2, biasV: -0.12, inPlaneEv: 0.003, angleDeg: 0, polarisation: 's' },
+    ])
   })
 
   test('take from the top what they do not state', () => {
     const rest =
       'temperature: 77 K\nbias: 1 mV\nconditions: { rest: { bias: 0 mV }, on: { bias: 0.35 V }, warm: { temperature: 300 K } }\n'
     expect(readJobText(job(rest), 'any.yaml').conditions).toEqual([
-      { name: 'rest', temperatureK: 77, biasV: 0, inPlaneEv: 0 },
-      { name: 'on', temperatureK: 77, biasV: 0.35, inPlaneEv: 0 },
-      { name: 'warm', temperatureK: 300, biasV: 0.001, inPlaneEv: 0 },
+      { name: 'rest', temperatureK: 77, biasV: 0, inPlaneEv: 0, angleDeg: 0, polarisation: 's' },
+      { name: 'on', temperatureK: 77, biasV: 0.35, inPlaneEv: 0, angleDeg: 0, polarisation: 's' },
+      { name: 'warm', temperatureK: 300, biasV: 0.001, inPlaneEv: 0, angleDeg: 0, polarisation: 's' },
     ])
     expect(readJobText(job(rest), 'any.yaml').notes.join()).not.toContain('assumed.\nThe job states no temperature')
   })

@@ -27,7 +27,9 @@ describe('a job in order', () => {
   test('the main example means what the contract says', async () => {
     const job = await readJob(`${root}jobs/cold-collector-80.yaml`)
     expect(job.name).toBe('cold-collector-80')
-    expect(job.conditions).toEqual([{ name: '', temperatureK: 77, biasV: 0, inPlaneEv: 0 }])
+    expect(job.conditions).toEqual([
+      { name: '', temperatureK: 77, biasV: 0, inPlaneEv: 0, angleDeg: 0, polarisation: 's' },
+    ])
     expect(job.stack).toEqual({
       entry: { kind: 'material', material: 'GaAs', x: null },
       exit: { kind: 'material', material: 'GaAs', x: null },
@@ -41,6 +43,8 @@ describe('a job in order', () => {
       strainedTo: null,
       biasOver: null,
       rising: [],
+      referenceNm: null,
+      back: null,
     })
     expect(job.scanEv).toEqual([0.005, 0.2])
     expect(job.resolutionEv).toBe(1e-5)
@@ -50,11 +54,13 @@ describe('a job in order', () => {
       alone: null,
       accept: null,
       at: null,
+      quantity: 'T',
       id: 'd1',
       weight: 1,
-      energyEv: 0.08,
-      withinEv: 0.005,
-      fwhmEv: [0.001, 0.004],
+      axis: 'eV',
+      centre: 0.08,
+      within: 0.005,
+      fwhm: [0.001, 0.004],
       height: 0.8,
     })
     expect(low).toMatchObject({ kind: 'block', id: 'd2', weight: 1, below: 0.02 })
@@ -62,13 +68,16 @@ describe('a job in order', () => {
     expect(job.growth).toEqual({
       startsAt: 'exit',
       sources: [
-        { name: 'Ga', element: 'Ga', rateMlPerS: 0.7 },
-        { name: 'Al-1', element: 'Al', rateMlPerS: 0.233 },
-        { name: 'Al-2', element: 'Al', rateMlPerS: 0.377 },
+        { name: 'Ga', element: 'Ga', rate: 0.7 },
+        { name: 'Al-1', element: 'Al', rate: 0.233 },
+        { name: 'Al-2', element: 'Al', rate: 0.377 },
       ],
       compositions: 1,
       stepNm: null,
-      spread: { rate: 0.01, layer: { value: 0.5, unit: 'ML' }, x: 0.005 },
+      thinnestNm: null,
+      totalNm: null,
+      tooling: {},
+      spread: { rate: 0.01, layer: { value: 0.5, unit: 'ML' }, x: 0.005, index: 0 },
       assumed: false,
       trials: 2048,
     })
@@ -83,8 +92,8 @@ describe('a job in order', () => {
     expect(job.search).toEqual({ method: 'auto', effort: 'standard', seed: 1 })
     expect(job.deliver.candidates).toBe(10)
     expect(job.growth).toMatchObject({ startsAt: 'exit', sources: [], compositions: null, assumed: true, trials: 2048 })
-    expect(job.growth.spread).toEqual({ rate: 0.01, layer: { value: 0.5, unit: 'ML' }, x: 0.005 })
-    expect(job.demands[0]).toMatchObject({ fwhmEv: null, height: null })
+    expect(job.growth.spread).toEqual({ rate: 0.01, layer: { value: 0.5, unit: 'ML' }, x: 0.005, index: 0 })
+    expect(job.demands[0]).toMatchObject({ fwhm: null, height: null })
     expect(job.notes.join(' ')).toMatch(/300 K is assumed.*1 %, layers 0.5 ML, x 0.005.*assumed/)
   })
 
@@ -166,6 +175,7 @@ describe('a job in order', () => {
         kind: 'curve',
         accept: null,
         at: null,
+        quantity: 'T',
         mostRms: null,
         id: 'goal',
         weight: 2,

@@ -73,7 +73,7 @@ describe('readLayers', () => {
     ['', 'own.csv:1  The file is empty'],
     ['material,x,ml\n', 'own.csv:1  There is a header and no layer'],
     ['material,x,width\nGaAs,,5\n', 'own.csv:1  There is no column ml or width_nm.'],
-    ['x,ml\n0.3,5\n', 'own.csv:1  There is no column material or potential_eV.'],
+    ['x,ml\n0.3,5\n', 'own.csv:1  There is no column material, potential_eV or index.'],
     ['material,x,ml\nGaAlAs,0.3,5\n', 'own.csv:2  "GaAlAs" is no built-in material. Did you mean AlGaAs'],
     ['material,x,ml\nglass,,5\n', 'own.csv:2  "glass" is no built-in material. Built in: GaAs'],
     ['material,x,ml\nAlGaAs,,5\n', 'own.csv:2  x is empty. Give 0..1 (x is the share of Al'],

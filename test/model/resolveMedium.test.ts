@@ -12,6 +12,7 @@ const gaAs: MediumChoice = { kind: 'material', material: 'GaAs', x: null }
 const barrier: MediumChoice = { kind: 'material', material: 'AlGaAs', x: 0.35 }
 const numbers: MediumChoice = { kind: 'numbers', name: 'low', potentialEv: 0.115, massRel: 0.0795, alphaPerEv: 1.2 }
 const onGaAs: Situation = {
+  kind: 'electron',
   temperatureK: 77,
   substrateNm: bandParameters('GaAs', null, 300).latticeNm,
   massModel: 'two-band',
@@ -80,6 +81,7 @@ describe('resolveMedium', () => {
 
   test('numbers stay as written and have no monolayer', () => {
     expect(resolveMedium(numbers, onGaAs)).toEqual({
+      kind: 'electron',
       region: { potentialEv: 0.115, massRel: 0.0795, alphaPerEv: 1.2 },
       monolayerNm: null,
       strain: null,

@@ -12,7 +12,7 @@ import {
 
 const gaAs: MediumOption = { kind: 'material', material: 'GaAs', x: null }
 const low: MediumOption = { kind: 'numbers', name: 'low', potentialEv: [0], massRel: [0.07], alphaPerEv: [0.5] }
-const cold = { name: '', temperatureK: 77, biasV: 0, inPlaneEv: 0 }
+const cold = { name: '', temperatureK: 77, biasV: 0, inPlaneEv: 0, angleDeg: 0, polarisation: 's' }
 
 function job(stack: Partial<Job['stack']> = {}, startsAt: 'entry' | 'exit' = 'exit', conditions = [cold]): Job {
   const whole = {
@@ -112,10 +112,6 @@ describe('stackOf', () => {
     expect(stackOf(both, rows, 'hot')).toEqual(stackOf(job({}, 'exit', [hot]), rows))
     expect(stackOf(both, rows)).toEqual(stackOf(job(), rows))
     expect(() => stackOf(both, rows, 'warm')).toThrow('The job has no condition "warm". It has "cold", "hot".')
-  })
-
-  test('a job of light is refused, never passed over', () => {
-    expect(() => stackOf({ ...job(), kind: 'light' }, rows)).toThrow('The job is of kind light')
   })
 
   test('layers of material under leads by numbers have no zero', () => {

@@ -6,7 +6,7 @@ import { stackOf } from '../../src/model/index.js'
 // The stacks of a worked example, evaluated there from the published material numbers in 30-digit arithmetic.
 const job = {
   kind: 'electron',
-  conditions: [{ name: '', temperatureK: 77, biasV: 0, inPlaneEv: 0 }],
+  conditions: [{ name: '', temperatureK: 77, biasV: 0, inPlaneEv: 0, angleDeg: 0, polarisation: 's' }],
   stack: {
     entry: { kind: 'material', material: 'GaAs', x: null },
     exit: { kind: 'material', material: 'GaAs', x: null },

@@ -8,8 +8,8 @@ import { extrema, spectrumInto, type WaveSystem } from '../../src/wave/index.js'
 import { d1, layersOf, spec, systemsOf } from './coldCollector.js'
 
 const band: BandDemand = {
-  ...{ kind: 'band', id: 'b', weight: 1, accept: null, at: null },
-  ...{ energyEv: 0.08, withinEv: 0.002, fwhmEv: [0.006, 0.02], top: 0.9, ripple: 0.1 },
+  ...{ kind: 'band', id: 'b', weight: 1, accept: null, at: null, quantity: 'T' },
+  ...{ axis: 'eV', centre: 0.08, within: 0.002, fwhm: [0.006, 0.02], top: 0.9, ripple: 0.1 },
 }
 
 function resultOf(demand: BandDemand | PeakDemand, system: WaveSystem) {
@@ -67,7 +67,7 @@ describe('a band', () => {
 
   test('has the mean square of the parts that are stated', () => {
     const { centreEv, top, ripple, peak } = resultOf(band, flat).band!
-    const unmet = { ...band, energyEv: 0.09, fwhmEv: [0.001, 0.002] as const, top: 0.99, ripple: 0.01 }
+    const unmet = { ...band, centre: 0.09, fwhm: [0.001, 0.002] as const, top: 0.99, ripple: 0.01 }
     const parts = [
       (Math.abs(centreEv - 0.09) - 0.002) / 0.002,
       (peak.fwhmEv - 0.002) / 0.0005,
@@ -87,7 +87,7 @@ describe('a band', () => {
 
 describe('a peak that must stand alone', () => {
   test('has the highest other maximum of the scan above it in decibels', () => {
-    const alone = { ...d1, fwhmEv: null, height: null, energyEv: 0.075, withinEv: 0.03, alone: 0.01 }
+    const alone = { ...d1, fwhm: null, height: null, axis: 'eV', centre: 0.075, within: 0.03, alone: 0.01 }
     const maxima = extrema(flat, [1e-6, 0.2]).filter(({ kind, energyEv }) => kind === 'maximum' && energyEv > 0.005)
     expect(maxima.length).toBeGreaterThan(1)
     const reached = resultOf(alone, flat)
@@ -96,7 +96,7 @@ describe('a peak that must stand alone', () => {
     expect(reached.rms).toBeCloseTo(Math.sqrt(((10 * Math.log10(T2 / 0.01)) / 3) ** 2 / 2), 9)
     expect(reached.met).toBe(false)
     const [single] = systemsOf(layersOf(0.35, [12, 18, 12]))
-    expect(resultOf({ ...alone, energyEv: 0.08 }, single).met).toBe(true)
+    expect(resultOf({ ...alone, centre: 0.08 }, single).met).toBe(true)
   })
 })
 
@@ -111,12 +111,13 @@ target: { scan: 5..200 meV, demands: [{ peak: 80 meV, within: 5 meV, fwhm: 1..4 
     const strict = readJobText(text(''), 'any.yaml')
     const loose = readJobText(text(', accept: { within: 8 meV, fwhm: ..5 meV, height: 0.6 }'), 'any.yaml')
     expect(acceptedDemands(loose.demands)[0]).toMatchObject({
-      energyEv: 0.08,
-      withinEv: 0.008,
-      fwhmEv: [0, 0.005],
+      axis: 'eV',
+      centre: 0.08,
+      within: 0.008,
+      fwhm: [0, 0.005],
       height: 0.6,
     })
-    expect(loose.demands[0]).toMatchObject({ withinEv: 0.005, fwhmEv: [0.001, 0.004], height: 0.8 })
+    expect(loose.demands[0]).toMatchObject({ within: 0.005, fwhm: [0.001, 0.004], height: 0.8 })
     expect(resumeContent(loose)).toBe(resumeContent(strict))
   })
 

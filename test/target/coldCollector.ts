@@ -9,6 +9,7 @@ import type { TargetSpec } from '../../src/target/index.js'
 const GaAs: MediumChoice = { kind: 'material', material: 'GaAs', x: null }
 
 export const situation: Situation = {
+  kind: 'electron',
   temperatureK: 77,
   substrateNm: bandParameters('GaAs', null, 300).latticeNm,
   massModel: 'two-band',
@@ -18,18 +19,20 @@ export const situation: Situation = {
   biasV: 0,
 }
 
-export const condition = { name: '', temperatureK: 77, biasV: 0, inPlaneEv: 0 }
+export const condition = { name: '', temperatureK: 77, biasV: 0, inPlaneEv: 0, angleDeg: 0, polarisation: 's' }
 
 export const d1 = {
   kind: 'peak',
   alone: null,
   accept: null,
   at: null,
+  quantity: 'T',
   id: 'd1',
   weight: 1,
-  energyEv: 0.08,
-  withinEv: 0.005,
-  fwhmEv: [0.001, 0.004],
+  axis: 'eV',
+  centre: 0.08,
+  within: 0.005,
+  fwhm: [0.001, 0.004],
   height: 0.8,
 } as const satisfies Demand
 
@@ -37,6 +40,7 @@ export const d2 = block('d2', 1, 0.005, 0.06, 2e-2)
 export const d3 = block('d3', 0.5, 0.11, 0.2, 2e-2)
 
 export const spec: TargetSpec = {
+  kind: 'electron',
   demands: [d1, d2, d3],
   scanEv: [0.005, 0.2],
   resolutionEv: 1e-5,
@@ -46,13 +50,16 @@ export const spec: TargetSpec = {
 export const growth: GrowthSpec = {
   startsAt: 'exit',
   sources: [
-    { name: 'Ga', element: 'Ga', rateMlPerS: 0.7 },
-    { name: 'Al-1', element: 'Al', rateMlPerS: 0.233 },
-    { name: 'Al-2', element: 'Al', rateMlPerS: 0.377 },
+    { name: 'Ga', element: 'Ga', rate: 0.7 },
+    { name: 'Al-1', element: 'Al', rate: 0.233 },
+    { name: 'Al-2', element: 'Al', rate: 0.377 },
   ],
   compositions: 1,
   stepNm: null,
-  spread: { rate: 0.01, layer: { value: 0.5, unit: 'ML' }, x: 0.005 },
+  thinnestNm: null,
+  totalNm: null,
+  tooling: {},
+  spread: { rate: 0.01, layer: { value: 0.5, unit: 'ML' }, x: 0.005, index: 0 },
   assumed: false,
   trials: 2048,
 }
@@ -62,6 +69,7 @@ export function block(id: string, weight: number, from: number, to: number, belo
     kind: 'block',
     accept: null,
     at: null,
+    quantity: 'T',
     id,
     weight,
     pointsEv: evenly(from, to, 64),

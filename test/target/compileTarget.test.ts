@@ -94,17 +94,17 @@ describe('a peak', () => {
   test('without any maximum has 10 in every part that it states', () => {
     const { rms, reached, met, peak } = only(d1, rising)
     expect([rms, reached, met, peak]).toEqual([10, null, false, null])
-    expect(only({ ...d1, height: null, fwhmEv: null }, rising).rms).toBe(10)
+    expect(only({ ...d1, height: null, fwhm: null }, rising).rms).toBe(10)
   })
 
   test('takes the mean over the parts that are stated', () => {
     const system = doubleBarrier(3, 8)
-    const far = { ...d1, energyEv: 0.1, withinEv: 0.01, fwhmEv: null, height: null }
+    const far = { ...d1, axis: 'eV', centre: 0.1, within: 0.01, fwhm: null, height: null }
     const alone = only(far, system)
     const peak = alone.peak!
     expect(alone.rms).toBeCloseTo((Math.abs(peak.energyEv - 0.1) - 0.01) / 0.01, 12)
     expect(only({ ...far, height: 0.5 }, system).rms).toBeCloseTo(alone.rms / Math.SQRT2, 12)
-    const narrow = only({ ...far, fwhmEv: [0, 1e-4] }, system)
+    const narrow = only({ ...far, fwhm: [0, 1e-4] }, system)
     const width = (peak.fwhmEv - 1e-4) / 0.5e-4
     expect(narrow.rms).toBeCloseTo(Math.sqrt((alone.rms ** 2 + width ** 2) / 2), 9)
   })
@@ -114,17 +114,17 @@ describe('a peak', () => {
     const maxima = extrema(system, [0, 0.395]).filter(({ kind, T }) => kind === 'maximum' && T > 0.5)
     const [first, second] = maxima
     const between = 0.6 * first.energyEv + 0.4 * second.energyEv
-    const at = { ...d1, energyEv: between, withinEv: 0.5 * (second.energyEv - first.energyEv), height: null }
-    const widths = targetOf([{ ...at, fwhmEv: null }]).evaluate([system]).demands[0]
+    const at = { ...d1, centre: between, within: 0.5 * (second.energyEv - first.energyEv), height: null }
+    const widths = targetOf([{ ...at, fwhm: null }]).evaluate([system]).demands[0]
     expect(widths.reached).toBe(first.energyEv)
     // The second is several times as wide.
-    const wide = only({ ...at, fwhmEv: [0.01, 0.03] }, system)
+    const wide = only({ ...at, fwhm: [0.01, 0.03] }, system)
     expect(wide.reached).toBe(second.energyEv)
   })
 
   test('of two that fit alike is the lower one', () => {
     const system = doubleBarrier(2, 12)
-    expect(only({ ...d1, energyEv: 0.15, withinEv: 0.149, fwhmEv: null, height: 0.5 }, system).reached).toBe(
+    expect(only({ ...d1, axis: 'eV', centre: 0.15, within: 0.149, fwhm: null, height: 0.5 }, system).reached).toBe(
       extrema(system, [0, 0.395]).find(({ kind, T }) => kind === 'maximum' && T > 0.5)!.energyEv,
     )
   })
@@ -132,7 +132,7 @@ describe('a peak', () => {
   test('may lie beyond the scan, up to its length', () => {
     const system = doubleBarrier(3, 8)
     const [, second] = extrema(system, [0, 0.4]).filter(({ kind, T }) => kind === 'maximum' && T > 0.5)
-    const demand = { ...d1, energyEv: second.energyEv, withinEv: 0.001, fwhmEv: null, height: null }
+    const demand = { ...d1, centre: second.energyEv, within: 0.001, fwhm: null, height: null }
     const end = 0.6 * second.energyEv
     expect(only(demand, system, { scanEv: [0.005, end] }).reached).toBe(second.energyEv)
     expect(only(demand, system, { scanEv: [0.005, 0.49 * second.energyEv] }).reached).toBeLessThan(second.energyEv)
@@ -176,6 +176,7 @@ describe('a pass', () => {
     kind: 'pass',
     accept: null,
     at: null,
+    quantity: 'T',
     id: 'p',
     weight: 1,
     pointsEv: evenly(from, to, 64),
@@ -209,6 +210,7 @@ function curve(rows: readonly Partial<CurveRow>[]): CurveDemand {
     kind: 'curve',
     accept: null,
     at: null,
+    quantity: 'T',
     mostRms: null,
     id: 'c',
     weight: 1,

@@ -35,10 +35,20 @@ function anyStack(number: number): WaveSystem {
 describe('the extremes of a closed range', () => {
   const target = compileTarget({
     ...spec,
+    kind: 'electron',
     resolutionEv: null,
     demands: [
       { ...block('b', 1, ...range, 1e-3), pointsEv: evenly(...range, 64) },
-      { kind: 'pass', accept: null, at: null, id: 'p', weight: 1, above: 0.9, pointsEv: evenly(...range, 64) },
+      {
+        kind: 'pass',
+        accept: null,
+        at: null,
+        quantity: 'T',
+        id: 'p',
+        weight: 1,
+        above: 0.9,
+        pointsEv: evenly(...range, 64),
+      },
     ],
   })
 
@@ -61,6 +71,7 @@ describe('the extremes of a closed range', () => {
               kind: 'curve',
               accept: null,
               at: null,
+              quantity: 'T',
               mostRms: null,
               id: 'c',
               weight: 1,

@@ -8,14 +8,25 @@ const pass: Demand = {
   kind: 'pass',
   accept: null,
   at: null,
+  quantity: 'T',
   id: 'p',
   weight: 2,
   pointsEv: evenly(0.06, 0.08, 16),
   above: 0.7,
 }
 const band: Demand = {
-  ...{ kind: 'band', accept: null, at: null, id: 'flat', weight: 1, energyEv: 0.08, withinEv: 0.001 },
-  ...{ fwhmEv: [0.01, 0.02], top: 0.95, ripple: 0.05 },
+  ...{
+    kind: 'band',
+    accept: null,
+    at: null,
+    quantity: 'T',
+    id: 'flat',
+    weight: 1,
+    axis: 'eV',
+    centre: 0.08,
+    within: 0.001,
+  },
+  ...{ fwhm: [0.01, 0.02], top: 0.95, ripple: 0.05 },
 }
 const rows = evenly(0.01, 0.19, 12).map((energyEv, i) => ({
   energyEv,
@@ -29,6 +40,7 @@ const curve: CurveDemand = {
   kind: 'curve',
   accept: null,
   at: null,
+  quantity: 'T',
   mostRms: null,
   id: 'c',
   weight: 0.3,

@@ -50,6 +50,7 @@ describe('the gradients of limits', () => {
     kind: 'pass',
     accept: null,
     at: null,
+    quantity: 'T',
     id: 'p',
     weight: 1,
     pointsEv: evenly(0.06, 0.12, 64),
@@ -57,17 +58,27 @@ describe('the gradients of limits', () => {
   }
 
   test('are those of the slacks of peaks, passes and blocks', () => {
-    const demands = [d1, { ...d1, id: 'wide', fwhmEv: null }, pass, d2, d3]
+    const demands = [d1, { ...d1, id: 'wide', fwhm: null }, pass, d2, d3]
     expect(limitsOf(demands, asymmetric)).toHaveLength(5 + 3 + 1 + 1 + 1)
     expect(worst(demands, asymmetric, 1e-5)).toBeLessThan(1e-6)
   })
 
   test('hold for a band whose top has its greatest T inside and its least at an end, and for a peak that must stand alone', () => {
     const band: Demand = {
-      ...{ kind: 'band', id: 'band', weight: 1, accept: null, at: null, energyEv: 0.09, withinEv: 0.03 },
-      ...{ fwhmEv: [0.001, 0.02], top: 0.5, ripple: 0.3 },
+      ...{
+        kind: 'band',
+        id: 'band',
+        weight: 1,
+        accept: null,
+        at: null,
+        quantity: 'T',
+        axis: 'eV',
+        centre: 0.09,
+        within: 0.03,
+      },
+      ...{ fwhm: [0.001, 0.02], top: 0.5, ripple: 0.3 },
     }
-    const alone: Demand = { ...d1, fwhmEv: null, height: null, energyEv: 0.09, withinEv: 0.08, alone: 0.1 }
+    const alone: Demand = { ...d1, fwhm: null, height: null, axis: 'eV', centre: 0.09, within: 0.08, alone: 0.1 }
     const twoWells = [
       ...asymmetric,
       ...asymmetric.slice(4, 8).map((value, k) => (k === 0 ? 0.8 * value : value)),
@@ -93,7 +104,7 @@ describe('the gradients of limits', () => {
   })
 
   test('hold for the position of peaks too narrow for their half points', () => {
-    const position = { ...d1, fwhmEv: null, height: null, energyEv: 0.09, withinEv: 0.08 }
+    const position = { ...d1, fwhm: null, height: null, axis: 'eV', centre: 0.09, within: 0.08 }
     for (const times of [2, 4, 8]) {
       const thick = asymmetric.map((value, k) => (k % 8 === 0 ? times * value : value))
       expect(worst([position], thick, 1e-5), `${times} times as thick`).toBeLessThan(1e-6)

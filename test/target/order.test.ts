@@ -7,6 +7,7 @@ const curve: Demand = {
   kind: 'curve',
   accept: null,
   at: null,
+  quantity: 'T',
   mostRms: null,
   id: 'c',
   weight: 1,

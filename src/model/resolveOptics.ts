@@ -1,0 +1,60 @@
+import { type OpticalConstants, opticalConstants, opticalMaterial, tableConstants } from '../media/index.js'
+import { StackError } from './StackError.js'
+import type { LightSituation, MediumChoice, OfWavelength, ResolvedOptics } from './types.js'
+
+/**
+ * n + i kappa of a medium. Beyond the wavelengths that it is listed for the last value stays: a job's scan lies inside, but a pole is
+ * looked for a little outside. Throws MaterialError for a medium that does not exist.
+ */
+export function resolveOptics(choice: MediumChoice, { referenceNm }: LightSituation): ResolvedOptics {
+  const { index, extinction } = constantsOf(choice)
+  const n = valueAt(index, referenceNm)
+  return {
+    kind: 'light',
+    medium: { index, extinction },
+    index: n,
+    extinction: valueAt(extinction, referenceNm),
+    quarterNm: referenceNm / (4 * n),
+    monolayerNm: null,
+    strain: null,
+  }
+}
+
+/** Built-in media by name, tables by themselves: equal media are the same functions, and cost their set-up once. */
+const named = new Map<string, OpticalConstants>()
+const tables = new WeakMap<object, OpticalConstants>()
+
+function constantsOf(choice: MediumChoice): OpticalConstants {
+  switch (choice.kind) {
+    case 'index':
+      return choice
+    case 'material': {
+      const known = named.get(choice.material)
+      if (known) return known
+      const material = opticalMaterial(choice.material)
+      const constants = held(opticalConstants(material), material.rangeNm)
+      named.set(choice.material, constants)
+      return constants
+    }
+    case 'table': {
+      const known = tables.get(choice.rows)
+      if (known) return known
+      const { name, rows } = choice
+      const constants = held(tableConstants(name, rows), [rows[0][0], rows[rows.length - 1][0]])
+      tables.set(rows, constants)
+      return constants
+    }
+    case 'numbers':
+      throw new StackError('A medium of electrons has no refractive index.')
+  }
+}
+
+function held({ index, extinction }: OpticalConstants, [from, to]: readonly [number, number]): OpticalConstants {
+  const inside = (of: OfWavelength): OfWavelength =>
+    typeof of === 'number' ? of : (nm) => of(nm < from ? from : nm > to ? to : nm)
+  return { index: inside(index), extinction: inside(extinction) }
+}
+
+function valueAt(of: OfWavelength, nm: number): number {
+  return typeof of === 'number' ? of : of(nm)
+}

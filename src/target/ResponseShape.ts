@@ -1,0 +1,181 @@
+import type { Quantity } from '../job/index.js'
+import { Response } from '../model/index.js'
+import { type Extremum, mediaTable, type Pole, resonances, type WaveSystem } from '../wave/index.js'
+import type { Shape } from './Landscape.js'
+
+/** Energies around a pole, in its widths: T, R and A bend there and nowhere faster. */
+const bends = [0, 0.1, 0.25, 0.5, 0.75, 1, 1.5, 2, 3, 5, 8, 16]
+
+/** Even energies a half turn of the phase through the stack, and at least. */
+const perTurn = 12
+const fewest = 64
+const most = 4000
+
+/** Each round leaves a fifth of a bracket. */
+const zoom = 9
+const rounds = 12
+
+/** What differs by less is rounding. */
+const flat = 1e-13
+
+/** Closer poles (eV) than this give no new energies. */
+const leastEv = 1e-12
+
+/**
+ * Extremes and widths of any share, of waves that add up: values at energies that are dense around every pole, then brackets that shrink.
+ * A turn between two neighbouring energies is not seen; there is none where phases and poles alone bend the share.
+ */
+export class ResponseShape implements Shape {
+  private readonly known: readonly Extremum[]
+
+  constructor(
+    private readonly system: WaveSystem,
+    private readonly quantity: Quantity,
+    private readonly windowEv: readonly [number, number],
+  ) {
+    this.known = this.find()
+  }
+
+  extrema(): readonly Extremum[] {
+    return this.known
+  }
+
+  extremeOver(
+    [low, high]: readonly [number, number],
+    which: 'greatest' | 'least',
+    found: readonly Extremum[],
+  ): { readonly energyEv: number; readonly T: number } {
+    const [atLow, atHigh] = this.values([low, high])
+    const inside = found.filter(({ energyEv }) => energyEv > low && energyEv < high)
+    const all = [{ energyEv: low, T: atLow }, ...inside, { energyEv: high, T: atHigh }]
+    return all.reduce((best, next) => ((which === 'greatest' ? next.T > best.T : next.T < best.T) ? next : best))
+  }
+
+  halfWidth({ energyEv, T }: Extremum): { readonly lowEv: number; readonly highEv: number; readonly fwhmEv: number } {
+    const below = this.known.filter((one) => one.energyEv < energyEv).reverse()
+    const above = this.known.filter((one) => one.energyEv > energyEv)
+    const lowEv = this.crossing(energyEv, below, this.windowEv[0], 0.5 * T)
+    const highEv = this.crossing(energyEv, above, this.windowEv[1], 0.5 * T)
+    return { lowEv, highEv, fwhmEv: highEv - lowEv }
+  }
+
+  /** Walking outwards from extreme to extreme, between which the share is monotone, to the first fall to half; else the end. */
+  private crossing(from: number, outwards: readonly Extremum[], end: number, half: number): number {
+    let inner = from
+    let outer: number | null = null
+    for (const { energyEv, T } of outwards) {
+      if (T <= half) {
+        outer = energyEv
+        break
+      }
+      inner = energyEv
+    }
+    if (outer === null) {
+      if (this.values([end])[0] > half) return end
+      outer = end
+    }
+    for (let round = 0; round < 2 * rounds && inner !== outer; round++) {
+      const at = Array.from({ length: zoom + 2 }, (_, i) => inner + ((outer! - inner) * i) / (zoom + 1))
+      const value = this.values(at)
+      const first = at.findIndex((_, i) => i > 0 && value[i] <= half)
+      const i = first < 0 ? at.length - 1 : first
+      if (at[i] === outer && at[i - 1] === inner) break
+      inner = at[i - 1]
+      outer = at[i]
+    }
+    return 0.5 * (inner + outer)
+  }
+
+  private find(): Extremum[] {
+    const poles = this.poles()
+    const at = this.nodes(poles)
+    const value = this.values(at)
+    const brackets: Bracket[] = []
+    for (let i = 1; i + 1 < at.length; i++) {
+      const [before, here, after] = [value[i - 1], value[i], value[i + 1]]
+      if (here > before && here >= after) brackets.push({ low: at[i - 1], high: at[i + 1], sign: 1 })
+      else if (here < before && here <= after) brackets.push({ low: at[i - 1], high: at[i + 1], sign: -1 })
+    }
+    const found = this.refined(brackets).map(({ energyEv, T, sign }): Extremum => {
+      const kind = sign > 0 ? 'maximum' : 'minimum'
+      return { energyEv, T, kind, poleWidthEv: kind === 'maximum' ? poleWidthAt(poles, energyEv) : null }
+    })
+    return withoutFlat(found, value[0], value[value.length - 1])
+  }
+
+  private poles(): Pole[] {
+    const { system, windowEv } = this
+    const waves = system.beside ? [system, system.beside] : [system]
+    return waves.flatMap((wave) => [...resonances(wave, windowEv).poles])
+  }
+
+  private nodes(poles: readonly Pole[]): number[] {
+    const [low, high] = this.windowEv
+    const turns = this.phase(high) - this.phase(low)
+    const even = Math.min(most, Math.ceil(fewest + (perTurn * Math.max(0, turns)) / Math.PI))
+    const all = Array.from({ length: even + 1 }, (_, i) => (i === even ? high : low + ((high - low) * i) / even))
+    for (const { energyEv, widthEv } of poles) {
+      for (const bend of bends) all.push(energyEv - bend * widthEv, energyEv + bend * widthEv)
+    }
+    const sorted = [...new Set(all.filter((energy) => energy >= low && energy <= high))].sort((a, b) => a - b)
+    return sorted.filter((energy, i) => i === 0 || energy - sorted[i - 1] > leastEv)
+  }
+
+  /** Of the wave through all layers, once. */
+  private phase(energy: number): number {
+    const { media, stack } = this.system
+    const table = mediaTable(media, 1)
+    media.fill(Float64Array.of(energy), table)
+    return stack.medium.reduce((sum, m, j) => sum + Math.sqrt(Math.max(0, table.q[m])) * stack.width[j], 0)
+  }
+
+  private refined(brackets: readonly Bracket[]): { energyEv: number; T: number; sign: number }[] {
+    if (brackets.length === 0) return []
+    let now = brackets.map((one) => ({ ...one, best: 0.5 * (one.low + one.high), T: 0 }))
+    for (let round = 0; round < rounds; round++) {
+      const at = now.flatMap(({ low, high }) =>
+        Array.from({ length: zoom }, (_, i) => low + ((high - low) * (i + 1)) / (zoom + 1)),
+      )
+      const value = this.values(at)
+      now = now.map((one, b) => {
+        let best = b * zoom
+        for (let i = best + 1; i < (b + 1) * zoom; i++) if (one.sign * (value[i] - value[best]) > 0) best = i
+        const step = (one.high - one.low) / (zoom + 1)
+        return { ...one, low: at[best] - step, high: at[best] + step, best: at[best], T: value[best] }
+      })
+    }
+    return now.map(({ best, T, sign }) => ({ energyEv: best, T, sign }))
+  }
+
+  private values(energies: readonly number[]): Float64Array {
+    return new Response(Float64Array.from(energies)).at(this.system)[this.quantity]
+  }
+}
+
+interface Bracket {
+  readonly low: number
+  readonly high: number
+  /** 1 around a maximum, -1 around a minimum. */
+  readonly sign: 1 | -1
+}
+
+function poleWidthAt(poles: readonly Pole[], energy: number): number | null {
+  let nearest: Pole | null = null
+  for (const pole of poles) {
+    if (Math.abs(pole.energyEv - energy) > pole.widthEv) continue
+    if (nearest === null || Math.abs(pole.energyEv - energy) < Math.abs(nearest.energyEv - energy)) nearest = pole
+  }
+  return nearest?.widthEv ?? null
+}
+
+/** Takes out pairs of turns, and turns beside an end, between which the share does not change: the rounding of a flat one. */
+function withoutFlat(found: readonly Extremum[], first: number, last: number): Extremum[] {
+  const kept: Extremum[] = []
+  for (const one of found) {
+    const before = kept.length > 0 ? kept[kept.length - 1].T : first
+    if (Math.abs(one.T - before) > flat) kept.push(one)
+    else if (kept.length > 0) kept.pop()
+  }
+  while (kept.length > 0 && Math.abs(kept[kept.length - 1].T - last) <= flat) kept.pop()
+  return kept
+}
