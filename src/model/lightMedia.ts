@@ -17,7 +17,7 @@ export interface Incidence {
  *
  * A function of the wavelength is called with hc/E, which may differ from the nm that the user wrote by one last place. Off the
  * real axis it is continued as N(Re E) + i Im E dN/dE, with dN/dE by a central difference of 1e-5 relative. One parameter, the
- * index n, while every medium is lossless, none else: with absorption q and mu have no real derivative.
+ * index n, kappa held.
  */
 export function lightMedia(media: readonly Medium[], incidence: Incidence): WaveMedia {
   return new LightMedia(media, incidence)
@@ -41,7 +41,7 @@ class LightMedia implements WaveMedia {
   ) {
     this.count = media.length
     this.lossless = media.every(({ extinction = 0 }) => extinction === 0)
-    this.parameters = this.lossless ? 1 : 0
+    this.parameters = 1
     this.isP = incidence.polarisation === 'p'
     const [sin, cos] = sinCosOfDegrees(incidence.angleDeg)
     this.sin2 = sin * sin
@@ -108,8 +108,12 @@ class LightMedia implements WaveMedia {
     this.index(m, energy, indexAt)
     const k0 = energy * k0PerEv
     const n = this.scratch[indexAt]
+    const kappa = this.scratch[indexAt + 1]
     out[0] = 2 * n * k0 * k0
     out[1] = this.isP ? 2 * n : 0
+    if (this.lossless) return
+    out[2] = 2 * kappa * k0 * k0
+    out[3] = this.isP ? 2 * kappa : 0
   }
 
   /** N, N_from, D and their slopes at the complex energy re + i im. */

@@ -1,13 +1,6 @@
 import type { Quantity } from '../job/index.js'
 import { Response } from '../model/index.js'
-import {
-  type MediaTable,
-  mediaTable,
-  parameterGradient,
-  slopeInto,
-  type WaveMedia,
-  type WaveSystem,
-} from '../wave/index.js'
+import { mediaTable, parameterGradient, type Share, slopeInto, type WaveSystem } from '../wave/index.js'
 
 /** A share of the flux of one system, with its slopes in energy and in the layer parameters. */
 export class ShareGradient {
@@ -29,22 +22,12 @@ export class ShareGradient {
   /** The share and its slopes by width (1/nm) and by what describes the medium, at each energy: entry e * layerParameters + k. */
   gradient(energies: Float64Array): { readonly T: Float64Array; readonly gradient: Float64Array } {
     const { system, quantity } = this
-    const waves = system.beside ? [system, system.beside] : [system]
-    if (quantity !== 'A' && system.behind === undefined && (quantity === 'T' || system.media.lossless)) {
-      // R = 1 - T where nothing absorbs.
-      const sign = quantity === 'T' ? 1 : -1
-      const size = energies.length * this.layerParameters
-      const parts = waves.map((wave) => {
-        const out = { T: new Float64Array(energies.length), gradient: new Float64Array(size) }
-        parameterGradient(wave, energies, out)
-        return out
-      })
-      if (sign === 1 && parts.length === 1) return parts[0]
-      const mean = (of: (part: (typeof parts)[number]) => Float64Array) =>
-        of(parts[0]).map((value, i) => (sign * (value + of(parts[parts.length - 1])[i])) / 2)
-      return { T: this.values(energies), gradient: mean((part) => part.gradient) }
-    }
-    return this.byDifferences(energies)
+    const { beside, behind } = system
+    if (quantity === 'T' && beside === undefined && behind === undefined) return this.of(system, energies, 'T')
+    const waves = beside ? [system, beside] : [system]
+    const parts = waves.map((wave) => this.shareOf(wave, energies))
+    const gradient = parts[0].map((slope, i) => (slope + parts[parts.length - 1][i]) / 2)
+    return { T: this.values(energies), gradient }
   }
 
   /** d(share)/dE (1/eV). */
@@ -54,7 +37,7 @@ export class ShareGradient {
       return transmissionSlope(system, energies)
     }
     const points = energies.length
-    const shifted = (sign: number) => energies.map((energy) => energy * (1 + sign * energyStep))
+    const shifted = (steps: number) => energies.map((energy) => energy * (1 + steps * energyStep))
     const both = new Response(Float64Array.from([...shifted(-2), ...shifted(-1), ...shifted(1), ...shifted(2)]))
     const value = both.at(system)[quantity]
     return energies.map((energy, e) => {
@@ -64,56 +47,55 @@ export class ShareGradient {
     })
   }
 
+  /** The slopes of the share of one wave; A = 1 - T - R. */
+  private shareOf(wave: WaveSystem, energies: Float64Array): Float64Array {
+    const { quantity } = this
+    if (quantity !== 'A') return this.oneOf(wave, energies, quantity)
+    const [T, R] = [this.oneOf(wave, energies, 'T'), this.oneOf(wave, energies, 'R')]
+    return T.map((slope, i) => -slope - R[i])
+  }
+
   /**
-   * Differences of fourth order, for what no adjoint knows: what absorbs or is reflected, and stacks before a plate. The index of
-   * one layer is moved in a medium of its own.
+   * With a plate behind (`incoherentBack`), D = 1 - R1' R2:
+   *
+   *     dT = T2/D dT1 + T1 T2 R2/D² dR1'     dR = dR1 + 2 T1 R2/D dT1 + (T1 R2/D)² dR1'
    */
-  private byDifferences(energies: Float64Array): { readonly T: Float64Array; readonly gradient: Float64Array } {
-    const { system, quantity, layerParameters } = this
-    const { stack } = system
-    const points = energies.length
-    const stride = layerParameters / stack.medium.length
-    const response = new Response(energies)
-    const gradient = new Float64Array(points * layerParameters)
-    const add = (
-      k: number,
-      step: number,
-      weights: readonly (readonly [number, number])[],
-      moved: (by: number) => WaveSystem,
-    ) => {
-      for (const [times, weight] of weights) {
-        const value = response.at(moved(times * step))[quantity]
-        for (let e = 0; e < points; e++) gradient[e * layerParameters + k] += (weight * value[e]) / (12 * step)
+  private oneOf(wave: WaveSystem, energies: Float64Array, share: Share): Float64Array {
+    if (wave.behind === undefined) return this.of(wave, energies, share).gradient
+    const { media, stack, behind } = wave
+    const front: WaveSystem = { media, stack }
+    const none = { medium: new Int32Array(0), width: new Float64Array(0) }
+    const rear = new Response(energies).at({ media, stack: { entry: stack.exit, exit: behind, ...none } })
+    const T1 = this.of(front, energies, 'T')
+    const inside = this.of(front, energies, 'R', 'exit')
+    const R1 = share === 'R' ? this.of(front, energies, 'R') : null
+    const out = new Float64Array(T1.gradient.length)
+    const size = out.length / energies.length
+    for (let e = 0; e < energies.length; e++) {
+      const [T2, R2] = [rear.T[e], rear.R[e]]
+      const D = 1 - inside.T[e] * R2
+      const often = (T1.T[e] * R2) / D
+      const byT1 = share === 'T' ? T2 / D : 2 * often
+      const byInside = share === 'T' ? (often * T2) / D : often * often
+      for (let k = e * size; k < (e + 1) * size; k++) {
+        out[k] = byT1 * T1.gradient[k] + byInside * inside.gradient[k] + (R1 ? R1.gradient[k] : 0)
       }
     }
-    for (let j = 0; j < stack.medium.length; j++) {
-      const weights = stack.width[j] < 2 * widthStepNm ? forward : central
-      add(stride * j, widthStepNm, weights, (by) => withWidth(system, j, by))
-      if (stride > 1) add(stride * j + 1, indexStep, central, (by) => withIndex(system, j, by))
+    return out
+  }
+
+  private of(system: WaveSystem, energies: Float64Array, share: Share, from: 'entry' | 'exit' = 'entry') {
+    const out = {
+      T: new Float64Array(energies.length),
+      gradient: new Float64Array(energies.length * this.layerParameters),
     }
-    return { T: response.at(system)[quantity].slice(), gradient }
+    parameterGradient(system, energies, out, share, from)
+    return out
   }
 }
 
-/** Steps and weights over 12 steps of a first derivative of fourth order; the second where there is nothing below. */
-const central = [
-  [-2, 1],
-  [-1, -8],
-  [1, 8],
-  [2, -1],
-] as const
-const forward = [
-  [0, -25],
-  [1, 48],
-  [2, -36],
-  [3, 16],
-  [4, -3],
-] as const
-
-/** Relative; and in nm, and of an index. Rounding over the step stays below 1e-10 of what changes T by its own size. */
+/** Relative. */
 const energyStep = 1e-7
-const widthStepNm = 1e-3
-const indexStep = 1e-5
 
 function transmissionSlope({ media, stack }: WaveSystem, energies: Float64Array): Float64Array {
   const table = mediaTable(media, energies.length)
@@ -123,67 +105,4 @@ function transmissionSlope({ media, stack }: WaveSystem, energies: Float64Array)
   const dTdE = new Float64Array(energies.length)
   slopeInto(table, slope, stack, { T: new Float64Array(energies.length), dTdE })
   return dTdE
-}
-
-function withWidth(system: WaveSystem, j: number, by: number): WaveSystem {
-  const width = Float64Array.from(system.stack.width)
-  width[j] += by
-  const beside = system.beside && withWidth(system.beside, j, by)
-  return { ...system, stack: { ...system.stack, width }, ...(beside ? { beside } : {}) }
-}
-
-function withIndex(system: WaveSystem, j: number, by: number): WaveSystem {
-  const { media, stack } = system
-  const medium = Int32Array.from(stack.medium)
-  medium[j] = media.count
-  const beside = system.beside && withIndex(system.beside, j, by)
-  return {
-    ...system,
-    media: new OneMore(media, stack.medium[j], by),
-    stack: { ...stack, medium },
-    ...(beside ? { beside } : {}),
-  }
-}
-
-/** Media and one more, that differs from one of them by a change of its first parameter (first order in q and mu). */
-class OneMore implements WaveMedia {
-  readonly count: number
-  readonly lossless: boolean
-  readonly parameters: number
-
-  constructor(
-    private readonly media: WaveMedia,
-    private readonly of: number,
-    private readonly by: number,
-  ) {
-    this.count = media.count + 1
-    this.lossless = media.lossless
-    this.parameters = media.parameters
-  }
-
-  fill(energies: Float64Array, table: MediaTable): void {
-    const { points, q, mu, qIm, muIm } = table
-    this.media.fill(energies, table)
-    const partials = new Float64Array(4 * this.parameters)
-    const [from, to] = [this.of * points, (this.count - 1) * points]
-    for (let e = 0; e < points; e++) {
-      this.media.partials(energies[e], this.of, partials)
-      q[to + e] = q[from + e] + this.by * partials[0]
-      mu[to + e] = mu[from + e] + this.by * partials[1]
-      if (qIm) qIm[to + e] = qIm[from + e]
-      if (muIm) muIm[to + e] = muIm[from + e]
-    }
-  }
-
-  fillSlope(): void {
-    throw new Error('not needed for differences')
-  }
-
-  at(): void {
-    throw new Error('not needed for differences')
-  }
-
-  partials(energy: number, m: number, out: Float64Array): void {
-    this.media.partials(energy, m, out)
-  }
 }

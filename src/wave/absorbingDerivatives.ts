@@ -1,13 +1,13 @@
 import { powerOfTwo, scaleByPowerOfTwo } from './bits.js'
 import { complexLayer, complexSlopeOfSine, layer, slopeOfA } from './complexLayer.js'
-import type { GradientOut } from './gradient.js'
+import type { GradientOut, Share } from './gradient.js'
 import { admittance, Faces, lead, sweepPoint, wave } from './pointSweep.js'
 import type { SlopeOut } from './slope.js'
 import { refuseClosed, refuseResult } from './stackChecks.js'
 import type { MediaTable, WaveStack } from './types.js'
 
-// 2YA at the near face, and T: overwritten by `transmission`.
-const amplitude = { re: 0, im: 0, T: 0, Y: 0, farY: 0 }
+// 2YA and 2YB (what comes back) at the near face, and T: overwritten by `transmission`.
+const amplitude = { re: 0, im: 0, T: 0, Y: 0, farY: 0, backRe: 0, backIm: 0 }
 const faces = new Faces()
 
 /**
@@ -33,24 +33,34 @@ export function absorbingSlope(table: MediaTable, slope: MediaTable, stack: Wave
 }
 
 /**
- * The branch of `gradientInto` for media that absorb, by the real widths and the real parts of q and mu: one sweep that
- * keeps the vectors, one adjoint sweep of the row d ln(2YA), d ln T = -2 Re of what it finds.
+ * The branch of `gradientInto` for media that absorb, by the widths and both parts of q and mu: one sweep that keeps the vectors, one
+ * adjoint sweep of a row s, the slope being -2 Re of what it finds:
+ *
+ *     T: s = T (Y, -i)/(2YA)     R: s = R (Y, -i)/(2YA) - conj(2YB)(Y, i)/|2YA|²
+ *
+ * Of R, `out.T` is R.
  */
-export function absorbingGradient(table: MediaTable, stack: WaveStack, out: GradientOut): void {
+export function absorbingGradient(table: MediaTable, stack: WaveStack, out: GradientOut, share: Share = 'T'): void {
   const { medium, width } = stack
   const layers = medium.length
   faces.grow(layers)
   const { vectors, exponents } = faces
   for (let e = 0; e < table.points; e++) {
     transmission(table, null, stack, e, faces)
-    const { re, im, T, Y } = amplitude
-    out.T[e] = T
-    // (Y, -i)/(2YA)
+    const { re, im, T, Y, backRe, backIm } = amplitude
     const size = re * re + im * im
-    let gRe = (Y * re) / size
-    let gIm = (-Y * im) / size
-    let hRe = -im / size
-    let hIm = -re / size
+    const value = share === 'T' ? T : (backRe * backRe + backIm * backIm) / size
+    out.T[e] = value
+    let gRe = (value * (Y * re)) / size
+    let gIm = (value * (-Y * im)) / size
+    let hRe = (value * -im) / size
+    let hIm = (value * -re) / size
+    if (share === 'R') {
+      gRe -= (Y * backRe) / size
+      gIm += (Y * backIm) / size
+      hRe -= backIm / size
+      hIm -= backRe / size
+    }
     for (let j = 0; j < layers; j++) {
       const t = medium[j] * table.points + e
       const w = width[j]
@@ -90,10 +100,15 @@ export function absorbingGradient(table: MediaTable, stack: WaveStack, out: Grad
       const downRe = muRe * aRe - muIm * aIm
       const downIm = muRe * aIm + muIm * aRe
       const to = e * layers + j
-      out.dTdWidth[to] = -2 * T * (qRe * deltaRe - qIm * deltaIm - (cRe * betaRe - cIm * betaIm))
+      out.dTdWidth[to] = -2 * (qRe * deltaRe - qIm * deltaIm - (cRe * betaRe - cIm * betaIm))
       out.dTdQ[to] =
-        -2 * T * (0.5 * (aRe * alphaRe - aIm * alphaIm + w * deltaRe) - (slopeOfA.re * betaRe - slopeOfA.im * betaIm))
-      out.dTdMu[to] = 2 * T * (aRe * byDownRe - aIm * byDownIm + (upRe * alphaRe - upIm * alphaIm))
+        -2 * (0.5 * (aRe * alphaRe - aIm * alphaIm + w * deltaRe) - (slopeOfA.re * betaRe - slopeOfA.im * betaIm))
+      out.dTdMu[to] = 2 * (aRe * byDownRe - aIm * byDownIm + (upRe * alphaRe - upIm * alphaIm))
+      if (out.dTdQIm) {
+        out.dTdQIm[to] =
+          2 * (0.5 * (aRe * alphaIm + aIm * alphaRe + w * deltaIm) - (slopeOfA.re * betaIm + slopeOfA.im * betaRe))
+      }
+      if (out.dTdMuIm) out.dTdMuIm[to] = -2 * (aRe * byDownIm + aIm * byDownRe + (upRe * alphaIm + upIm * alphaRe))
       const nextRe = (gRe * cRe - gIm * cIm + hRe * upRe - hIm * upIm) * scale
       const nextIm = (gRe * cIm + gIm * cRe + hRe * upIm + hIm * upRe) * scale
       const otherRe = (hRe * cRe - hIm * cIm - (gRe * downRe - gIm * downIm)) * scale
@@ -129,6 +144,8 @@ function transmission(
   if (!(T < Infinity)) refuseResult(table, e)
   amplitude.re = re
   amplitude.im = im
+  amplitude.backRe = Y * wave.uRe - wave.vIm
+  amplitude.backIm = Y * wave.uIm + wave.vRe
   amplitude.Y = Y
   amplitude.T = T
 }

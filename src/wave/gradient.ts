@@ -14,7 +14,13 @@ export interface GradientOut {
   readonly dTdQ: Float64Array
   /** dT/d(mu of layer j). */
   readonly dTdMu: Float64Array
+  /** The same by the imaginary parts, of media that absorb. */
+  readonly dTdQIm?: Float64Array
+  readonly dTdMuIm?: Float64Array
 }
+
+/** The share of the incoming flux whose derivatives are asked for. */
+export type Share = 'R' | 'T'
 
 /**
  * T and its derivatives by every layer's width, q and mu, for a lossless stack and a wave from the entry: one sweep

@@ -2,7 +2,7 @@ export { type AmplitudesOptions, type AmplitudesOut, amplitudesInto } from './am
 export { atan2, cos, exp, log, log1p, log10, sin, sinCos } from './elementary.js'
 export { extrema } from './extrema.js'
 export { extremeOver } from './extremeOver.js'
-export { type GradientOut, gradientInto } from './gradient.js'
+export { type GradientOut, gradientInto, type Share } from './gradient.js'
 export { type GradientDigits, gradientDigits } from './gradientDigits.js'
 export { type HalfWidth, halfWidth } from './halfWidth.js'
 export { kernelChecksum, kernelName } from './kernelIdentity.js'

@@ -38,7 +38,10 @@ export interface WaveMedia {
   at(re: number, im: number, out: MediaAtEnergy): void
   /** How many numbers describe a medium to whoever designs it (electrons: potential, mass, alpha). */
   readonly parameters: number
-  /** dq/dp and dmu/dp of medium `m` at a real energy: out[2 p], out[2 p + 1] for each parameter p. */
+  /**
+   * dq/dp and dmu/dp of medium `m` at a real energy: out[2 p], out[2 p + 1] for each parameter p; where media absorb their imaginary
+   * parts behind those, out[2 P + 2 p], out[2 P + 2 p + 1].
+   */
   partials(energy: number, m: number, out: Float64Array): void
 }
 
