@@ -5,20 +5,23 @@ import { incoherentBack } from './incoherentBack.js'
 export interface Shares {
   readonly T: Float64Array
   readonly R: Float64Array
-  /** 0 in lossless stacks. */
+  /** 0 in lossless stacks, and where it was not asked for. */
   readonly A: Float64Array
 }
 
 /**
  * What a job asks of systems at a fixed list of energies (eV): T, R and A of the wave, or the mean of it and the one beside it, with what
- * a thick plate behind the stack sends back. Media that come again are not asked again.
+ * a thick plate behind the stack sends back. Media that come again are not asked again. A costs three times T and R.
  */
 export class Response {
   private readonly shares: Shares
   private readonly other: Shares
   private readonly tables = new Map<WaveMedia, MediaTable>()
 
-  constructor(private readonly energies: Float64Array) {
+  constructor(
+    private readonly energies: Float64Array,
+    private readonly absorbed = true,
+  ) {
     const row = () => new Float64Array(energies.length)
     this.shares = { T: row(), R: row(), A: row() }
     this.other = { T: row(), R: row(), A: row() }
@@ -41,13 +44,13 @@ export class Response {
   private one({ media, stack, behind }: WaveSystem, out: Shares): void {
     const table = this.tableOf(media)
     if (behind !== undefined) {
-      const { T, R, A } = incoherentBack(table, stack, behind, 'entry')
+      const { T, R, A } = incoherentBack(table, stack, behind, 'entry', this.absorbed)
       out.T.set(T)
       out.R.set(R)
       out.A.set(A)
       return
     }
-    if (media.lossless) spectrumInto(table, stack, { T: out.T, R: out.R })
+    if (media.lossless || !this.absorbed) spectrumInto(table, stack, { T: out.T, R: out.R })
     else spectrumInto(table, stack, out)
   }
 

@@ -18,9 +18,15 @@ interface Face {
  *     T = T1 T2/(1 - R1' R2)     R = R1 + T1² R2/(1 - R1' R2)     A = A1 + T1 R2 A1'/(1 - R1' R2)
  *
  * with the dashed ones for a wave from inside the plate. Where the plate carries no wave, T = 0 and the front stands alone. `from`
- * 'exit': the wave comes through the back face. `back`: number of the medium behind it.
+ * 'exit': the wave comes through the back face. `back`: number of the medium behind it. Without `absorbed` A stays 0, and the error is not told.
  */
-export function incoherentBack(table: MediaTable, stack: WaveStack, back: number, from: 'entry' | 'exit'): Spectrum {
+export function incoherentBack(
+  table: MediaTable,
+  stack: WaveStack,
+  back: number,
+  from: 'entry' | 'exit',
+  absorbed = true,
+): Spectrum {
   const { points } = table
   const rear: WaveStack = { entry: stack.exit, exit: back, medium: new Int32Array(0), width: new Float64Array(0) }
   const [T, R, A, log10T] = [0, 1, 2, 3].map(() => new Float64Array(points).fill(Number.NaN))
@@ -32,9 +38,9 @@ export function incoherentBack(table: MediaTable, stack: WaveStack, back: number
   const outside = all.filter((e) => !(table.q[stack.exit * points + e] > 0))
   if (inside.length > 0) {
     const part = inside.length === points ? table : columns(table, inside)
-    combine(inside, faceOf(part, firstFace, from), faceOf(part, secondFace, from))
+    combine(inside, faceOf(part, firstFace, from, absorbed), faceOf(part, secondFace, from, absorbed))
   }
-  if (outside.length > 0) combine(outside, nearFace(columns(table, outside), firstFace, from), null)
+  if (outside.length > 0) combine(outside, nearFace(columns(table, outside), firstFace, from, absorbed), null)
   return { T, R, A, log10T, fluxError }
 
   /** `first` as the wave meets it. */
@@ -47,21 +53,26 @@ export function incoherentBack(table: MediaTable, stack: WaveStack, back: number
       R[e] = first.R[i] + passed * r * first.T[i]
       A[e] = first.A[i] + passed * r * first.farA[i] + (second === null ? 0 : passed * second.A[i])
       log10T[e] = T[e] > 0 ? log10(T[e]) : Number.NEGATIVE_INFINITY
-      fluxError = Math.max(fluxError, Math.abs(T[e] + R[e] + A[e] - 1))
+      if (absorbed) fluxError = Math.max(fluxError, Math.abs(T[e] + R[e] + A[e] - 1))
     })
   }
 }
 
 /** A face from the side `from`, and, where its other side carries a wave, from there. */
-function faceOf(table: MediaTable, stack: WaveStack, from: 'entry' | 'exit'): Face {
-  const near = nearFace(table, stack, from)
+function faceOf(table: MediaTable, stack: WaveStack, from: 'entry' | 'exit', absorbed: boolean): Face {
+  const near = nearFace(table, stack, from, absorbed)
   const { points } = table
   const other = from === 'entry' ? 'exit' : 'entry'
   const open = Array.from({ length: points }, (_, e) => e).filter((e) => isOpen(table, stack[other], e))
   if (open.length === 0) return near
   const row = () => new Float64Array(open.length)
   const far = { T: row(), R: row(), A: row() }
-  spectrumInto(open.length === points ? table : columns(table, open), stack, far, other)
+  spectrumInto(
+    open.length === points ? table : columns(table, open),
+    stack,
+    absorbed ? far : { T: far.T, R: far.R },
+    other,
+  )
   open.forEach((e, i) => {
     near.farR[e] = far.R[i]
     near.farA[e] = far.A[i]
@@ -69,10 +80,10 @@ function faceOf(table: MediaTable, stack: WaveStack, from: 'entry' | 'exit'): Fa
   return near
 }
 
-function nearFace(table: MediaTable, stack: WaveStack, from: 'entry' | 'exit'): Face {
+function nearFace(table: MediaTable, stack: WaveStack, from: 'entry' | 'exit', absorbed: boolean): Face {
   const row = () => new Float64Array(table.points)
   const near = { T: row(), R: row(), A: row() }
-  spectrumInto(table, stack, near, from)
+  spectrumInto(table, stack, absorbed ? near : { T: near.T, R: near.R }, from)
   return { ...near, farR: row(), farA: row() }
 }
 

@@ -13,7 +13,7 @@ export class PointSpectrum {
     /** What is asked for at each. */
     private readonly quantities: readonly Quantity[],
   ) {
-    this.response = new Response(Float64Array.from(energiesEv))
+    this.response = new Response(Float64Array.from(energiesEv), quantities.includes('A'))
     this.values = new Float64Array(energiesEv.length)
     this.onlyT = quantities.every((quantity) => quantity === 'T')
   }

@@ -11,9 +11,14 @@ const perTurn = 12
 const fewest = 64
 const most = 4000
 
-/** Each round leaves a fifth of a bracket. */
+const rounds = 40
+
+/** A bracket of so small a share of its energy has no more digits of the extreme value. */
+const closeEnough = 1e-9
+
+/** Of a crossing each round leaves a tenth. */
 const zoom = 9
-const rounds = 12
+const crossingRounds = 24
 
 /** What differs by less is rounding. */
 const flat = 1e-13
@@ -74,7 +79,7 @@ export class ResponseShape implements Shape {
       if (this.values([end])[0] > half) return end
       outer = end
     }
-    for (let round = 0; round < 2 * rounds && inner !== outer; round++) {
+    for (let round = 0; round < crossingRounds && inner !== outer; round++) {
       const at = Array.from({ length: zoom + 2 }, (_, i) => inner + ((outer! - inner) * i) / (zoom + 1))
       const value = this.values(at)
       const first = at.findIndex((_, i) => i > 0 && value[i] <= half)
@@ -93,8 +98,8 @@ export class ResponseShape implements Shape {
     const brackets: Bracket[] = []
     for (let i = 1; i + 1 < at.length; i++) {
       const [before, here, after] = [value[i - 1], value[i], value[i + 1]]
-      if (here > before && here >= after) brackets.push({ low: at[i - 1], high: at[i + 1], sign: 1 })
-      else if (here < before && here <= after) brackets.push({ low: at[i - 1], high: at[i + 1], sign: -1 })
+      const sign = here > before && here >= after ? 1 : here < before && here <= after ? -1 : 0
+      if (sign !== 0) brackets.push({ at: [at[i - 1], at[i], at[i + 1]], value: [before, here, after], sign })
     }
     const found = this.refined(brackets).map(({ energyEv, T, sign }): Extremum => {
       const kind = sign > 0 ? 'maximum' : 'minimum'
@@ -129,34 +134,60 @@ export class ResponseShape implements Shape {
     return stack.medium.reduce((sum, m, j) => sum + Math.sqrt(Math.max(0, table.q[m])) * stack.width[j], 0)
   }
 
+  /** By parabolas through three values, kept inside the bracket. */
   private refined(brackets: readonly Bracket[]): { energyEv: number; T: number; sign: number }[] {
-    if (brackets.length === 0) return []
-    let now = brackets.map((one) => ({ ...one, best: 0.5 * (one.low + one.high), T: 0 }))
+    const now = brackets.map((one) => ({ ...one, moving: true }))
     for (let round = 0; round < rounds; round++) {
-      const at = now.flatMap(({ low, high }) =>
-        Array.from({ length: zoom }, (_, i) => low + ((high - low) * (i + 1)) / (zoom + 1)),
-      )
-      const value = this.values(at)
-      now = now.map((one, b) => {
-        let best = b * zoom
-        for (let i = best + 1; i < (b + 1) * zoom; i++) if (one.sign * (value[i] - value[best]) > 0) best = i
-        const step = (one.high - one.low) / (zoom + 1)
-        return { ...one, low: at[best] - step, high: at[best] + step, best: at[best], T: value[best] }
+      const open = now.filter(({ moving }) => moving)
+      if (open.length === 0) break
+      const tries = open.map(({ at, value }) => nextTry(at, value))
+      const values = this.values(tries)
+      open.forEach((one, i) => {
+        const { at, value, sign } = one
+        const [x, y] = [tries[i], values[i]]
+        const side = x > at[1] ? 2 : 0
+        if (sign * (y - value[1]) > 0) {
+          at[2 - side] = at[1]
+          value[2 - side] = value[1]
+          at[1] = x
+          value[1] = y
+        } else {
+          at[side] = x
+          value[side] = y
+        }
+        const width = at[2] - at[0]
+        one.moving =
+          width > closeEnough * at[1] && Math.abs(y - value[1]) > flat * Math.abs(value[1]) * (round < 6 ? 0 : 1)
       })
     }
-    return now.map(({ best, T, sign }) => ({ energyEv: best, T, sign }))
+    return now.map(({ at, value, sign }) => ({ energyEv: at[1], T: value[1], sign }))
   }
 
   private values(energies: readonly number[]): Float64Array {
-    return new Response(Float64Array.from(energies)).at(this.system)[this.quantity]
+    return new Response(Float64Array.from(energies), this.quantity === 'A').at(this.system)[this.quantity]
   }
 }
 
+/** Three energies, the middle one the most extreme. */
 interface Bracket {
-  readonly low: number
-  readonly high: number
+  readonly at: [number, number, number]
+  readonly value: [number, number, number]
   /** 1 around a maximum, -1 around a minimum. */
   readonly sign: 1 | -1
+}
+
+/** The vertex of the parabola where it lies well inside and apart from the middle, else a step into the wider side. */
+function nextTry([a, b, c]: readonly number[], [fa, fb, fc]: readonly number[]): number {
+  const left = (b - a) * (fb - fc)
+  const right = (b - c) * (fb - fa)
+  const vertex = b - (0.5 * ((b - a) * left - (b - c) * right)) / (left - right)
+  const wider = c - b > b - a ? b + 0.38 * (c - b) : b - 0.38 * (b - a)
+  const [low, high] = [a + 0.02 * (b - a), c - 0.02 * (c - b)]
+  if (!(vertex > low && vertex < high)) return wider
+  const apart = 1e-3 * Math.min(b - a, c - b)
+  if (Math.abs(vertex - b) >= apart) return vertex
+  // As good as there: the bracket closes from the wider side.
+  return c - b > b - a ? b + Math.max(apart, 1e-3 * (c - b)) : b - Math.max(apart, 1e-3 * (b - a))
 }
 
 function poleWidthAt(poles: readonly Pole[], energy: number): number | null {

@@ -16,7 +16,7 @@ export class ShareGradient {
   }
 
   values(energies: Float64Array): Float64Array {
-    return new Response(energies).at(this.system)[this.quantity]
+    return new Response(energies, this.quantity === 'A').at(this.system)[this.quantity]
   }
 
   /** The share and its slopes by width (1/nm) and by what describes the medium, at each energy: entry e * layerParameters + k. */
@@ -38,7 +38,10 @@ export class ShareGradient {
     }
     const points = energies.length
     const shifted = (steps: number) => energies.map((energy) => energy * (1 + steps * energyStep))
-    const both = new Response(Float64Array.from([...shifted(-2), ...shifted(-1), ...shifted(1), ...shifted(2)]))
+    const both = new Response(
+      Float64Array.from([...shifted(-2), ...shifted(-1), ...shifted(1), ...shifted(2)]),
+      quantity === 'A',
+    )
     const value = both.at(system)[quantity]
     return energies.map((energy, e) => {
       const near = value[2 * points + e] - value[points + e]
@@ -65,7 +68,7 @@ export class ShareGradient {
     const { media, stack, behind } = wave
     const front: WaveSystem = { media, stack }
     const none = { medium: new Int32Array(0), width: new Float64Array(0) }
-    const rear = new Response(energies).at({ media, stack: { entry: stack.exit, exit: behind, ...none } })
+    const rear = new Response(energies, false).at({ media, stack: { entry: stack.exit, exit: behind, ...none } })
     const T1 = this.of(front, energies, 'T')
     const inside = this.of(front, energies, 'R', 'exit')
     const R1 = share === 'R' ? this.of(front, energies, 'R') : null

@@ -128,7 +128,7 @@ for (let n = 1; n < 512; n++) {
 export function layerFunctions(
   q: Float64Array,
   t: number,
-  slots: BlockMedia,
+  slots: Pick<BlockMedia, 'halfPerQ' | 'k' | 'perK'>,
   o: number,
   w: number,
   n: number,

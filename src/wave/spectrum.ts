@@ -1,4 +1,5 @@
 import { absorbingSpectrum } from './absorbing.js'
+import { absorbingBlock } from './absorbingBlock.js'
 import { wasmAvailable } from './kernel/instance.js'
 import { wasmSpectrum } from './kernel/wasmSpectrum.js'
 import { plainSpectrum } from './plainSpectrum.js'
@@ -20,7 +21,7 @@ export interface SpectrumOut {
 
 /**
  * Transmission and reflection at every point of the table; absorption too where it has imaginary parts
- * (`absorbingSpectrum`). For a lossless stack:
+ * (`absorbingSpectrum`; T and R alone come from `absorbingBlock`, with nothing to check them by and 0 for the error). For a lossless stack:
  *
  * Two real vectors (u, v) are swept from the far side to the side the wave comes from: they start as (1, 0) and
  * (0, Y) in an open lead, the wave being first + i second; as (1, -kappa/mu) alone in a closed one; as (0, 1) alone at
@@ -37,7 +38,11 @@ export function spectrumInto(table: MediaTable, stack: WaveStack, out: SpectrumO
   checkStack(stack)
   const near = lead(stack, from, true)
   const far = lead(stack, from, false)
-  if (table.qIm) return absorbingSpectrum(table, stack, out, from, near, far)
+  if (table.qIm) {
+    if (out.A || out.absorbed) return absorbingSpectrum(table, stack, out, from, near, far)
+    absorbingBlock(table, stack, out, from, near, far)
+    return 0
+  }
   out.A?.fill(0)
   out.absorbed?.fill(0)
   // Below some dozens of layers times points the copies into the kernel's memory cost more than it saves.

@@ -40,7 +40,8 @@ describe('derivatives of T where media absorb', () => {
   ] as const)('by width, Re q and Re mu agree with differences, %s light into %o', (pol, exit) => {
     const { table, stack } = lightTable(air, films, exit, 'entry', { wavelength: 550, angle: 40, pol })
     const out = gradient(table, stack)
-    expect(out.T[0]).toBe(T(table, stack))
+    // Two paths: the spectrum goes by blocks and other polynomials.
+    expect(Math.abs(out.T[0] / T(table, stack) - 1)).toBeLessThan(1e-14)
     for (let j = 0; j < films.length; j++) {
       const byWidth = difference((h) => {
         const width = stack.width.slice()
