@@ -161,7 +161,7 @@ function waveParts(plot: Frame, { zNm }: ProfileReport, { level: at, name, densi
         'stroke-dasharray': '5 3',
       },
     }),
-    label(box.left + 8, Math.min(level + 15, box.top + box.height - 6), text, {
+    label(box.left + 8, at === 0 ? box.top + 18 : level + 15, text, {
       size: 11,
       fill: palette.wave,
       halo: true,

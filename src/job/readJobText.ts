@@ -163,12 +163,13 @@ function opticalNotes({ entry, exit, back, layers }: Job['stack']): string[] {
   const notes = new Set<string>()
   const leads = [entry, exit, back?.behind].filter((lead) => lead !== undefined && lead !== 'hard wall')
   for (const option of leads) {
-    if (option.kind === 'material') for (const remark of opticalMaterial(option.material).remarks) notes.add(remark)
+    if (option.kind === 'material')
+      for (const remark of opticalMaterial(option.material).remarks) notes.add(`${option.material}: ${remark}`)
   }
   for (const option of insideOf(layers)) {
     if (option.kind !== 'material') continue
     const { form, name, remarks } = opticalMaterial(option.material)
-    for (const remark of remarks) notes.add(remark)
+    for (const remark of remarks) notes.add(`${name}: ${remark}`)
     if (form === 'bulk') {
       notes.add(
         `${name} is listed as bulk, but stands in a layer: a deposited film is less dense, and its index lies some per cent lower. Give ` +

@@ -6,8 +6,8 @@ import type { LightSituation, MediumChoice, OfWavelength, ResolvedOptics } from 
  * n + i kappa of a medium. Beyond the wavelengths that it is listed for the last value stays: a job's scan lies inside, but a pole is
  * looked for a little outside. Throws MaterialError for a medium that does not exist.
  */
-export function resolveOptics(choice: MediumChoice, { referenceNm }: LightSituation): ResolvedOptics {
-  const { index, extinction } = constantsOf(choice)
+export function resolveOptics(choice: MediumChoice, { referenceNm, rangeNm }: LightSituation): ResolvedOptics {
+  const { index, extinction } = constantsOf(choice, rangeNm)
   const n = valueAt(index, referenceNm)
   return {
     kind: 'light',
@@ -24,16 +24,17 @@ export function resolveOptics(choice: MediumChoice, { referenceNm }: LightSituat
 const named = new Map<string, OpticalConstants>()
 const tables = new WeakMap<object, OpticalConstants>()
 
-function constantsOf(choice: MediumChoice): OpticalConstants {
+function constantsOf(choice: MediumChoice, rangeNm: LightSituation['rangeNm']): OpticalConstants {
   switch (choice.kind) {
     case 'index':
       return choice
     case 'material': {
-      const known = named.get(choice.material)
+      const key = `${choice.material} ${rangeNm?.join(' ')}`
+      const known = named.get(key)
       if (known) return known
       const material = opticalMaterial(choice.material)
-      const constants = held(opticalConstants(material), material.rangeNm)
-      named.set(choice.material, constants)
+      const constants = held(opticalConstants(material, rangeNm ?? undefined), material.rangeNm)
+      named.set(key, constants)
       return constants
     }
     case 'table': {

@@ -1,5 +1,5 @@
 import type { Condition, Job, MediumOption } from '../job/index.js'
-import { bandParameters, hbar2Over2m0 } from '../media/index.js'
+import { bandParameters, hbar2Over2m0, hcEvNm } from '../media/index.js'
 import { resolveRegion } from './resolveMedium.js'
 import { StackError } from './StackError.js'
 import type { ElectronSituation, LightSituation, MediumChoice, Situation } from './types.js'
@@ -10,11 +10,14 @@ import type { ElectronSituation, LightSituation, MediumChoice, Situation } from 
  * the in-plane kinetic energy in the entry, of its own mass model. Throws StackError for a lead that leaves a
  * choice.
  */
-export function situationOf(job: Pick<Job, 'kind' | 'stack' | 'growth'>, condition: Condition): Situation {
+export function situationOf(job: Pick<Job, 'kind' | 'scanEv' | 'stack' | 'growth'>, condition: Condition): Situation {
   return job.kind === 'electron' ? ofElectrons(job, condition) : ofLight(job, condition)
 }
 
-function ofLight({ stack }: Pick<Job, 'stack'>, { angleDeg, polarisation }: Condition): LightSituation {
+function ofLight(
+  { scanEv, stack }: Pick<Job, 'scanEv' | 'stack'>,
+  { angleDeg, polarisation }: Condition,
+): LightSituation {
   const { entry, exit, back, referenceNm } = stack
   if (exit === 'hard wall') throw new StackError('A hard wall is a lead of electrons.')
   return {
@@ -26,6 +29,7 @@ function ofLight({ stack }: Pick<Job, 'stack'>, { angleDeg, polarisation }: Cond
     // Alike at normal incidence.
     polarisation: angleDeg === 0 ? 's' : polarisation,
     referenceNm: referenceNm!,
+    rangeNm: [hcEvNm / scanEv[1], hcEvNm / scanEv[0]],
   }
 }
 

@@ -33,7 +33,8 @@ function lightStack(job: Job, rows: readonly LayerRow[], situation: LightSituati
   if (polarisation === 'mean')
     throw new StackError('This condition is half s and half p, and a stack has one of them. Average the two.')
   const own = namedOptics(job)
-  const medium = (choice: MediumChoice) => resolveOptics(choice, situation).medium
+  // The library may ask anywhere.
+  const medium = (choice: MediumChoice) => resolveOptics(choice, { ...situation, rangeNm: null }).medium
   return {
     kind: 'light',
     entry: medium(entry),

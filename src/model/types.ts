@@ -78,6 +78,8 @@ export interface LightSituation {
   readonly polarisation: 'mean' | 'p' | 's'
   /** Vacuum wavelength at which quarter waves are counted. */
   readonly referenceNm: number
+  /** All that is asked lies in these vacuum wavelengths: what absorbs in none of them counts as lossless. Null: anything may be asked. */
+  readonly rangeNm: readonly [number, number] | null
 }
 
 /** A layer of a job; slices and the share of a bias count only where there is one. */

@@ -16,9 +16,10 @@ const rounds = 40
 /** A bracket of so small a share of its energy has no more digits of the extreme value. */
 const closeEnough = 1e-9
 
-/** Of a crossing each round leaves a tenth. */
-const zoom = 9
-const crossingRounds = 24
+const crossingRounds = 100
+
+/** Relative: nearer to an end of the bracket, a crossing is that end. */
+const closest = 4e-16
 
 /** What differs by less is rounding. */
 const flat = 1e-13
@@ -66,27 +67,30 @@ export class ResponseShape implements Shape {
 
   /** Walking outwards from extreme to extreme, between which the share is monotone, to the first fall to half; else the end. */
   private crossing(from: number, outwards: readonly Extremum[], end: number, half: number): number {
-    let inner = from
-    let outer: number | null = null
-    for (const { energyEv, T } of outwards) {
-      if (T <= half) {
-        outer = energyEv
-        break
+    const fall = outwards.findIndex(({ T }) => T <= half)
+    if (fall < 0 && this.values([end])[0] > half) return end
+    const passed = fall < 0 ? outwards : outwards.slice(0, fall)
+    let inner = passed.length > 0 ? passed[passed.length - 1].energyEv : from
+    let outer = fall < 0 ? end : outwards[fall].energyEv
+    // Regula falsi with halved weights (Illinois): the bracket shrinks from both sides.
+    let above = this.values([inner])[0] - half
+    let below = this.values([outer])[0] - half
+    let last = 0
+    for (let round = 0; round < crossingRounds; round++) {
+      const x: number = (inner * below - outer * above) / (below - above)
+      if (!(Math.abs(x - inner) > closest * x && Math.abs(x - outer) > closest * x)) return x
+      const value = this.values([x])[0] - half
+      if (value > 0) {
+        inner = x
+        above = value
+        if (last > 0) below *= 0.5
+        last = 1
+      } else {
+        outer = x
+        below = value
+        if (last < 0) above *= 0.5
+        last = -1
       }
-      inner = energyEv
-    }
-    if (outer === null) {
-      if (this.values([end])[0] > half) return end
-      outer = end
-    }
-    for (let round = 0; round < crossingRounds && inner !== outer; round++) {
-      const at = Array.from({ length: zoom + 2 }, (_, i) => inner + ((outer! - inner) * i) / (zoom + 1))
-      const value = this.values(at)
-      const first = at.findIndex((_, i) => i > 0 && value[i] <= half)
-      const i = first < 0 ? at.length - 1 : first
-      if (at[i] === outer && at[i - 1] === inner) break
-      inner = at[i - 1]
-      outer = at[i]
     }
     return 0.5 * (inner + outer)
   }

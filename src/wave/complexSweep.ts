@@ -1,5 +1,5 @@
 import { exp, sinCos } from './elementary.js'
-import { hardWall, type MediaAtEnergy, type WaveSystem } from './types.js'
+import { hardWall, type MediaAtEnergy, type WaveStack, type WaveSystem } from './types.js'
 
 /** Which continuation of a lead's square root is meant: outgoing where it is open, decaying where it is closed. */
 export interface Continuation {
@@ -33,6 +33,10 @@ export class ComplexSweep {
   readonly jIm: Float64Array
   /** Media that the layers use, each once. */
   private readonly used: Int32Array
+  /** Layers of one medium and width are one cell: its number for each layer, a layer of each, and what they do. */
+  private readonly cells: Int32Array
+  private readonly representative: Int32Array
+  private readonly numbers: Float64Array
   private readonly lead = new Float64Array(4)
   private readonly trig = new Float64Array(4)
 
@@ -60,6 +64,10 @@ export class ComplexSweep {
     this.jRe = row(14)
     this.jIm = row(15)
     this.used = distinct(stack.medium, n)
+    const { cells, representative } = cellsOf(stack)
+    this.cells = cells
+    this.representative = representative
+    this.numbers = new Float64Array(perCell * representative.length)
   }
 
   /** Media of the layers at E = re + i im, before a sweep. */
@@ -94,32 +102,13 @@ export class ComplexSweep {
     }
   }
 
-  /** F and F' at E = re + i im. */
-  evaluate(re: number, im: number, branch: Continuation): void {
-    this.prepare(re, im)
-    const { at, kRe, kIm, fRe, fIm, dfRe, dfIm, jRe, jIm, trig, lead, out } = this
-    const { medium, width, entry, exit } = this.system.stack
-    let ur = 1
-    let ui = 0
-    let vr = 0
-    let vi = 0
-    let dur = 0
-    let dui = 0
-    let dvr = 0
-    let dvi = 0
-    if (exit === hardWall) {
-      ur = 0
-      vr = 1
-    } else {
-      admittance(at, exit, branch.exitOpen, lead)
-      vr = -lead[1]
-      vi = lead[0]
-      dvr = -lead[3]
-      dvi = lead[2]
-    }
-    for (let n = medium.length - 1; n >= 0; n--) {
-      const m = medium[n]
-      const w = width[n]
+  /** What every different layer does to (u, v) and to its slope, twelve numbers each. */
+  private crossings(): void {
+    const { at, kRe, kIm, fRe, fIm, dfRe, dfIm, jRe, jIm, trig, representative, numbers } = this
+    const { medium, width } = this.system.stack
+    for (let cell = 0; cell < representative.length; cell++) {
+      const m = medium[representative[cell]]
+      const w = width[representative[cell]]
       const qr = at.qRe[m]
       const qi = at.qIm[m]
       const dqr = at.dqRe[m]
@@ -174,8 +163,8 @@ export class ComplexSweep {
       const mi = at.muIm[m]
       const fr = fRe[m]
       const fi = fIm[m]
-      const br = mr * Sr - mi * Si
-      const bi = mr * Si + mi * Sr
+      const downRe = mr * Sr - mi * Si
+      const downIm = mr * Si + mi * Sr
       const er = fr * Sr - fi * Si
       const ei = fr * Si + fi * Sr
       const dmr = at.dmuRe[m]
@@ -186,6 +175,61 @@ export class ComplexSweep {
       const dfi = dfIm[m]
       const der = fr * dSr - fi * dSi + dfr * Sr - dfi * Si
       const dei = fr * dSi + fi * dSr + dfr * Si + dfi * Sr
+      const o = perCell * cell
+      numbers[o] = cr
+      numbers[o + 1] = ci
+      numbers[o + 2] = downRe
+      numbers[o + 3] = downIm
+      numbers[o + 4] = er
+      numbers[o + 5] = ei
+      numbers[o + 6] = dcr
+      numbers[o + 7] = dci
+      numbers[o + 8] = dbr
+      numbers[o + 9] = dbi
+      numbers[o + 10] = der
+      numbers[o + 11] = dei
+    }
+  }
+
+  /** F and F' at E = re + i im. */
+  evaluate(re: number, im: number, branch: Continuation): void {
+    this.prepare(re, im)
+    const { at, lead, out } = this
+    const { medium, entry, exit } = this.system.stack
+    let ur = 1
+    let ui = 0
+    let vr = 0
+    let vi = 0
+    let dur = 0
+    let dui = 0
+    let dvr = 0
+    let dvi = 0
+    if (exit === hardWall) {
+      ur = 0
+      vr = 1
+    } else {
+      admittance(at, exit, branch.exitOpen, lead)
+      vr = -lead[1]
+      vi = lead[0]
+      dvr = -lead[3]
+      dvi = lead[2]
+    }
+    this.crossings()
+    const { cells, numbers } = this
+    for (let n = medium.length - 1; n >= 0; n--) {
+      const o = perCell * cells[n]
+      const cr = numbers[o]
+      const ci = numbers[o + 1]
+      const br = numbers[o + 2]
+      const bi = numbers[o + 3]
+      const er = numbers[o + 4]
+      const ei = numbers[o + 5]
+      const dcr = numbers[o + 6]
+      const dci = numbers[o + 7]
+      const dbr = numbers[o + 8]
+      const dbi = numbers[o + 9]
+      const der = numbers[o + 10]
+      const dei = numbers[o + 11]
       const nur = cr * ur - ci * ui - br * vr + bi * vi
       const nui = cr * ui + ci * ur - br * vi - bi * vr
       const nvr = er * ur - ei * ui + cr * vr - ci * vi
@@ -290,6 +334,28 @@ export function admittance(at: MediaAtEnergy, m: number, open: boolean, out: Flo
 /** Powers of two, so that no digit changes. */
 const shrink = 6.223015277861142e-61
 const grow = 1.6069380442589903e60
+
+const perCell = 12
+
+function cellsOf({ medium, width }: WaveStack): { cells: Int32Array; representative: Int32Array } {
+  const cells = new Int32Array(medium.length)
+  const known = new Map<number, Map<number, number>>()
+  const representative: number[] = []
+  for (let j = 0; j < medium.length; j++) {
+    let widths = known.get(medium[j])
+    if (widths === undefined) {
+      widths = new Map()
+      known.set(medium[j], widths)
+    }
+    let cell = widths.get(width[j])
+    if (cell === undefined) {
+      cell = representative.push(j) - 1
+      widths.set(width[j], cell)
+    }
+    cells[j] = cell
+  }
+  return { cells, representative: Int32Array.from(representative) }
+}
 
 function distinct(medium: Int32Array, count: number): Int32Array {
   const seen = new Uint8Array(count)

@@ -8,7 +8,7 @@ const jobs = fileURLToPath(new URL('../../jobs', import.meta.url))
 
 describe('the example jobs at brief effort', () => {
   for (const name of readdirSync(jobs).filter((file) => file.endsWith('.yaml'))) {
-    it(`${name} runs to a candidate that meets all its limits`, { timeout: 240_000 }, async () => {
+    it(`${name} runs to a candidate that meets all its limits`, { timeout: 600_000 }, async () => {
       const folder = emptyFolder()
       for (const file of readdirSync(jobs, { recursive: true }) as string[]) {
         if (/\.(yaml|csv)$/.test(file)) {

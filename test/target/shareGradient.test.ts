@@ -10,7 +10,7 @@ const energies = Float64Array.from({ length: 7 }, (_, i) => 1.6 + 0.21 * i)
 
 function situation(changes: Partial<LightSituation>): LightSituation {
   const leads = { entry: index(1), exit: index(1.52), back: null } as const
-  return { kind: 'light', ...leads, angleDeg: 0, polarisation: 's', referenceNm: 550, ...changes }
+  return { kind: 'light', ...leads, angleDeg: 0, polarisation: 's', referenceNm: 550, rangeNm: null, ...changes }
 }
 
 const cases: Record<string, LightSituation> = {
