@@ -45,8 +45,9 @@ program
   .command('new')
   .description('write NAME.yaml, a commented job to start from')
   .argument('<name>', 'letters, digits, dashes')
-  .action((name: string) => {
-    code = newJob(name)
+  .option('--kind <kind>', 'electron or light; electron by default')
+  .action((name: string, options: { readonly kind?: string }) => {
+    code = newJob(name, options)
   })
 
 program

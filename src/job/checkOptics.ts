@@ -33,7 +33,8 @@ export function checkOptics(
     // A scan that ends where the list ends may have been rounded once.
     const ends = [fromNm >= from * (1 - 1e-9), toNm <= to * (1 + 1e-9)]
     const name = option.kind === 'material' ? option.material : option.kind === 'table' ? option.name : ''
-    const remedy = `Narrow the scan to what all media cover, or give ${name} by a table of your own.`
+    const table = option.kind === 'table' ? 'extend the table' : `give ${name} by a table of your own`
+    const remedy = `Narrow the scan to what all media cover, or ${table}.`
     if (!ends[0] || !ends[1]) {
       const rule = `${name} is listed from ${short(from)} to ${short(to)} nm, but the scan goes from ${short(fromNm)} to ${short(toNm)} nm.`
       problems.add(path, rule, remedy)

@@ -13,8 +13,8 @@ const most = 4000
 
 const rounds = 40
 
-/** A bracket of so small a share of its energy has no more digits of the extreme value. */
-const closeEnough = 1e-9
+/** Of its first bracket. */
+const closeEnough = 1e-6
 
 const crossingRounds = 100
 
@@ -140,7 +140,7 @@ export class ResponseShape implements Shape {
 
   /** By parabolas through three values, kept inside the bracket. */
   private refined(brackets: readonly Bracket[]): { energyEv: number; T: number; sign: number }[] {
-    const now = brackets.map((one) => ({ ...one, moving: true }))
+    const now = brackets.map((one) => ({ ...one, first: one.at[2] - one.at[0], moving: true }))
     for (let round = 0; round < rounds; round++) {
       const open = now.filter(({ moving }) => moving)
       if (open.length === 0) break
@@ -149,6 +149,8 @@ export class ResponseShape implements Shape {
       open.forEach((one, i) => {
         const { at, value, sign } = one
         const [x, y] = [tries[i], values[i]]
+        // A step so short moves a value by its square.
+        one.moving = Math.abs(x - at[1]) > closeEnough * one.first
         const side = x > at[1] ? 2 : 0
         if (sign * (y - value[1]) > 0) {
           at[2 - side] = at[1]
@@ -159,9 +161,6 @@ export class ResponseShape implements Shape {
           at[side] = x
           value[side] = y
         }
-        const width = at[2] - at[0]
-        one.moving =
-          width > closeEnough * at[1] && Math.abs(y - value[1]) > flat * Math.abs(value[1]) * (round < 6 ? 0 : 1)
       })
     }
     return now.map(({ at, value, sign }) => ({ energyEv: at[1], T: value[1], sign }))

@@ -63,6 +63,16 @@ describe('new', () => {
     expect((await command(['new', '../elsewhere'], folder)).code).toBe(2)
     expect(readdirSync(folder)).toEqual(['my-filter.yaml'])
   })
+
+  it('writes one of light, whose filter meets its demands', async () => {
+    const folder = emptyFolder()
+    expect((await command(['new', 'my-coating', '--kind', 'light'], folder)).code).toBe(0)
+    const check = await command(['check', 'my-coating.yaml'], folder)
+    expect(check.code, check.stderr).toBe(0)
+    expect(check.stdout).toContain('scan        560..720 nm')
+    expect(check.stdout).toContain('meets all limits')
+    expect((await command(['new', 'other', '--kind', 'sound'], folder)).code).toBe(2)
+  })
 })
 
 describe('materials', () => {
