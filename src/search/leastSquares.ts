@@ -1,4 +1,5 @@
 import { levenbergMarquardt } from 'ml-levenberg-marquardt'
+import { factor, type Quadratic, quadraticOf } from './quadratic.js'
 import type { RelaxedProblem } from './types.js'
 
 export interface Fit {
@@ -28,18 +29,21 @@ export function leastSquares(problem: BoundedResiduals, start: Float64Array, mos
     problem,
     start.map((value, v) => Math.min(Math.max(value, lower[v]), upper[v])),
   )
+  let quadratic = quadraticOf(best.residuals, best.jacobian, start.length)
   let evaluations = 1
   let damping = firstDamping
   let stalls = 0
   while (evaluations < most && Number.isFinite(best.sum) && best.sum > 0) {
-    const free = freeVariables(best, problem)
+    const free = freeVariables(best, quadratic, problem)
     if (free.length === 0) break
-    const trial = step(problem, best, free, damping)
-    if (trial === null) break
+    const moved = step(problem, best.variables, quadratic, free, damping)
+    if (moved === null) break
+    const trial = evaluate(problem, moved)
     evaluations++
     if (trial.sum < best.sum) {
       stalls = best.sum - trial.sum > stalled * best.sum ? 0 : stalls + 1
       best = trial
+      quadratic = quadraticOf(best.residuals, best.jacobian, start.length)
       damping = Math.max(damping / 9, leastDamping)
       if (stalls === 2) break
     } else {
@@ -71,44 +75,47 @@ function evaluate(problem: BoundedResiduals, variables: Float64Array): Point {
 }
 
 /** All but those at a bound that a descent would leave. */
-function freeVariables({ variables, residuals, jacobian }: Point, { lower, upper }: BoundedResiduals): number[] {
-  const n = variables.length
-  const free: number[] = []
-  for (let v = 0; v < n; v++) {
-    let gradient = 0
-    for (let i = 0; i < residuals.length; i++) gradient += residuals[i] * jacobian[i * n + v]
-    const outwards = (variables[v] <= lower[v] && gradient > 0) || (variables[v] >= upper[v] && gradient < 0)
-    if (gradient !== 0 && !outwards) free.push(v)
-  }
-  return free
+function freeVariables({ variables }: Point, { gradient }: Quadratic, { lower, upper }: BoundedResiduals): number[] {
+  return [...variables.keys()].filter((v) => {
+    const slope = gradient[v]
+    const outwards = (variables[v] <= lower[v] && slope > 0) || (variables[v] >= upper[v] && slope < 0)
+    return slope !== 0 && !outwards
+  })
 }
 
-/** The point that one step of the library reaches; null where it finds none. */
-function step(problem: BoundedResiduals, from: Point, free: readonly number[], damping: number): Point | null {
-  const { residuals, jacobian, variables } = from
-  const n = variables.length
-  const scale = free.map((v) => {
-    let squares = 0
-    for (let i = 0; i < residuals.length; i++) squares += jacobian[i * n + v] * jacobian[i * n + v]
-    return Math.sqrt(squares)
-  })
+/**
+ * The point that one step of the library reaches; null where it finds none. A step hangs on J^T J and J^T r alone, so the library gets
+ * as many residuals as there are variables, with the same products (Cholesky's factor of J^T J): its cost is that of a small problem.
+ */
+function step(
+  problem: BoundedResiduals,
+  variables: Float64Array,
+  all: Quadratic,
+  free: readonly number[],
+  damping: number,
+): Float64Array | null {
+  const n = free.length
+  const scale = free.map((v) => Math.sqrt(all.hessian[v * all.n + v]))
   const scaled = free.map((v, k) => variables[v] * scale[k])
-  let trial: Point | null = null
+  const gradient = Float64Array.from(free, (v, k) => all.gradient[v] / scale[k])
+  const hessian = new Float64Array(n * n)
+  free.forEach((v, k) => {
+    for (let l = 0; l < n; l++) hessian[k * n + l] = all.hessian[v * all.n + free[l]] / (scale[k] * scale[l])
+  })
+  const { R, y } = factor({ n, gradient, hessian }, noRidge)
+  let moved: Float64Array | null = null
   const model = (values: number[]) => {
-    if (values.every((value, k) => value === scaled[k])) return (i: number) => residuals[i]
-    if (trial === null) {
-      const moved = Float64Array.from(variables)
-      free.forEach((v, k) => {
-        moved[v] = Math.min(Math.max(values[k] / scale[k], problem.lower[v]), problem.upper[v])
-      })
-      trial = evaluate(problem, moved)
+    if (values.every((value, k) => value === scaled[k])) return (i: number) => (i < n ? y[i] : 0)
+    moved = Float64Array.from(variables)
+    for (const [k, v] of free.entries()) {
+      moved[v] = Math.min(Math.max(values[k] / scale[k], problem.lower[v]), problem.upper[v])
     }
-    const reached = trial.residuals
-    return (i: number) => reached[i]
+    return () => 0
   }
-  const jacobianFunction = () => (i: number) => free.map((v, k) => jacobian[i * n + v] / scale[k])
-  const numbers = Array.from(residuals, (_, i) => i)
-  // The library's own verdict on the step is not asked for: a point without finite residuals ends it, which is all one here.
+  const jacobianFunction = () => (i: number) => free.map((_, k) => (i < n ? R[i * n + k] : 0))
+  // The library takes no fewer than two residuals.
+  const numbers = Array.from({ length: Math.max(n, 2) }, (_, i) => i)
+  // The library's own verdict on the step is not asked for.
   levenbergMarquardt({ x: numbers, y: numbers.map(() => 0) }, model, {
     initialValues: scaled,
     minValues: free.map((v, k) => problem.lower[v] * scale[k]),
@@ -118,5 +125,8 @@ function step(problem: BoundedResiduals, from: Point, free: readonly number[], d
     maxIterations: 1,
     errorTolerance: 0,
   })
-  return trial
+  return moved
 }
+
+/** Of the curvature: what keeps a singular factor finite, far below any damping. */
+const noRidge = 1e-14

@@ -20,6 +20,7 @@ export function fitInto(
   let next = 0
   for (let c = 0; c < landscapes.length; c++) {
     const held = judges.filter((_, d) => holds[d].includes(c))
+    const moved = movedParameters(directions[c], variables)
     const gradients = new Map<Quantity, ReturnType<typeof pointGradients>>()
     const gradientOf = (quantity: Quantity) => {
       const known = gradients.get(quantity)
@@ -42,25 +43,35 @@ export function fitInto(
           const T = landscape.T[terms.first + i]
           const factor = scale * Math.sqrt(terms.share(i))
           residuals[next] = factor * terms.residual(i, T)
-          row(next++, c, factor * terms.slope(i, T), points.gradient, points.at(terms.first + i) * size, size)
+          row(next++, c, factor * terms.slope(i, T), points.gradient, points.at(terms.first + i) * size, moved)
         }
       }
       const slopes = parts > 0 ? judge.fitParts(landscape, residuals.subarray(next, next + parts)) : []
       const factor = scale / Math.sqrt(parts)
       for (const slope of slopes) {
         residuals[next] *= factor
-        row(next++, c, factor, slope, 0, size)
+        row(next++, c, factor, slope, 0, moved)
       }
     }
   }
 
-  function row(i: number, c: number, factor: number, gradient: Float64Array, first: number, size: number): void {
+  function row(i: number, c: number, factor: number, gradient: Float64Array, first: number, moved: Int32Array[]): void {
+    const size = directions[c].length / variables
     for (let v = 0; v < variables; v++) {
       let sum = 0
-      if (factor !== 0) for (let k = 0; k < size; k++) sum += gradient[first + k] * directions[c][v * size + k]
+      if (factor !== 0) for (const k of moved[v]) sum += gradient[first + k] * directions[c][v * size + k]
       jacobian[i * variables + v] = factor * sum
     }
   }
+}
+
+/** For each variable the layer parameters that it moves: few of all. */
+function movedParameters(directions: Float64Array, variables: number): Int32Array[] {
+  const size = directions.length / variables
+  return Array.from({ length: variables }, (_, v) => {
+    const row = directions.subarray(v * size, (v + 1) * size)
+    return Int32Array.from([...row.keys()].filter((k) => row[k] !== 0))
+  })
 }
 
 /** dT/d(layer parameter) at the points of all demands that have a slope; `at` says in which row a point of the target stands. */
