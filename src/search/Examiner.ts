@@ -1,4 +1,5 @@
 import type { Score } from '../target/index.js'
+import { PricedMoves } from './PricedMoves.js'
 import type { Found, SearchProblem } from './types.js'
 
 /** A stack with its score. */
@@ -18,6 +19,7 @@ export class Examiner {
   private readonly bounds = new Map<string, { readonly assignment: Int32Array; readonly bound: number }>()
   private readonly scores = new Map<string, Score>()
   private spent = 0
+  private moves: PricedMoves | null = null
 
   constructor(
     readonly problem: SearchProblem,
@@ -59,6 +61,26 @@ export class Examiner {
     if (this.bound(assignment) > this.problem.reach(than)) return null
     const score = this.score(assignment)
     return this.problem.compare(score, than) < 0 ? score : null
+  }
+
+  /** Whether the neighbours of a stack can be priced: a chain says what its points add, and its points what it lacks. */
+  priced({ score }: Reached): boolean {
+    const { problem } = this
+    if (!problem.boundGuides || score.merit === 0) return false
+    const chain = problem.chain()
+    return chain !== null && chain.labels.length * chain.points.length <= mostEntries
+  }
+
+  /** The feasible stacks with so many places moved whose points leave them within reach of one, at most `most`, the best first. */
+  pricedMoves({ stack, score }: Reached, together: number, most: number): Int32Array[] {
+    const { problem } = this
+    const chain = problem.chain()!
+    this.moves ??= new PricedMoves(chain, problem.places, stack)
+    const reach = problem.reach(score)
+    const before = this.moves.prices
+    const moves = this.moves.below(stack, together, reach * reach, most)
+    this.charge((priceCost * (this.moves.prices - before)) / chain.points.length)
+    return moves.map((move) => move.stack).filter((moved) => problem.feasible(moved))
   }
 
   /** What a global phase goes by. */
@@ -104,6 +126,12 @@ export class Examiner {
 
 /** Stacks of which `best` asks the whole score. */
 const mostCompared = 6
+
+/** Matrices that a unit tabulates: some ten megabytes. */
+const mostEntries = 1_000_000
+
+/** A price at all points in bounds. */
+const priceCost = 1.5
 
 /** A whole merit in bounds: extremes and resonances cost five to ten times the points. */
 const scoreCost = 8

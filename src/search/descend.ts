@@ -3,19 +3,30 @@ import { neighbours } from './neighbours.js'
 import { promisingMoves } from './promisingMoves.js'
 
 /**
- * Descends on the lattice under the full order of stacks until no move of `neighbours` helps, or the budget is spent. While the
- * limits are unmet, the moves that the residuals' quadratic promises most are tried first, those of three places among them; stacks
- * that meet all limits go on by their margin. The first move that helps is taken.
+ * Descends on the lattice under the full order of stacks until no move of `neighbours` helps, or the budget is spent. Where the
+ * neighbours of a stack that misses its limits can be priced, those within reach are tried from the cheapest up; else the moves that
+ * the residuals' quadratic promises most come first, those of three places among them, and stacks that meet all limits go on by their
+ * margin. The first move that helps is taken.
  */
-export function descend(examiner: Examiner, from: Reached): Reached {
+export function descend(examiner: Examiner, from: Reached, most = 3): Reached {
   const { problem } = examiner
   let here = from
   let next: Reached | null = from
   while (next !== null && !examiner.exhausted) {
     here = next
-    next = firstBetter(promising(here)) ?? firstBetter(neighbours(problem, here.stack, mostNeighbours))
+    next = examiner.priced(here)
+      ? pricedBetter()
+      : (firstBetter(promising(here)) ?? firstBetter(neighbours(problem, here.stack, mostNeighbours)))
   }
   return here
+
+  function pricedBetter(): Reached | null {
+    for (let together = 1; together <= most; together++) {
+      const better = firstBetter(examiner.pricedMoves(here, together, mostPriced))
+      if (better) return better
+    }
+    return null
+  }
 
   function promising({ stack, score }: Reached): Int32Array[] {
     if (score.merit === 0) return []
@@ -33,6 +44,9 @@ export function descend(examiner: Examiner, from: Reached): Reached {
     return null
   }
 }
+
+/** Priced moves of each kind that are tried; where the points are all that counts the first one decides. */
+const mostPriced = 8
 
 /** Promising moves that are looked at before all neighbours are. */
 const mostTried = 48

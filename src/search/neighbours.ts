@@ -30,7 +30,7 @@ export function* neighbours(
 }
 
 /** The largest r with (places over together) (2 r)^together <= most; pairs always have their next choices. */
-function reachOf(places: number, together: number, most: number): number {
+export function reachOf(places: number, together: number, most: number): number {
   let ways = 1
   for (let k = 0; k < together; k++) ways = (ways * (places - k)) / (k + 1)
   if (ways === 0) return 0
@@ -43,8 +43,8 @@ function reachOf(places: number, together: number, most: number): number {
   return together === 3 ? reach : Math.max(reach, 1)
 }
 
-/** The nearest first. */
-function choicesNear({ choices, ordered }: SearchPlace, at: number, reach: number): number[] {
+/** Choices of a place around one, at most `reach` away where they are ordered; the nearest first. */
+export function choicesNear({ choices, ordered }: SearchPlace, at: number, reach: number): number[] {
   const near: number[] = []
   for (let by = 1; by < choices && (by <= reach || !ordered); by++) {
     if (at + by < choices) near.push(at + by)

@@ -5,8 +5,8 @@ import type { LowDiscrepancy } from './lowDiscrepancy.js'
 /**
  * A short global phase: differential evolution (Storn and Price, J. Global Optim. 11, 341, 1997: rand/1/bin, from memory) over the
  * places' numbers as coordinates in the unit cube. It starts from the best of a stretch of the low-discrepancy sequence that is the
- * unit's own. A unit in four lets places of a family agree (a periodic structure: two numbers find the band of a long filter), two
- * nearly so, the fourth not at all. Returns the members, the best first. Costs draws + size * generations looks.
+ * unit's own. Every other unit lets places of a family agree (a periodic structure: two numbers find the band of a long filter), of
+ * the others one nearly so, one not at all. Returns the members, the best first. Costs draws + size * generations looks.
  */
 export function evolve(examiner: Examiner, sequence: LowDiscrepancy, unit: number, stream: RandomStream): Int32Array[] {
   const { problem } = examiner
@@ -49,7 +49,7 @@ const byBound = { draws: 96, size: 48, generations: 12 }
 const byMerit = { draws: 48, size: 16, generations: 6 }
 
 /** Share of a member's own coordinate against its family's. */
-const freedom = [0, 0.1, 0.3, 1]
+const freedom = [0, 0.1, 0, 1]
 
 const weight = 0.6
 const crossover = 0.7

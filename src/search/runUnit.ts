@@ -15,18 +15,23 @@ const refitEvaluations = 12
 const fitted = 6
 const mostCorners = 48
 const kicks = 6
+/** Where moves are priced: kicks in vain, one after the other, that end a unit. */
+const kicksInVain = 32
 
 /**
  * One independent start of the sampled method (design 7.2): the best of a short evolution from low-discrepancy points, each fitted in
  * its continuous widths, compositions and numbers and taken to the best corner around the fit; the best of them descends on the
- * lattice. Then the basins around: other choices of each unordered list, and a few kicks of one to three places, each with a fit of its
- * own. The result depends on the problem, the seed and the unit's number alone; `seed` is the same for all units of a search.
+ * lattice. Then the basins around: other choices of each unordered list, and kicks: where moves are priced, kicks of up to five places
+ * that descend at once, as long as some help; else a few of up to three, each with a fit of its own. The result depends on the problem, the seed and the unit's number alone; `seed` is the same for all units of a search.
  */
 export function runUnit(problem: SearchProblem, unit: number, seed: Uint32Array | string): UnitResult {
   const examiner = new Examiner(problem, budget)
   const stream = randomStream(seed, 'unit', unit)
   const members = distinct(evolve(examiner, new LowDiscrepancy(problem.places.length, seed), unit, stream))
-  const starts = members.slice(0, fitted).map((member) => refined(examiner, member, fitEvaluations))
+  const starts = members.slice(0, fitted).map((member) => {
+    const start = refined(examiner, member, fitEvaluations)
+    return examiner.priced(start) ? descend(examiner, start, 1) : start
+  })
   const first = starts.reduce((best, one) => (problem.compare(one.score, best.score) < 0 ? one : best))
   const listed = chooseLists(examiner, descend(examiner, first))
   kicked(examiner, listed, stream)
@@ -73,21 +78,31 @@ function chooseLists(examiner: Examiner, from: Reached): Reached {
 }
 
 function kicked(examiner: Examiner, from: Reached, stream: RandomStream): Reached {
-  const { places } = examiner.problem
+  const { problem } = examiner
+  const { places } = problem
   let here = from
-  for (let kick = 0; kick < kicks && !examiner.exhausted && places.length > 0; kick++) {
+  let vain = 0
+  for (let kick = 0; !examiner.exhausted && places.length > 0; kick++) {
+    const priced = examiner.priced(here)
+    if (priced ? vain === kicksInVain : kick >= kicks) break
     const other = Int32Array.from(here.stack)
-    for (let moves = 1 + stream.integer(3); moves > 0; moves--) {
+    for (let moves = 1 + stream.integer(priced ? mostPlaces.priced : mostPlaces.fitted); moves > 0; moves--) {
       const place = stream.integer(places.length)
       const { choices, ordered } = places[place]
       const by = (1 + stream.integer(farthestKick)) * (stream.integer(2) === 0 ? -1 : 1)
       other[place] = ordered ? Math.min(Math.max(other[place] + by, 0), choices - 1) : stream.integer(choices)
     }
-    here = settled(examiner, other, here)
+    const reached = priced
+      ? better(examiner, descendFrom(examiner, problem.repair(other)), here)
+      : settled(examiner, other, here)
+    vain = reached === here ? vain + 1 : 0
+    here = reached
   }
   return here
 }
 
+/** Places that a kick moves at most. */
+const mostPlaces = { priced: 5, fitted: 3 }
 const farthestKick = 6
 
 /** Where a changed stack settles after a fit and, if it comes near, a descent; `here` where that is no better. */
@@ -95,7 +110,14 @@ function settled(examiner: Examiner, changed: Int32Array, here: Reached): Reache
   const { problem } = examiner
   const start = refined(examiner, problem.repair(changed), refitEvaluations)
   if (examiner.bound(start.stack) / near > problem.reach(here.score)) return here
-  const reached = descend(examiner, start)
+  return better(examiner, descend(examiner, start), here)
+}
+
+function descendFrom(examiner: Examiner, stack: Int32Array): Reached {
+  return descend(examiner, { stack, score: examiner.score(stack) })
+}
+
+function better({ problem }: Examiner, reached: Reached, here: Reached): Reached {
   return problem.compare(reached.score, here.score) < 0 ? reached : here
 }
 

@@ -1,7 +1,7 @@
 import type { Score } from '../../target/index.js'
+import { discriminating } from '../discriminating.js'
 import type { ChainMatrices, SearchChain, SearchProblem } from '../types.js'
 import { AngleIndex } from './AngleIndex.js'
-import { discriminating } from './discriminating.js'
 import { type Forced, forcedTransmission } from './forcedTransmission.js'
 import { HalfList, rangeOf, type VectorTable, vectorTable, writeChoices } from './HalfVectors.js'
 import { type PointTables, pointTables } from './PointTables.js'

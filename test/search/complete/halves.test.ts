@@ -1,12 +1,12 @@
 import { describe, expect, it } from 'vitest'
 import { AngleIndex, isNoisy } from '../../../src/search/complete/AngleIndex.js'
-import { discriminating } from '../../../src/search/complete/discriminating.js'
 import { forcedTransmission } from '../../../src/search/complete/forcedTransmission.js'
 import { type VectorTable, vectorTable, writeChoices } from '../../../src/search/complete/HalfVectors.js'
 import { filledTable } from '../../../src/search/complete/HalvesSearch.js'
 import { bucketOf, pointTables } from '../../../src/search/complete/PointTables.js'
 import { samplePairs } from '../../../src/search/complete/samplePairs.js'
 import { splitChain } from '../../../src/search/complete/splitChain.js'
+import { discriminating } from '../../../src/search/discriminating.js'
 import {
   type CompletePlan,
   firstRound,
