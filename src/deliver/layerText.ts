@@ -12,7 +12,8 @@ export function mediumText(choice: MediumChoice): string {
   if (choice.kind === 'table') return choice.name
   if (choice.kind === 'numbers') return choice.name ?? `${short(choice.potentialEv * 1000)} meV`
   if (choice.kind === 'index') return choice.name ?? indexText(choice.index, choice.extinction)
-  return choice.x === null ? choice.material : `${choice.material} ${choice.x}`
+  const name = choice.own?.name ?? choice.material
+  return choice.x === null ? name : `${name} ${choice.x}`
 }
 
 /** The same for a lead of the job. */
@@ -21,7 +22,8 @@ export function leadText(lead: MediumOption | 'hard wall'): string {
   if (lead.kind === 'table') return lead.name
   if (lead.kind === 'numbers') return lead.name ?? `${short(lead.potentialEv[0] * 1000)} meV`
   if (lead.kind === 'index') return lead.name ?? indexText(lead.index[0], lead.extinction[0])
-  return lead.x === null ? lead.material : `${lead.material} ${lead.x[0]}`
+  const name = lead.own?.name ?? lead.material
+  return lead.x === null ? name : `${name} ${lead.x[0]}`
 }
 
 function indexText(index: number, extinction: number): string {

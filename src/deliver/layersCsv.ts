@@ -38,7 +38,7 @@ export function layersCsv(
     headerOf(kind),
     grown.map(({ layer, no }) => {
       const { choice, resolved } = layer
-      const name = choice.kind === 'material' ? choice.material : choice.name
+      const name = choice.kind === 'material' ? (choice.own?.name ?? choice.material) : choice.name
       const tooling = growth.tooling[name ?? ''] ?? null
       total += layer.widthNm
       return [

@@ -1,4 +1,4 @@
-import type { GrowthSpec, LayerSpec, MediumOption } from '../job/index.js'
+import type { GrowthSpec, LayerSpec, MediumOption, Override } from '../job/index.js'
 import { needsX } from '../media/index.js'
 import { type MediumChoice, type ResolvedMedium, resolveMedium, type Situation } from '../model/index.js'
 import { DesignError } from './DesignError.js'
@@ -245,8 +245,8 @@ export function alloyOf(choice: MediumChoice): string | null {
 
 function choiceOf(option: MediumOption, digits: readonly number[]): MediumChoice {
   if (option.kind === 'material') {
-    const { material, x } = option
-    return { kind: 'material', material, x: x === null ? null : x[digits[0]] }
+    const { material, x, own } = option
+    return { kind: 'material', material, x: x === null ? null : x[digits[0]], ...(own ? { own } : {}) }
   }
   if (option.kind === 'table') return option
   if (option.kind === 'index') {
@@ -265,7 +265,7 @@ function choiceOf(option: MediumOption, digits: readonly number[]): MediumChoice
 
 /** Number of the value in each list, or null where the option does not give this medium. */
 function digitsOfChoice(option: MediumOption, choice: MediumChoice): number[] | null {
-  if (option.kind === 'material' && (choice.kind !== 'material' || choice.material !== option.material)) return null
+  if (option.kind === 'material' && !(choice.kind === 'material' && sameMaterial(option, choice))) return null
   if (option.kind === 'table' && mediumKey(option) !== mediumKey(choice)) return null
   if (option.kind !== choice.kind) return null
   const values = valuesOfChoice(choice)
@@ -274,6 +274,13 @@ function digitsOfChoice(option: MediumOption, choice: MediumChoice): number[] | 
     return list === undefined ? 0 : list.indexOf(values[p]!)
   })
   return digits.includes(-1) ? null : digits
+}
+
+type Named = { readonly material: string; readonly own?: Override }
+
+function sameMaterial(a: Named, b: Named): boolean {
+  const bare = ({ material, own }: Named) => mediumKey({ kind: 'material', material, x: null, ...(own ? { own } : {}) })
+  return bare(a) === bare(b)
 }
 
 /** In the order of `parameters`. */

@@ -1,12 +1,16 @@
 import { createHash } from 'node:crypto'
-import { canonicalJson } from '../job/index.js'
+import { canonicalJson, type Override } from '../job/index.js'
 import type { MediumChoice } from '../model/index.js'
 
 /** What makes a medium what it is, for the canonical JSON of a stack: material and x, or numbers. Names given to numbers play no part. */
 export function mediumIdentity(choice: MediumChoice): Record<string, unknown> {
   switch (choice.kind) {
     case 'material':
-      return { material: choice.material, ...(choice.x === null ? {} : { x: choice.x }) }
+      return {
+        material: choice.material,
+        ...(choice.x === null ? {} : { x: choice.x }),
+        ...(choice.own ? { own: numbersOf(choice.own) } : {}),
+      }
     case 'numbers': {
       const { potentialEv, massRel, alphaPerEv } = choice
       return { potentialEv, massRel, alphaPerEv }
@@ -21,8 +25,10 @@ export function mediumIdentity(choice: MediumChoice): Record<string, unknown> {
 /** Equal for equal media, whatever their names. */
 export function mediumKey(choice: MediumChoice): string {
   switch (choice.kind) {
-    case 'material':
-      return choice.x === null ? choice.material : `${choice.material}(${choice.x})`
+    case 'material': {
+      const listed = choice.x === null ? choice.material : `${choice.material}(${choice.x})`
+      return choice.own ? `${listed}${canonicalJson(numbersOf(choice.own))}` : listed
+    }
     case 'numbers':
       return `[${choice.potentialEv} ${choice.massRel} ${choice.alphaPerEv}]`
     case 'index':
@@ -30,6 +36,10 @@ export function mediumKey(choice: MediumChoice): string {
     case 'table':
       return `[${digestOf(choice.rows)}]`
   }
+}
+
+function numbersOf({ name: _name, ...numbers }: Override): Omit<Override, 'name'> {
+  return numbers
 }
 
 const digests = new WeakMap<object, string>()

@@ -40,7 +40,10 @@ export function stackText({ layers }: Lattice, stretches: readonly Stretch[]): s
 
 /** A name says enough unless its numbers are free. */
 function mediumText(choice: MediumChoice, ranging: ReadonlySet<string | null>): string {
-  if (choice.kind === 'material') return choice.x === null ? choice.material : `${choice.material}(${choice.x})`
+  if (choice.kind === 'material') {
+    const { material, x, own } = choice
+    return `${own?.name ?? material}${x === null ? '' : `(${x})`}`
+  }
   if (choice.kind === 'table') return choice.name
   if (choice.kind === 'index') {
     const { name, index, extinction } = choice

@@ -36,11 +36,15 @@ export function feedsOf(choice: MediumChoice, kind: Kind, sources: readonly Sour
 }
 
 function filmFeed(choice: MediumChoice, sources: readonly Source[]): Feed {
+  const listed = (name: string) => sources.find(({ element }) => element === name)
+  const own = choice.kind === 'material' ? choice.own?.name : undefined
   const name =
     choice.kind === 'material'
-      ? choice.material
+      ? own !== undefined && listed(own)
+        ? own
+        : choice.material
       : (choice.name ?? (choice.kind === 'index' ? `medium ${choice.index} ${choice.extinction}` : 'medium'))
-  return { source: name, share: 1, rate: sources.find(({ element }) => element === name)?.rate ?? null }
+  return { source: name, share: 1, rate: listed(name)?.rate ?? null }
 }
 
 /** Seconds per monolayer (films: nm) of a medium: the inverse of its sources' summed rate; null where the job does not give the rates. */

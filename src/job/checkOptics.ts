@@ -51,6 +51,7 @@ export function checkOptics(
         ([nm, , k], i) => k > 0 && (option.rows[i + 1]?.[0] ?? nm) >= fromNm && (option.rows[i - 1]?.[0] ?? nm) <= toNm,
       )
     if (option.kind !== 'material') return false
+    if (option.own?.extinction !== undefined) return option.own.extinction > 0
     const { extinction } = opticalConstants(opticalMaterial(option.material), [fromNm, toNm])
     if (typeof extinction === 'number') return extinction > 0
     const [from, to] = rangeOf(option)!

@@ -87,6 +87,8 @@ export type MediumOption =
       readonly material: string
       /** The allowed compositions; null for a binary. */
       readonly x: readonly number[] | null
+      /** What the user's own medium has instead of the listed numbers; absent: nothing. */
+      readonly own?: Override
     }
   | {
       readonly kind: 'numbers'
@@ -109,6 +111,17 @@ export type MediumOption =
       /** Vacuum wavelength (nm, ascending), n, kappa. */
       readonly rows: readonly (readonly [number, number, number])[]
     }
+
+/** Single numbers in place of those of a built-in material: an edge counts from the entry's, an index holds at every wavelength. */
+export interface Override {
+  /** Under `media:`. */
+  readonly name: string
+  readonly potentialEv?: number
+  readonly massRel?: number
+  readonly alphaPerEv?: number
+  readonly index?: number
+  readonly extinction?: number
+}
 
 /**
  * A width as written. ML count monolayers of whatever medium the layer gets, qw its quarter waves at `stack.reference` and normal

@@ -183,14 +183,15 @@ export function readSources(
 }
 
 function nameOf(option: MediumOption): string | null {
-  return option.kind === 'material' ? option.material : option.name
+  return option.kind === 'material' ? (option.own?.name ?? option.material) : option.name
 }
 
 /** Every material of a layer needs a source; media by numbers alone have none. */
 function checkDeposition({ path, spec }: PlacedLayer, sources: readonly Source[], reader: Reader): void {
   for (const option of spec.media ?? []) {
     const name = nameOf(option)
-    if (name === null || sources.some((source) => source.element === name)) continue
+    const names = [name, option.kind === 'material' ? option.material : null]
+    if (name === null || sources.some((source) => names.includes(source.element))) continue
     reader.problems.add(
       [...path, 'material'],
       `${name} has no rate under growth.sources.`,

@@ -164,10 +164,11 @@ function layerRow(cells: Cells): LayerRow | null {
     cells.problem('ml and width_nm are both empty. Give one of them.')
   }
   if (!medium) return null
-  if (medium.kind !== 'material' && ml !== null) {
+  // A sheet gives both: of a medium with numbers of its own, the width.
+  if (medium.kind !== 'material' && ml !== null && widthNm === null) {
     cells.problem(`ml is ${ml}, but a medium given by numbers has no monolayer. Give width_nm and leave ml empty.`)
   }
-  return { where: cells.where, id: cells.text('id'), medium, ml, widthNm }
+  return { where: cells.where, id: cells.text('id'), medium, ml: medium.kind === 'material' ? ml : null, widthNm }
 }
 
 function notNegative(value: number): boolean {
@@ -180,7 +181,7 @@ function mediumOf(cells: Cells): LayerRow['medium'] | null {
   if (name !== null && isOptical(name)) return { kind: 'material', material: name, x: null }
   if (cells.text('index') !== null) return opticsOf(name, cells)
   const hasNumbers = cells.text('potential_eV') !== null || cells.text('mass_rel') !== null
-  if (name !== null && (!hasNumbers || cells.text('ml') !== null)) {
+  if (name !== null && (!hasNumbers || (cells.text('ml') !== null && cells.text('width_nm') === null))) {
     const builtIn = [...materialNames, ...opticalNames]
     const near = nearest(name, builtIn)
     const remedy = near.length > 0 ? `Did you mean ${near.join(' or ')}?` : `Built in: ${builtIn.join(', ')}.`

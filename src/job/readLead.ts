@@ -77,6 +77,11 @@ export function readLead(
 
   function fixed(option: MediumOption | null): MediumOption | null {
     if (option === null) return null
+    if (side === 'entry' && option.kind === 'material' && option.own?.potentialEv !== undefined) {
+      const rule = `${option.own.name} has an edge of its own, but every energy counts from the entry's edge.`
+      problems.add(path, rule, 'Take "potential" out of it, or make another medium the entry.')
+      return null
+    }
     if (listsOf(option).every((list) => list.length === 1)) return option
     problems.add(
       path,

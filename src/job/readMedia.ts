@@ -2,7 +2,7 @@ import { isMaterial, isOptical, materialNames, nearest, needsX, opticalNames } f
 import type { Tables } from './CsvTable.js'
 import type { Loose } from './checkShape.js'
 import { stepped, stepsBetween } from './decimal.js'
-import type { Kind, MediumOption } from './job.js'
+import type { Kind, MediumOption, Override } from './job.js'
 import { shortened } from './problemAt.js'
 import type { DimensionName } from './quantities.js'
 import type { Reader } from './Reader.js'
@@ -42,10 +42,30 @@ export function readMedia(media: Loose<JobAsWritten>['media'], kind: Kind, table
   return { kind, own: found }
 
   function readMedium(
-    { table, ...numbers }: Numbers & { readonly table?: string },
+    {
+      table,
+      material,
+      x,
+      ...numbers
+    }: Numbers & {
+      readonly table?: string
+      readonly material?: string
+      readonly x?: string | number
+    },
     path: Path,
     name: string,
   ): MediumOption | null {
+    if (material !== undefined) {
+      if (table !== undefined)
+        reader.problems.addAtKey([...path, 'table'], '"table" has no place beside "material".', 'Keep one of the two.')
+      return readOverride(material, x, numbers, path, name)
+    }
+    if (x !== undefined)
+      reader.problems.addAtKey(
+        [...path, 'x'],
+        '"x" belongs to a material, and none is named.',
+        'Add "material: AlGaAs".',
+      )
     if (table === undefined) return readNumbers(numbers, path, name, kind, reader)
     for (const key of Object.keys(numbers)) {
       reader.problems.addAtKey([...path, key], `"${key}" has no place beside "table".`, 'Keep one of the two.')
@@ -53,7 +73,53 @@ export function readMedia(media: Loose<JobAsWritten>['media'], kind: Kind, table
     const rows = readTable(table, [...path, 'table'], tables, reader)
     return rows && { kind: 'table', name, rows }
   }
+
+  /** A built-in material with single numbers of the user's own. */
+  function readOverride(
+    material: string,
+    x: string | number | undefined,
+    numbers: Numbers,
+    path: Path,
+    name: string,
+  ): MediumOption | null {
+    const known: KnownMedia = { kind, own: new Map() }
+    const composition = x === undefined ? null : readComposition(x, [...path, 'x'], reader)
+    const option = readNamed(material, [...path, 'material'], composition, known, reader)
+    if (option?.kind !== 'material') return null
+    if (isAlloy(material, known) && option.x === null) {
+      if (x === undefined)
+        reader.problems.add([...path, 'x'], `${material} is an alloy and needs a composition.`, 'Add "x: 0.3".')
+      return null
+    }
+    const own: { -readonly [K in keyof Override]: Override[K] } = { name }
+    for (const [key, dimension, limits, unit, as] of overridden) {
+      const written = numbers[key]
+      if (written === undefined) continue
+      const values = choices(written, [...path, key], dimension, limits, unit, reader)
+      if (values === null) continue
+      if (values.length > 1)
+        reader.complain([...path, key], 'is a range, where one number is expected', 'Write one number.')
+      own[as] = values[0]
+    }
+    if (Object.keys(own).length === 1 && Object.keys(numbers).length === 0) {
+      const what = kind === 'electron' ? '"mass: 0.146"' : '"index: 1.465"'
+      reader.problems.add(
+        path,
+        `${name} is ${material} as it is listed.`,
+        `Add what is different, like ${what}, or write ${material}.`,
+      )
+    }
+    return { ...option, own }
+  }
 }
+
+const overridden = [
+  ['potential', 'energy', [-20, 20], 'eV', 'potentialEv'],
+  ['mass', 'plain', [1e-4, 100], '', 'massRel'],
+  ['alpha', 'nonparabolicity', [0, 1000], '/eV', 'alphaPerEv'],
+  ['index', 'plain', [1e-3, 20], '', 'index'],
+  ['extinction', 'plain', [0, 100], '', 'extinction'],
+] as const
 
 /** A medium by numbers; every number may be a range with a step. Null where one is missing or wrong. */
 export function readNumbers(

@@ -82,6 +82,11 @@ const item: z.ZodType<ItemAsWritten, ItemAsWritten> = z.strictObject({
 const medium = z.strictObject({
   ...numbers('range'),
   table: z.string().optional().describe('A CSV beside the job: wavelength_nm, n, k.'),
+  material: z
+    .string()
+    .optional()
+    .describe('A built-in material of which single numbers are replaced: { material: AlAs, mass: 0.146 }.'),
+  x: z.union([z.number(), z.string()]).optional().describe('Its composition, if it is an alloy.'),
 })
 
 const condition = {

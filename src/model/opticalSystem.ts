@@ -67,7 +67,7 @@ const tableNumbers = new WeakMap<object, number>()
 let tables = 0
 
 function opticsKey(choice: MediumChoice): string {
-  if (choice.kind === 'material') return choice.material
+  if (choice.kind === 'material') return `${choice.material} ${choice.own?.index ?? ''} ${choice.own?.extinction ?? ''}`
   if (choice.kind === 'index') return `[${choice.index} ${choice.extinction}]`
   if (choice.kind === 'numbers') return ''
   const number = tableNumbers.get(choice.rows) ?? ++tables

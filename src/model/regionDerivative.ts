@@ -10,7 +10,7 @@ import type { ElectronSituation, MediumChoice, Region } from './types.js'
 export function regionDerivative(choice: MediumChoice, situation: ElectronSituation): Required<Region> {
   if (choice.kind !== 'material' || choice.x === null) return { potentialEv: 0, massRel: 0, alphaPerEv: 0 }
   const { material, x } = choice
-  const at = (shift: number) => resolveRegion({ kind: 'material', material, x: x + shift }, situation).region
+  const at = (shift: number) => resolveRegion({ ...choice, x: x + shift }, situation).region
   const [far, near] = [2 * step, step].map((h) => ({ up: at(h), down: at(-h) }))
   const slope = (of: keyof Region) =>
     (8 * (near.up[of]! - near.down[of]!) - (far.up[of]! - far.down[of]!)) / (12 * step)

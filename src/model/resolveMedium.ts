@@ -13,7 +13,7 @@ export function resolveMedium(choice: MediumChoice, situation: Situation): Resol
  *
  * Pseudomorphic strain on (001): parallel = (a_sub - a)/a, perpendicular = -2 (c12/c11) parallel; the conduction edge moves by
  * a_c Tr, the gap by (a_c + a_v) Tr, hydrostatic only. Two-band materials get alpha = 1/gap of the strained gap. Numbers stay
- * as written, alpha too. Throws StackError where a material has no zero to count from (the entry is given by numbers) or no
+ * as written, alpha too; so do single numbers that the user has put in place of listed ones. Throws StackError where a material has no zero to count from (the entry is given by numbers) or no
  * gap is left, MaterialError for a material that does not exist.
  */
 export function resolveRegion(choice: MediumChoice, situation: ElectronSituation): ResolvedRegion {
@@ -33,9 +33,9 @@ export function resolveRegion(choice: MediumChoice, situation: ElectronSituation
   return {
     kind: 'electron',
     region: {
-      potentialEv: band.edgeEv - strainedBand(entry, situation).edgeEv,
-      massRel: band.massRel,
-      alphaPerEv: situation.massModel === 'two-band' ? 1 / band.gapEv : 0,
+      potentialEv: choice.own?.potentialEv ?? band.edgeEv - strainedBand(entry, situation).edgeEv,
+      massRel: choice.own?.massRel ?? band.massRel,
+      alphaPerEv: choice.own?.alphaPerEv ?? (situation.massModel === 'two-band' ? 1 / band.gapEv : 0),
     },
     monolayerNm: band.monolayerNm,
     strain: band.strain,

@@ -29,6 +29,12 @@ function constantsOf(choice: MediumChoice, rangeNm: LightSituation['rangeNm']): 
     case 'index':
       return choice
     case 'material': {
+      const { own } = choice
+      if (own) {
+        const { own: _own, ...listed } = choice
+        const { index, extinction } = constantsOf(listed, rangeNm)
+        return { index: own.index ?? index, extinction: own.extinction ?? extinction }
+      }
       const key = `${choice.material} ${rangeNm?.join(' ')}`
       const known = named.get(key)
       if (known) return known

@@ -62,8 +62,9 @@ function substrateNm(strainedTo: string | null, lead: MediumChoice | 'hard wall'
 
 function onlyChoice(option: MediumOption, lead: string): MediumChoice {
   if (option.kind === 'material') {
-    const { material, x } = option
-    return { kind: 'material', material, x: x === null ? null : only(x, `x of ${material}`, lead) }
+    const { material, x, own } = option
+    const fixed = x === null ? null : only(x, `x of ${material}`, lead)
+    return { kind: 'material', material, x: fixed, ...(own ? { own } : {}) }
   }
   if (option.kind === 'table') return option
   if (option.kind === 'index') {

@@ -1,3 +1,5 @@
+import type { Override } from '../job/index.js'
+
 /** The stacks of the public library, in its own units: eV, nm, free-electron masses, degrees. */
 
 /** A homogeneous region for electrons: m(E) = massRel (1 + alphaPerEv (E - potentialEv)). */
@@ -35,7 +37,7 @@ export interface LightStack {
 
 /** One medium out of what a job allows, with its composition or numbers fixed. */
 export type MediumChoice =
-  | { readonly kind: 'material'; readonly material: string; readonly x: number | null }
+  | { readonly kind: 'material'; readonly material: string; readonly x: number | null; readonly own?: Override }
   | {
       readonly kind: 'numbers'
       readonly name: string | null
