@@ -50,6 +50,7 @@ export function problemOf(job: Job): BoundJob {
     },
     compare: compareScores(job),
     relax: (assignment) => relax(design, target, assignment),
+    restructured: (assignment) => restructured(design, target, assignment),
   }
   return { problem, design, target, accepted }
 }
@@ -96,6 +97,23 @@ function leastMargin(
   return margins.reduce((least, margin) =>
     least === null ? margin : margin === null ? least : Math.min(least, margin),
   )
+}
+
+/** Needles by how fast they lower the merit of the fit, those that do; then the stacks without a thin layer. */
+function restructured(design: Design, target: Target, assignment: Int32Array): Int32Array[] {
+  const needles = design.needles(assignment)
+  if (needles === null) return []
+  const { systems, directions, inserted, removed } = needles
+  const size = inserted.length
+  if (size === 0 || target.fitSize === 0) return [...removed]
+  const residuals = new Float64Array(target.fitSize)
+  const jacobian = new Float64Array(target.fitSize * size)
+  target.fit(systems, directions, size, residuals, jacobian)
+  const slopes = inserted.map((_, v) => residuals.reduce((sum, r, i) => sum + r * jacobian[i * size + v], 0))
+  const falling = inserted.map((_, v) => v).filter((v) => slopes[v] < 0)
+  falling.sort((a, b) => slopes[a] - slopes[b] || a - b)
+  // A thin layer less costs nothing to try.
+  return [...falling.slice(0, 2).map((v) => inserted[v]), ...removed, ...falling.slice(2).map((v) => inserted[v])]
 }
 
 function relax(design: Design, target: Target, assignment: Int32Array): RelaxedProblem {

@@ -5,6 +5,7 @@ import { chainOf } from './chainOf.js'
 import { countStacks, countsUpperBound } from './countStacks.js'
 import { Lattice, type Stretch } from './Lattice.js'
 import { canonicalOf } from './mirror.js'
+import { needlesOf } from './needles.js'
 import { notesOf } from './notesOf.js'
 import { relaxed } from './relax.js'
 import { repaired } from './repair.js'
@@ -33,6 +34,7 @@ export function designOf(job: Job): Design {
     id: (assignment) => stackId(lattice, lattice.stretches(assignment)),
     text: (assignment) => stackText(lattice, lattice.stretches(assignment)),
     chain: () => chainOf(lattice),
+    needles: (assignment) => needlesOf(lattice, assignment),
     relax: (assignment) => relaxed(lattice, assignment),
   }
 }

@@ -50,6 +50,8 @@ export interface Design {
   text(assignment: Int32Array): string
   /** The stacks as products of their layers; null where a layer depends on more than its own places. */
   chain(): Chain | null
+  /** Stacks of another number of layers beside a stack; null where the structure is fixed. */
+  needles(assignment: Int32Array): Needles | null
   /** The continuous neighbourhood of an assignment: its lists of materials held, everything ordered set free. */
   relax(assignment: Int32Array): Relaxed
 }
@@ -70,6 +72,18 @@ export interface ChainLink {
   readonly places: Int32Array
   /** The cell of every combination of the places' choices, the last place fastest; -1 where there is none. */
   readonly cells: Int32Array
+}
+
+/** What thin layers more or less would do to a stack. */
+export interface Needles {
+  /** The stack with needles of no width, one system a condition. */
+  readonly systems: readonly WaveSystem[]
+  /** For each condition a row a needle: d(layer parameter)/d(its width), as in `Relaxed.directions`. */
+  readonly directions: readonly Float64Array[]
+  /** The stack with each needle as thin as it can be made. */
+  readonly inserted: readonly Int32Array[]
+  /** The stack without one of its thinnest layers, the thinnest first. */
+  readonly removed: readonly Int32Array[]
 }
 
 /** Free widths, compositions and numbers as one vector of variables of order one. */

@@ -21,7 +21,7 @@ const kicksInVain = 32
 /**
  * One independent start of the sampled method (design 7.2): the best of a short evolution from low-discrepancy points, each fitted in
  * its continuous widths, compositions and numbers and taken to the best corner around the fit; the best of them descends on the
- * lattice. Then the basins around: other choices of each unordered list, and kicks: where moves are priced, kicks of up to five places
+ * lattice. Then the basins around: other choices of each unordered list, another structure where the slope speaks for one, and kicks: where moves are priced, kicks of up to five places
  * that descend at once, as long as some help; else a few of up to three, each with a fit of its own. The result depends on the problem, the seed and the unit's number alone; `seed` is the same for all units of a search.
  */
 export function runUnit(problem: SearchProblem, unit: number, seed: Uint32Array | string): UnitResult {
@@ -34,7 +34,7 @@ export function runUnit(problem: SearchProblem, unit: number, seed: Uint32Array 
   })
   const first = starts.reduce((best, one) => (problem.compare(one.score, best.score) < 0 ? one : best))
   const listed = chooseLists(examiner, descend(examiner, first))
-  kicked(examiner, listed, stream)
+  kicked(examiner, restructure(examiner, listed), stream)
   const found = examiner.found()
   const stop = examiner.exhausted ? 'budget of evaluations' : 'no move helps'
   return { unit, found, ...examiner.account, stop }
@@ -77,6 +77,26 @@ function chooseLists(examiner: Examiner, from: Reached): Reached {
   return here
 }
 
+/** Takes on another structure as long as one of the most promising comes out better after a fit. */
+function restructure(examiner: Examiner, from: Reached): Reached {
+  const { problem } = examiner
+  let here = from
+  for (let round = 0; round < mostRestructured && problem.restructured; round++) {
+    const before = here
+    for (const other of problem.restructured(here.stack).slice(0, promising)) {
+      if (examiner.exhausted) return here
+      here = settled(examiner, other, here, fitEvaluations)
+      if (here !== before) break
+    }
+    if (here === before) break
+  }
+  return here
+}
+
+/** Other structures that are tried before a stack counts as settled, and how often one may be taken on. */
+const promising = 8
+const mostRestructured = 12
+
 function kicked(examiner: Examiner, from: Reached, stream: RandomStream): Reached {
   const { problem } = examiner
   const { places } = problem
@@ -106,9 +126,9 @@ const mostPlaces = { priced: 5, fitted: 3 }
 const farthestKick = 6
 
 /** Where a changed stack settles after a fit and, if it comes near, a descent; `here` where that is no better. */
-function settled(examiner: Examiner, changed: Int32Array, here: Reached): Reached {
+function settled(examiner: Examiner, changed: Int32Array, here: Reached, evaluations = refitEvaluations): Reached {
   const { problem } = examiner
-  const start = refined(examiner, problem.repair(changed), refitEvaluations)
+  const start = refined(examiner, problem.repair(changed), evaluations)
   if (examiner.bound(start.stack) / near > problem.reach(here.score)) return here
   return better(examiner, descend(examiner, start), here)
 }

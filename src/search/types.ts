@@ -31,6 +31,8 @@ export interface SearchProblem {
   score(assignment: Int32Array): Score
   /** Negative when a comes first. */
   compare(a: Score, b: Score): number
+  /** Assignments of another structure beside one, those first that promise most; absent where the structure is fixed. */
+  restructured?(assignment: Int32Array): Int32Array[]
   /** The continuous problem around an assignment, for Levenberg-Marquardt. */
   relax(assignment: Int32Array): RelaxedProblem
 }
