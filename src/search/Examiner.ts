@@ -1,5 +1,5 @@
 import type { Score } from '../target/index.js'
-import { PricedMoves } from './PricedMoves.js'
+import { PricedMoves, pricedChain } from './PricedMoves.js'
 import type { Found, SearchProblem } from './types.js'
 
 /** A stack with its score. */
@@ -65,16 +65,13 @@ export class Examiner {
 
   /** Whether the neighbours of a stack can be priced: a chain says what its points add, and its points what it lacks. */
   priced({ score }: Reached): boolean {
-    const { problem } = this
-    if (!problem.boundGuides || score.merit === 0) return false
-    const chain = problem.chain()
-    return chain !== null && chain.labels.length * chain.points.length <= mostEntries
+    return score.merit > 0 && pricedChain(this.problem) !== null
   }
 
   /** The feasible stacks with so many places moved whose points leave them within reach of one, at most `most`, the best first. */
   pricedMoves({ stack, score }: Reached, together: number, most: number): Int32Array[] {
     const { problem } = this
-    const chain = problem.chain()!
+    const chain = pricedChain(problem)!
     this.moves ??= new PricedMoves(chain, problem.places, stack)
     const reach = problem.reach(score)
     const before = this.moves.prices
@@ -126,9 +123,6 @@ export class Examiner {
 
 /** Stacks of which `best` asks the whole score. */
 const mostCompared = 6
-
-/** Matrices that a unit tabulates: some ten megabytes. */
-const mostEntries = 1_000_000
 
 /** A price at all points in bounds. */
 const priceCost = 1.5

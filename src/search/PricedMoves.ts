@@ -1,6 +1,15 @@
 import { discriminating } from './discriminating.js'
 import { choicesNear, reachOf } from './neighbours.js'
-import type { ChainPoint, SearchChain, SearchPlace } from './types.js'
+import type { ChainPoint, SearchChain, SearchPlace, SearchProblem } from './types.js'
+
+/** The chain that moves of a problem are priced by; null where its bound is read of none, or tells too little of the merit. */
+export function pricedChain(problem: SearchProblem): SearchChain | null {
+  const chain = problem.boundGuides ? problem.chain() : null
+  return chain !== null && chain.labels.length * chain.points.length <= mostEntries ? chain : null
+}
+
+/** Matrices that are tabulated: some ten megabytes. */
+const mostEntries = 1_000_000
 
 /** A stack some places away, and what the points add to its merit squared at least. */
 export interface PricedMove {

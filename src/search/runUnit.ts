@@ -24,8 +24,8 @@ const kicksInVain = 32
  * lattice. Then the basins around: other choices of each unordered list, another structure where the slope speaks for one, and kicks: where moves are priced, kicks of up to five places
  * that descend at once, as long as some help; else a few of up to three, each with a fit of its own. The result depends on the problem, the seed and the unit's number alone; `seed` is the same for all units of a search.
  */
-export function runUnit(problem: SearchProblem, unit: number, seed: Uint32Array | string): UnitResult {
-  const examiner = new Examiner(problem, budget)
+export function runUnit(problem: SearchProblem, unit: number, seed: Uint32Array | string, cost = budget): UnitResult {
+  const examiner = new Examiner(problem, cost)
   const stream = randomStream(seed, 'unit', unit)
   const members = distinct(evolve(examiner, new LowDiscrepancy(problem.places.length, seed), unit, stream))
   const starts = members.slice(0, fitted).map((member) => {
