@@ -54,6 +54,8 @@ export class Lattice {
       offset += layer.places.length
       layers.push(layer)
     }
+    const byId = new Map(layers.map((layer) => [layer.spec.id, layer]))
+    for (const layer of layers) layer.follow((id) => byId.get(id)!)
     this.layers = layers
     const [situation] = this.situations
     const biased = situation.kind === 'electron' && job.conditions.some(({ biasV }) => biasV !== 0)

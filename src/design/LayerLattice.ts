@@ -43,8 +43,10 @@ export class LayerLattice {
   private readonly longest: readonly number[]
   private readonly table = new Map<number, Candidate>()
   /** Least count over all media. */
-  readonly leastCount: number
-  private readonly stride: number
+  private least: number
+  private stride: number
+  /** The layer whose width this one follows, so many times; null: its own. */
+  private widthOf: { readonly layer: LayerLattice; readonly times: number } | null = null
 
   constructor(
     readonly spec: LayerSpec,
@@ -59,14 +61,71 @@ export class LayerLattice {
       choices > 1 ? offset + places.push({ name: `${spec.id}.${what}`, choices, ordered }) - 1 : -1
     const digits = [
       add('material', this.options.length, false),
-      ...parameters.map((name, p) => add(name, this.longest[p], true)),
+      ...parameters.map((name, p) => (p === 0 && spec.xLike !== undefined ? -1 : add(name, this.longest[p], true))),
     ]
-    const [first, last, stride] = this.countRange()
-    this.leastCount = first
+    const [first, last, stride] = spec.widthLike ? [0, 0, 1] : this.countRange()
+    this.least = first
     this.stride = stride
-    const width = this.widthIsFixed ? -1 : add('width', (last - first) / stride + 1, true)
+    const width = spec.widthLike || this.widthIsFixed ? -1 : add('width', (last - first) / stride + 1, true)
     this.placeOf = Int32Array.from([...digits, width])
     this.places = places
+  }
+
+  /** From one count to the next. */
+  get strideOfCounts(): number {
+    return this.stride
+  }
+
+  get leastCount(): number {
+    return this.least
+  }
+
+  /** Whether what this layer is hangs on places of another one. */
+  get tied(): boolean {
+    return this.spec.widthLike !== undefined || this.spec.xLike !== undefined
+  }
+
+  /** Ties to other layers, once all are there: this layer reads their places. */
+  follow(layerOf: (id: string) => LayerLattice): void {
+    const { widthLike, xLike } = this.spec
+    if (xLike !== undefined) this.placeOf[1] = layerOf(xLike).placeOf[1]
+    if (!widthLike) return
+    const layer = layerOf(widthLike.like)
+    this.widthOf = { layer, times: widthLike.times }
+    this.placeOf[widthRole] = layer.placeOf[widthRole]
+    const scale = this.counted ? widthLike.times : 1
+    this.least = scale * layer.least
+    this.stride = scale * layer.stride
+    this.table.clear()
+    if (!Number.isInteger(this.least) || !Number.isInteger(this.stride)) {
+      throw new DesignError(
+        `Layer ${this.spec.id}: ${widthLike.times} times the width of ${widthLike.like} are not whole monolayers. Write a whole number of times.`,
+      )
+    }
+  }
+
+  /** Whether widths count monolayers, in which a tied one is that of the other times its factor; else the steps are as much longer. */
+  private get counted(): boolean {
+    const [medium] = this.widthMedia(0)
+    return medium.widths.monolayers
+  }
+
+  /** The widths of a medium that follow those of another layer. */
+  private followed(resolved: ResolvedMedium): Widths {
+    const { layer, times } = this.widthOf!
+    const { monolayers, stepNm, gap } = widthsOf(layer.spec.width!, resolved, this.growth)
+    const place = layer.placeOf[widthRole]
+    const scale = monolayers ? times : 1
+    const first = scale * layer.least
+    const last = place < 0 ? first : first + scale * layer.stride * (layer.places[layer.places.length - 1].choices - 1)
+    return {
+      first,
+      last,
+      stride: scale * layer.stride,
+      stepNm: monolayers ? stepNm : times * stepNm,
+      gap: scale * gap,
+      monolayers,
+    }
   }
 
   private get widthIsFixed(): boolean {
@@ -175,7 +234,7 @@ export class LayerLattice {
     const digits = this.digitsOf(code)
     const choice = choiceOf(this.options[digits[0]], digits.slice(1))
     const resolved = resolveMedium(choice, this.situation)
-    const widths = widthsOf(this.spec.width!, resolved, this.growth)
+    const widths = this.widthOf ? this.followed(resolved) : widthsOf(this.spec.width!, resolved, this.growth)
     const medium = { choice, key: mediumKey(choice), alloy: alloyOf(choice), resolved, widths, digits }
     this.table.set(code, medium)
     return medium

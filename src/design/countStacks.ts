@@ -13,6 +13,7 @@ import { countsOf } from './widthsOf.js'
  * the formula gives an upper bound (see `countsUpperBound`).
  */
 export function countStacks(lattice: Lattice): number {
+  if (lattice.layers.some(({ tied }) => tied) && placeProduct(lattice) > enumerated) return placeProduct(lattice)
   const all = lattice.layers.map((_, i) => new Set([i]))
   const assignments = count(
     lattice,
@@ -35,6 +36,7 @@ export function countsUpperBound(lattice: Lattice): boolean {
 /** No formula tells how many there are: layers may coincide, widths may not fall, or images depend on counts of repetitions. */
 function needsEach(lattice: Lattice): boolean {
   return (
+    lattice.layers.some(({ tied }) => tied) ||
     mayCoincide(lattice) ||
     lattice.rising.length > 0 ||
     lattice.totalNm !== null ||

@@ -32,7 +32,11 @@ export function expandLayers(stack: Pick<StackSpec, 'layers' | 'mirror'>): Expan
     described,
     repeats: free.map(({ id, repeat: [from, to] }, i) => ({ name: `${id ?? `period-${i + 1}`}.repeat`, from, to })),
     slots: (counts) => {
-      const countOf = (period: PeriodSpec) => counts[free.indexOf(period)] ?? period.repeat[0]
+      const countOf = (period: PeriodSpec) => {
+        const own = period.repeatLike === undefined
+        const i = free.findIndex((one) => (own ? one === period : one.id === period.repeatLike))
+        return counts[i] ?? period.repeat[0]
+      }
       return unfold(stack.layers, stack.mirror, countOf).map(({ id, like }) => ({
         id,
         layer: numberOf.get(like ?? id)!,
@@ -47,7 +51,7 @@ function collect(items: readonly StackItem[], layers: LayerSpec[], free: PeriodS
       if (item.like === null) layers.push(item)
       continue
     }
-    if (item.repeat[0] < item.repeat[1]) free.push(item)
+    if (item.repeat[0] < item.repeat[1] && item.repeatLike === undefined) free.push(item)
     collect(item.period, layers, free)
     collect(item.between, layers, free)
   }

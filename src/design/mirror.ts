@@ -21,6 +21,20 @@ export function partners(lattice: Lattice, assignment: Int32Array): number[][] {
   return found
 }
 
+/** What two layers share may keep one of them from taking its place in the image. */
+function isReversed(lattice: Lattice, assignment: Int32Array, image: Int32Array): boolean {
+  const [ours, theirs] = [lattice.stretches(assignment), lattice.stretches(image).reverse()]
+  return (
+    ours.length === theirs.length &&
+    ours.every(({ medium, count }, i) => {
+      const other = theirs[i]
+      return (
+        medium.key === other.medium.key && count === other.count && medium.widths.stepNm === other.medium.widths.stepNm
+      )
+    })
+  )
+}
+
 /** Whether the reversed stack is listed before this one. */
 function isBehind(stretches: readonly Stretch[]): boolean {
   for (let i = 0, j = stretches.length - 1; j >= 0; i++, j--) {
@@ -69,5 +83,5 @@ function mirrored(lattice: Lattice, assignment: Int32Array): Int32Array | null {
     layer.writeMedium(own, out)
     layer.writeCount(own, count, out)
   }
-  return lattice.feasible(out) ? out : null
+  return lattice.feasible(out) && isReversed(lattice, assignment, out) ? out : null
 }

@@ -18,11 +18,12 @@ const mostRemoved = 4
  * needle of a neighbour's medium cuts a layer in two, and the layers between it and two neighbours of no width move up to make room.
  * With it comes the stack itself with needles of no width at all those places at once, so that one adjoint sweep has the slopes of all
  * (the needle variation of Tikhonravov, Trubetskov and DeBell, Appl. Opt. 35, 5493 (1996), from memory). Null where layers stand
- * several times, where none may vanish, and under a bias.
+ * several times or follow one another, where none may vanish, and under a bias.
  */
 export function needlesOf(lattice: Lattice, assignment: Int32Array): Needles | null {
   const slots = lattice.slots(assignment)
   const once = slots.length === lattice.layers.length && slots.every(({ layer }, i) => layer === i)
+  if (lattice.layers.some(({ tied }) => tied)) return null
   if (!once || lattice.layers.every(({ leastCount }) => leastCount > 0)) return null
   if (lattice.situations.some((situation) => situation.kind === 'electron' && situation.biasV !== 0)) return null
   const cells = lattice.cells(assignment)

@@ -51,6 +51,8 @@ class RelaxedStack implements Relaxed {
   readonly place: Int32Array
   private readonly cells: readonly Cell[]
   private readonly variables: readonly Variable[]
+  /** What each variable moves beside its own layer. */
+  private readonly followers: readonly (readonly Follower[])[]
 
   constructor(
     private readonly lattice: Lattice,
@@ -58,6 +60,7 @@ class RelaxedStack implements Relaxed {
   ) {
     this.cells = lattice.cells(origin)
     this.variables = lattice.layers.flatMap((layer, i) => variablesOf(layer, i, this.cells[i]))
+    this.followers = this.variables.map((variable) => followersOf(lattice, variable))
     this.start = Float64Array.from(this.variables, ({ start }) => start)
     this.lower = Float64Array.from(this.variables, ({ lower }) => lower)
     this.upper = Float64Array.from(this.variables, ({ upper }) => upper)
@@ -92,10 +95,16 @@ class RelaxedStack implements Relaxed {
     const row = slots.length * stride
     const out = new Float64Array(this.variables.length * row)
     this.variables.forEach((variable, v) => {
-      const change = this.changeOf(variable, layers[variable.layer], situation)
-      slots.forEach(({ layer }, slot) => {
-        if (layer === variable.layer) out.set(change, v * row + slot * stride)
-      })
+      for (const { layer: moved, factor } of [{ layer: variable.layer, factor: 1 }, ...this.followers[v]]) {
+        const change = this.changeOf(
+          { ...variable, layer: moved, unit: variable.unit * factor },
+          layers[moved],
+          situation,
+        )
+        slots.forEach(({ layer }, slot) => {
+          if (layer === moved) out.set(change, v * row + slot * stride)
+        })
+      }
     })
     return out
   }
@@ -123,7 +132,10 @@ class RelaxedStack implements Relaxed {
   /** The described layers at the variables' values. */
   private layersAt(values: Float64Array): FreeLayer[] {
     const numbers = this.cells.map(() => new Map<number, number>())
-    this.variables.forEach(({ layer, what, unit }, v) => void numbers[layer].set(what, values[v] * unit))
+    this.variables.forEach(({ layer, what, unit }, v) => {
+      numbers[layer].set(what, values[v] * unit)
+      for (const { layer: moved, factor } of this.followers[v]) numbers[moved].set(what, values[v] * unit * factor)
+    })
     return this.cells.map(({ medium, count }, i) => {
       const free = numbers[i]
       const moved = [...free.keys()].some((what) => what !== width)
@@ -155,9 +167,25 @@ function strideOf({ kind }: Situation): number {
   return kind === 'electron' ? 4 : 2
 }
 
+/** A layer that a variable moves beside its own, so many times as far. */
+interface Follower {
+  readonly layer: number
+  readonly factor: number
+}
+
+function followersOf({ layers }: Lattice, { layer, what }: Variable): Follower[] {
+  const { id } = layers[layer].spec
+  return layers.flatMap(({ spec, strideOfCounts }, i) => {
+    if (what === 0) return spec.xLike === id ? { layer: i, factor: 1 } : []
+    if (what !== width || spec.widthLike?.like !== id) return []
+    return { layer: i, factor: strideOfCounts / layers[layer].strideOfCounts }
+  })
+}
+
 function variablesOf(layer: LayerLattice, number: number, { medium, count }: Cell): Variable[] {
   const variables: Variable[] = []
   parameters.forEach((name, what) => {
+    if (name === 'x' && layer.spec.xLike !== undefined) return
     const values = valuesOf(layer.options[medium.digits[0]], what)
     if (values.length < 2 || name === 'extinction') return
     const [first, last] = [values[0], values[values.length - 1]]
@@ -167,7 +195,7 @@ function variablesOf(layer: LayerLattice, number: number, { medium, count }: Cel
   })
   const { first, last, stride: by, stepNm } = medium.widths
   const choices = countsOf(medium.widths)
-  if (choices > 1) {
+  if (choices > 1 && !layer.spec.widthLike) {
     const unit = (medium.resolved.kind === 'light' ? filmNm : 1) / stepNm
     const most = first + by * Math.floor((last - first) / by)
     const [start, lower, upper] = [count, first, most].map((n) => n / unit)

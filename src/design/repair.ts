@@ -108,7 +108,9 @@ interface Step {
  * once the limit is reached costs no branching, so that there are at most (alloys)^limit leaves; `mostNodes` ends it before.
  */
 function limitAlloys(lattice: Lattice, out: Int32Array): void {
-  const steps = lattice.layers.map((layer) => stepOf(lattice, layer, layer.medium(out)!))
+  // A composition that follows another comes along.
+  const own = lattice.layers.filter(({ spec }) => spec.xLike === undefined)
+  const steps = own.map((layer) => stepOf(lattice, layer, layer.medium(out)!))
   const chosen: Candidate[] = []
   let best: Candidate[] | null = null
   let bestCost = Number.POSITIVE_INFINITY

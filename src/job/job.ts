@@ -67,6 +67,10 @@ export interface LayerSpec {
   /** Absent (null) exactly when `like` is given. */
   readonly media: readonly MediumOption[] | null
   readonly width: WidthSpec | null
+  /** The width is so many times that of another layer, counted in monolayers (`width` says what that can be); absent: its own. */
+  readonly widthLike?: { readonly like: string; readonly times: number }
+  /** The composition is that of another layer; absent: its own. */
+  readonly xLike?: string
 }
 
 export interface PeriodSpec {
@@ -74,6 +78,8 @@ export interface PeriodSpec {
   readonly id: string | null
   /** Least and most; equal: a fixed count, else the search chooses. */
   readonly repeat: readonly [number, number]
+  /** The count is that of another period; absent: its own. */
+  readonly repeatLike?: string
   readonly period: readonly StackItem[]
   /** Stands between repetitions only. */
   readonly between: readonly StackItem[]

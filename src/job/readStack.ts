@@ -45,6 +45,8 @@ export function readStack(
   const periods = new Map<string, Path>()
   const electrons = media.kind === 'electron'
   const own: OwnIds = { suffix: '', ids: new Set() }
+  const counted = new Map<string, readonly [number, number]>()
+  const following: { readonly spec: PeriodSpec; readonly path: Path }[] = []
   if (stack === undefined) return { spec: null, layers }
   const entry = readLead(stack.entry, 'entry', media, reader) as MediumOption | null
   const exit = readLead(stack.exit, 'exit', media, reader)
@@ -52,6 +54,7 @@ export function readStack(
   const items = stack.layers ? readItems(stack.layers, ['stack', 'layers']) : null
   const mirror = readMirror(stack.mirror, stack.layers, ['stack', 'mirror'])
   const tied = tieLayers(layers, periods, reader)
+  const counts = tieCounts()
   if (items && problems.count === before && countLayers(items, mirror) > mostLayers) {
     problems.addAtKey(['stack', 'layers'], `The stack has more than ${mostLayers} layers.`, 'Repeat less.')
   }
@@ -63,7 +66,7 @@ export function readStack(
   const spec: StackSpec = {
     entry,
     exit,
-    layers: items.map((item) => withTies(item, tied)),
+    layers: items.map((item) => withTies(item, tied, counts)),
     mirror,
     massModel: stack.mass ?? 'two-band',
     strainedTo,
@@ -99,14 +102,30 @@ export function readStack(
         electrons ? 'Add "width: 6..20 ML".' : 'Add "width: 20..200 nm".',
       )
     }
-    // A tied width was refused before; only the text of a width is left.
+    // A tied width or composition waits for the layer that it follows.
     const text = typeof item.width === 'object' ? undefined : item.width
+    const widthLike = typeof item.width === 'object' ? readTie(item.width, [...path, 'width']) : null
+    const tiedX = typeof item.x === 'object' && 'like' in item.x ? readTie(item.x, [...path, 'x']) : null
+    if (tiedX && tiedX.times !== 1)
+      problems.addAtKey([...path, 'x', 'times'], '"times" belongs to a width.', 'Take it out.')
     const width = form === 'like' ? null : readWidth(text, [...path, 'width'], media, stepNm, electrons, reader)
     const like =
       form === 'like' && item.like !== undefined ? (own.ids.has(item.like) ? ownId(item.like) : item.like) : null
-    const spec: LayerSpec = { kind: 'layer', id: id ?? '', like, media, width }
+    const ties = { ...(widthLike ? { widthLike } : {}), ...(tiedX ? { xLike: tiedX.like } : {}) }
+    const spec: LayerSpec = { kind: 'layer', id: id ?? '', like, media, width, ...ties }
     layers.push({ path, writtenId: id, spec })
     return [spec]
+  }
+
+  function readTie(
+    { like, times = 1 }: { readonly like?: string; readonly times?: number },
+    path: Path,
+  ): { readonly like: string; readonly times: number } | null {
+    if (!(times > 0 && times <= 1000)) {
+      reader.complain([...path, 'times'], 'is outside 0..1000', 'Write a number above 0, like 2 or 0.5.')
+      return null
+    }
+    return like === undefined ? null : { like: own.ids.has(like) ? ownId(like)! : like, times }
   }
 
   /** An id inside a period whose repetitions are not alike stands once for each: with the number behind it. */
@@ -154,11 +173,19 @@ export function readStack(
     if (id !== null) periods.set(id, path)
     missingOf(path, 'repeat')
     missingOf(path, 'period')
+    const follows = typeof item.repeat === 'object' ? (item.repeat.like ?? null) : null
     const repeat = readRepeat(item.repeat, [...path, 'repeat'])
     const period = item.period ? readItems(item.period, [...path, 'period']) : []
     const mirror = readMirror(item.mirror, item.period, [...path, 'mirror'])
     const between = item.between ? readItems(item.between, [...path, 'between']) : []
-    return { kind: 'period', id, repeat: repeat ?? [1, 1], period, between, mirror }
+    const spec: PeriodSpec = { kind: 'period', id, repeat: repeat ?? [1, 1], period, between, mirror }
+    if (follows === null) {
+      if (id !== null && repeat) counted.set(id, repeat)
+      return spec
+    }
+    const tied = { ...spec, repeatLike: follows }
+    following.push({ spec: tied, path: [...path, 'repeat', 'like'] })
+    return tied
   }
 
   /** `3`, or `2..5`. */
@@ -181,10 +208,33 @@ export function readStack(
     return null
   }
 
+  /** The range of the count that a tied one follows. */
+  function tieCounts(): ReadonlyMap<PeriodSpec, readonly [number, number]> {
+    const found = new Map<PeriodSpec, readonly [number, number]>()
+    for (const { spec, path } of following) {
+      const range = counted.get(spec.repeatLike!)
+      if (range !== undefined) {
+        found.set(spec, range)
+        continue
+      }
+      const ids = [...counted.keys()]
+      const near = nearest(spec.repeatLike!, ids)
+      const self = spec.repeatLike === spec.id
+      const rule = self
+        ? `The period "${shortened(spec.repeatLike!)}" is tied to itself.`
+        : `There is no period with the id "${shortened(spec.repeatLike!)}" and a count of its own.`
+      const remedy =
+        near.length > 0 ? `Did you mean "${near[0]}"?` : 'Give the period that is meant an id, like "id: mirror".'
+      problems.add(path, rule, remedy)
+    }
+    return found
+  }
+
   function readMaterial(item: Item, path: Path): readonly MediumOption[] | null {
     const xPath = [...path, 'x']
     const hasX = electrons && problems.source.has(xPath)
     const fromSources = typeof item.x === 'object' && 'from' in item.x
+    const tiedX = typeof item.x === 'object' && 'like' in item.x
     const x = fromSources ? null : readComposition(item.x, xPath, reader)
     const { material } = item
     if (material === undefined) return null
@@ -225,7 +275,7 @@ export function readStack(
       )
     }
     const complete =
-      options.length === names.length && names.length > 0 && (alloys.length === 0 || x !== null || fromSources)
+      options.length === names.length && names.length > 0 && (alloys.length === 0 || x !== null || fromSources || tiedX)
     return complete ? options : null
   }
 
@@ -411,8 +461,17 @@ function countRepeated({ repeat, period, between, mirror }: PeriodSpec): number 
 }
 
 /** Puts the layers as tied in the place of those that were read. */
-function withTies(item: StackItem, tied: ReadonlyMap<LayerSpec, LayerSpec>): StackItem {
+function withTies(
+  item: StackItem,
+  tied: ReadonlyMap<LayerSpec, LayerSpec>,
+  counts: ReadonlyMap<PeriodSpec, readonly [number, number]>,
+): StackItem {
   if (item.kind === 'layer') return tied.get(item) ?? item
-  const inside = (items: readonly StackItem[]) => items.map((inner) => withTies(inner, tied))
-  return { ...item, period: inside(item.period), between: inside(item.between) }
+  const inside = (items: readonly StackItem[]) => items.map((inner) => withTies(inner, tied, counts))
+  return {
+    ...item,
+    repeat: counts.get(item) ?? item.repeat,
+    period: inside(item.period),
+    between: inside(item.between),
+  }
 }

@@ -51,8 +51,8 @@ type Keys = { readonly [room in Room]?: Readonly<Record<string, string>> }
 type Map = Record<string, unknown>
 
 /**
- * Reports keys that belong to the other kind of job, and those whose capability is not built yet, each with what to do instead; and
- * takes them out of the value (in place), so that nothing else trips over them.
+ * Reports keys that belong to the other kind of job, each with what to do instead, and takes them out of the value (in place), so that
+ * nothing else trips over them.
  */
 export function refuse(job: unknown, kind: Kind, problems: Problems): void {
   const keys = kind === 'electron' ? ofLight : ofElectrons
@@ -73,11 +73,6 @@ export function refuse(job: unknown, kind: Kind, problems: Problems): void {
       const map = item as Map
       const here = [...path, i]
       visit(map, 'item', here)
-      const { width, x, repeat } = map
-      if (isMap(width)) notYet(map, 'width', 'A width tied alone, "width: { like: ... }",', tied, here)
-      if (isMap(x) && x.like !== undefined)
-        notYet(map, 'x', 'A composition tied alone, "x: { like: ... }",', tied, here)
-      if (isMap(repeat)) notYet(map, 'repeat', 'A tied count, "repeat: { like: ... }",', 'Write the number.', here)
       items(map.period, [...here, 'period'])
       items(map.between, [...here, 'between'])
     })
@@ -92,15 +87,7 @@ export function refuse(job: unknown, kind: Kind, problems: Problems): void {
       delete value[key]
     }
   }
-
-  function notYet(map: Map, key: string, what: string, instead: string, path: Path): void {
-    const rule = `${what} is part of the job format, but this version can't run it yet.`
-    problems.addAtKey([...path, key], rule, instead)
-    delete map[key]
-  }
 }
-
-const tied = 'Write "like: id" to tie material, composition and width together, or give it a range of its own.'
 
 function isMap(value: unknown): value is Map {
   return typeof value === 'object' && value !== null && !Array.isArray(value)

@@ -9,7 +9,7 @@ import { type DimensionName, dimensions } from './quantities.js'
 
 const like = z.strictObject({
   like: z.string().describe('The id of the layer (or period) to follow.'),
-  times: z.number().optional().describe('A factor on the width, counted in monolayers.'),
+  times: z.number().optional().describe('A factor on the width, counted in monolayers; 1 by default.'),
 })
 
 const lead = z

@@ -54,7 +54,7 @@ describe('the JSON Schema', () => {
   })
 })
 
-describe('a key that electrons have not, or not yet', () => {
+describe('a key that electrons have not', () => {
   const text = `format: 1
 name: halm-80
 kind: electron
@@ -66,24 +66,6 @@ target:
   scan: 5..200 meV
   demands: [{ peak: 80 meV, within: 5 meV }]
 `
-  const later: Record<string, string> = {
-    'tied count': text.replace(
-      '{ id: b',
-      '{ repeat: { like: a }, period: [{ material: GaAs, width: 5 ML }] }, { id: b',
-    ),
-    'width: { like': text.replace('width: 5 ML', 'width: { like: b, times: 2 }'),
-    'x: { like': text.replace('material: AlAs', 'material: AlGaAs, x: { like: b }'),
-  }
-  for (const [key, job] of Object.entries(later)) {
-    test(`${key} is refused with a sentence that says what to do instead`, () => {
-      const error = errorOf(job)
-      const refusal = error.problems.find(({ rule }) => rule.includes('part of the job format, but this version'))
-      expect(refusal?.rule, error.message).toContain(key)
-      expect(refusal?.remedy).not.toBe('')
-      expect(error.problems).toHaveLength(1)
-    })
-  }
-
   const ofLight: Record<string, string> = {
     angle: `${text}angle: 5 deg\n`,
     polarisation: `${text}polarisation: p\n`,
