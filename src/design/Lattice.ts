@@ -5,6 +5,7 @@ import { expandLayers, type FreeRepeat, type Slot } from './expandLayers.js'
 import { alloyOf, type Candidate, type Cell, LayerLattice } from './LayerLattice.js'
 import { mediumKey } from './mediumIdentity.js'
 import { repaired } from './repair.js'
+import { type StrainLimits, strainLimits } from './strainLimits.js'
 import type { Place } from './types.js'
 
 /** A stretch of one medium as it is grown. */
@@ -30,6 +31,7 @@ export class Lattice {
   private readonly knownSlots = new Map<string, readonly SlicedSlot[]>()
   readonly places: readonly Place[]
   readonly situations: readonly Situation[]
+  private readonly strain: StrainLimits | null
   /** Limits of the whole stack, nm; null: none. */
   readonly totalNm: readonly [number, number] | null
   /** At most so many different alloys in a stack, those of the leads free. */
@@ -80,6 +82,7 @@ export class Lattice {
     ]
     this.compositions = growth.compositions
     this.totalNm = growth.totalNm
+    this.strain = strainLimits(growth, this.situations[0])
     this.rising = stack.rising.map((id) => slotsAt(repeats.map(({ to }) => to)).find((slot) => slot.id === id)!.layer)
     const { entry, exit } = this.situations[0]
     const leads = exit === 'hard wall' ? [entry] : [entry, exit]
@@ -95,18 +98,20 @@ export class Lattice {
       job.kind === 'light' ? null : strainedTo(stack.strainedTo, growth.startsAt === 'entry' ? entry : exit)
     if (!this.feasible(repaired(this, new Int32Array(this.places.length)))) {
       throw new DesignError(
-        this.totalNm !== null && !this.fits(repaired(this, new Int32Array(this.places.length)))
-          ? `No stack is ${growth.totalNm![0]} to ${growth.totalNm![1]} nm thick with these widths. Change growth.total, or the ranges.`
-          : this.rising.length > 0
-            ? `No stack has widths that rise along ${stack.rising.join(', ')}. Let the ranges of the later ones reach as far.`
-            : `No stack holds at most ${growth.compositions} different alloys with these compositions. ` +
-              'Raise growth.compositions, or give the layers compositions in common.',
+        this.strain !== null && !this.bears(repaired(this, new Int32Array(this.places.length)))
+          ? 'No stack was found that bears its strain. Raise growth.strain, let strained layers be thinner, or balance them.'
+          : this.totalNm !== null && !this.fits(repaired(this, new Int32Array(this.places.length)))
+            ? `No stack is ${growth.totalNm![0]} to ${growth.totalNm![1]} nm thick with these widths. Change growth.total, or the ranges.`
+            : this.rising.length > 0
+              ? `No stack has widths that rise along ${stack.rising.join(', ')}. Let the ranges of the later ones reach as far.`
+              : `No stack holds at most ${growth.compositions} different alloys with these compositions. ` +
+                'Raise growth.compositions, or give the layers compositions in common.',
       )
     }
   }
 
   feasible(assignment: Int32Array): boolean {
-    if (this.compositions === null && this.rising.length === 0 && this.totalNm === null) {
+    if (this.compositions === null && this.rising.length === 0 && this.totalNm === null && this.strain === null) {
       return this.layers.every((layer) => layer.cell(assignment) !== null)
     }
     const alloys = new Set<string>()
@@ -117,7 +122,22 @@ export class Lattice {
       if (alloy !== null) alloys.add(alloy)
     }
     if (this.compositions !== null && alloys.size > this.compositions) return false
-    return this.rises(assignment) && this.fits(assignment)
+    return this.rises(assignment) && this.fits(assignment) && this.bears(assignment)
+  }
+
+  /** Whether something other than each layer's own places decides what is makeable. */
+  get limitsWholes(): boolean {
+    return this.rising.length > 0 || this.totalNm !== null || this.strain !== null
+  }
+
+  /** Whether the stack and its layers bear their strain. */
+  bears(assignment: Int32Array): boolean {
+    return this.strain === null || this.excessStrain(assignment) <= 0
+  }
+
+  /** How far a stack is beyond what it may be strained: 0 where it is not. Relative widths and strains, added up. */
+  excessStrain(assignment: Int32Array): number {
+    return this.strain === null ? 0 : this.strain.excess(this.stretches(assignment))
   }
 
   /** Whether the stack is as thick as it may be. */

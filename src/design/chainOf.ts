@@ -6,13 +6,13 @@ import type { Chain } from './types.js'
 
 /**
  * The lattice as a chain of independent layers. Null where layers depend on more than their own places (a bias falls over all of
- * them, a width or composition is that of another, a count of repetitions moves them, widths rise along them, their sum is limited), where a medium absorbs or a stack is more
+ * them, a width or composition is that of another, a count of repetitions moves them, widths rise along them, their sum or strain is limited), where a medium absorbs or a stack is more
  * than one wave, and where they are too many to tabulate.
  */
 export function chainOf(lattice: Lattice): Chain | null {
-  const { layers, situations, repeats, rising, totalNm } = lattice
+  const { layers, situations, repeats } = lattice
   if (layers.some(({ tied }) => tied)) return null
-  if (repeats.length > 0 || rising.length > 0 || totalNm !== null) return null
+  if (repeats.length > 0 || lattice.limitsWholes) return null
   if (situations.some((situation) => situation.kind === 'electron' && situation.biasV !== 0)) return null
   if (layers.some((layer) => combinations(layer) > mostCells)) return null
   const cells: Cell[] = []

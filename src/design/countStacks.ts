@@ -9,7 +9,7 @@ import { countsOf } from './widthsOf.js'
  *
  * Where no two layers can merge and none can vanish, every assignment is a stack of its own and nothing is enumerated: with N
  * assignments, M of them with a mirror image on the lattice and F their own image, there are N - (M - F)/2 stacks. The limit on
- * alloys is kept by counting along sets of alloys. Else, and where widths may not fall, the stacks are told apart one by one up to `enumerated` assignments; beyond,
+ * alloys is kept by counting along sets of alloys. Else, and where widths may not fall, the whole is limited, the stacks are told apart one by one up to `enumerated` assignments; beyond,
  * the formula gives an upper bound (see `countsUpperBound`).
  */
 export function countStacks(lattice: Lattice): number {
@@ -38,8 +38,7 @@ function needsEach(lattice: Lattice): boolean {
   return (
     lattice.layers.some(({ tied }) => tied) ||
     mayCoincide(lattice) ||
-    lattice.rising.length > 0 ||
-    lattice.totalNm !== null ||
+    lattice.limitsWholes ||
     (lattice.repeats.length > 0 && lattice.reversible)
   )
 }

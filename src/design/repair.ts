@@ -1,5 +1,5 @@
 import type { Lattice } from './Lattice.js'
-import { type Candidate, type LayerLattice, parameters, valuesOf } from './LayerLattice.js'
+import { type Candidate, type LayerLattice, parameters, valuesOf, widthRole } from './LayerLattice.js'
 import { countsOf } from './widthsOf.js'
 
 /**
@@ -14,7 +14,34 @@ export function repaired(lattice: Lattice, assignment: Int32Array): Int32Array {
   if (lattice.compositions !== null && !lattice.feasible(out)) limitAlloys(lattice, out)
   if (!lattice.feasible(out)) raise(lattice, out)
   if (!lattice.fits(out)) intoTotal(lattice, out)
+  if (!lattice.bears(out)) relieve(lattice, out)
   return out
+}
+
+/** Takes the one step of a width that relieves most, again and again, until the stack bears its strain or no step helps. */
+function relieve(lattice: Lattice, out: Int32Array): void {
+  const widths = lattice.layers.map(({ placeOf }) => placeOf[widthRole]).filter((place) => place >= 0)
+  let least = lattice.excessStrain(out)
+  while (least > 0) {
+    let best: { readonly place: number; readonly choice: number } | null = null
+    for (const place of new Set(widths)) {
+      const here = out[place]
+      for (const choice of [here - 1, here + 1, here >> 1, (here + lattice.places[place].choices) >> 1]) {
+        if (choice < 0 || choice >= lattice.places[place].choices || choice === here) continue
+        out[place] = choice
+        const made = lattice.layers.every((layer) => layer.cell(out) !== null)
+        const excess =
+          made && lattice.rises(out) && lattice.fits(out) ? lattice.excessStrain(out) : Number.POSITIVE_INFINITY
+        if (excess < least) {
+          least = excess
+          best = { place, choice }
+        }
+        out[place] = here
+      }
+    }
+    if (best === null) return
+    out[best.place] = best.choice
+  }
 }
 
 /** Moves the widths towards the limits of the whole stack: all by the same share of what each has left, then one by one. */

@@ -240,6 +240,10 @@ export interface GrowthSpec {
   /** The thinnest layer that can be made, and the limits of the whole stack (nm); null: none. */
   readonly thinnestNm: number | null
   readonly totalNm: readonly [number, number] | null
+  /** Greatest mean strain of a stack, a fraction without sign; null: no limit. */
+  readonly strain: number | null
+  /** No strained layer may be thicker than its critical thickness. */
+  readonly critical: boolean
   /** Thickness on the part over that on the monitor, by medium. */
   readonly tooling: Readonly<Record<string, number>>
   readonly spread: Spread

@@ -51,10 +51,19 @@ export function readGrowth(
     stepNm,
     thinnestNm: readLength(growth?.thinnest, 'thinnest'),
     totalNm: readTotal(),
+    strain: readStrain(),
+    critical: growth?.critical ?? false,
     tooling: readTooling(),
     spread: readSpread(growth?.spread, growth?.index, kind, reader),
     assumed: !problems.source.has(['growth', 'spread']),
     trials,
+  }
+
+  function readStrain(): number | null {
+    const strain = reader.single(growth?.strain, [...path, 'strain'], 'percent')
+    if (strain === null || (strain > 0 && strain <= 0.2)) return strain
+    reader.complain([...path, 'strain'], 'is outside 0..20 %', 'Write the greatest mean strain, like "0.5 %".')
+    return null
   }
 
   function readTooling(): Record<string, number> {

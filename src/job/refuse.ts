@@ -34,7 +34,11 @@ const ofElectrons: Keys = {
     alpha: byIndex(),
     x: 'Take it out: media of light have no composition.',
   },
-  growth: { compositions: 'Take it out: media of light have no composition.' },
+  growth: {
+    compositions: 'Take it out: media of light have no composition.',
+    strain: 'Take it out: films have no lattice.',
+    critical: 'Take it out: films have no lattice.',
+  },
   spread: { x: 'Write "growth: { index: 0.002 }" for the spread of an index.' },
 }
 

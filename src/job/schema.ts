@@ -243,6 +243,13 @@ export const jobFormat = z
           .optional()
           .describe('One standard deviation of each error of growth.'),
         trials: z.number().optional().describe('How often each candidate is grown on paper; 2048 by default.'),
+        strain: quantity('percent', 'Greatest mean strain of a whole stack, of either sign; electrons.').optional(),
+        critical: z
+          .boolean()
+          .optional()
+          .describe(
+            'true: no strained layer thicker than its critical thickness (Matthews and Blakeslee, a buried layer); electrons.',
+          ),
         tooling: z
           .record(z.string(), z.number())
           .optional()

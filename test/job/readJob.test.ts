@@ -76,6 +76,8 @@ describe('a job in order', () => {
       stepNm: null,
       thinnestNm: null,
       totalNm: null,
+      strain: null,
+      critical: false,
       tooling: {},
       spread: { rate: 0.01, layer: { value: 0.5, unit: 'ML' }, x: 0.005, index: 0 },
       assumed: false,

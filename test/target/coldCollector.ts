@@ -58,6 +58,8 @@ export const growth: GrowthSpec = {
   stepNm: null,
   thinnestNm: null,
   totalNm: null,
+  strain: null,
+  critical: false,
   tooling: {},
   spread: { rate: 0.01, layer: { value: 0.5, unit: 'ML' }, x: 0.005, index: 0 },
   assumed: false,
