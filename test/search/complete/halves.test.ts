@@ -1,3 +1,4 @@
+import { Decimal } from 'decimal.js'
 import { describe, expect, it } from 'vitest'
 import { AngleIndex, isNoisy } from '../../../src/search/complete/AngleIndex.js'
 import { forcedTransmission } from '../../../src/search/complete/forcedTransmission.js'
@@ -15,7 +16,9 @@ import {
   type SearchChain,
   startBoundOf,
 } from '../../../src/search/index.js'
+import { mediaTable, type WaveSystem } from '../../../src/wave/index.js'
 import { transmissionAt } from '../../../src/wave/transmissionAt.js'
+import { decimalT } from '../../wave/decimalWave.js'
 import { boundJob, bySlices, seeded, structures, targets } from './jobs.js'
 
 /** Barriers up to 30 nm, through which nothing passes but by resonance. */
@@ -27,6 +30,19 @@ const opaque = `  entry: { potential: 0 eV, mass: 0.043 }
     - { potential: 0 eV, mass: 0.043, width: 2..9 nm step 0.5 nm }
     - { potential: 1.2 eV, mass: 0.15, width: 1..30 nm step 2.9 nm }
   exit: { potential: -100 meV, mass: 0.05 }`
+
+const Digits = Decimal.clone({ precision: 60 })
+const pairs = 40
+
+/** Of a system whose numbers are taken as they stand, as exact decimals. */
+function exactT({ media, stack }: WaveSystem, energyEv: number): Decimal {
+  const { q, mu } = mediaTable(media, 1)
+  media.fill(Float64Array.of(energyEv), { count: media.count, points: 1, q, mu })
+  // Just above a band edge rather than on it, where there is no wave to divide by.
+  const medium = (i: number) => ({ q: new Digits(q[i] === 0 ? 1e-40 : q[i]), mu: new Digits(mu[i]) })
+  const layers = Array.from(stack.medium, (i, j) => ({ ...medium(i), w: new Digits(stack.width[j]) }))
+  return decimalT(medium(stack.entry), layers, medium(stack.exit), Digits)
+}
 
 describe('halves', () => {
   const cases = { ...structures, opaque: () => opaque }
@@ -59,6 +75,34 @@ describe('halves', () => {
     }
     expect(compared).toBeGreaterThan(500)
     expect(sharp / compared).toBeGreaterThan(0.9)
+  })
+
+  it.each(Object.entries(cases))('of %s enclose T in 60 digits, without any margin', (_, stack) => {
+    const { problem, design } = boundJob({ stack: stack(seeded(4)), demands: targets['a pass and blocks'](seeded(2)) })
+    const chain = problem.chain() as SearchChain
+    const split = splitChain(chain, problem.places)!
+    const matrices = chain.matrices(chain.points)
+    const random = seeded(8)
+    const choice = new Int32Array(problem.places.length)
+    const [{ sliced, held, common }] = samplePairs(chain, split, problem.places, 64)
+    writeChoices(common, split.common, problem.places, choice)
+    let sharp = 0
+    for (let n = 0; n < pairs; n++) {
+      const p = Math.floor(random() * chain.points.length)
+      const [a, b] = [Math.floor(random() * sliced.count), Math.floor(random() * held.count)]
+      const [A, B] = [filledTable(sliced, matrices, p), filledTable(held, matrices, p)]
+      writeChoices(sliced.numbers[a], split.sliced.places, problem.places, choice)
+      writeChoices(held.numbers[b], split.held.places, problem.places, choice)
+      const { condition, at } = chain.points[p]
+      const exact = exactT(design.systems(choice)[condition], at)
+      const rest = A.d[a] * B.d[b] + A.e[a] * B.e[b]
+      const [low, high] = [A.low[a] * B.low[b] + rest, A.high[a] * B.high[b] + rest]
+      const cosh = new Digits(2).div(exact).minus(1)
+      expect(cosh.lte(high), `${cosh} is above ${high}`).toBe(true)
+      expect(cosh.gte(low), `${cosh} is below ${low}`).toBe(true)
+      if (low > 0 && high / low - 1 < 1e-9) sharp++
+    }
+    expect(sharp / pairs).toBeGreaterThan(0.8)
   })
 })
 
