@@ -61,8 +61,9 @@ program
 program
   .command('schema')
   .description('print the JSON Schema of the job file')
-  .action(() => {
-    code = schema()
+  .option('--reference', 'print every key of the job file in words, as Markdown')
+  .action((options: { readonly reference?: boolean }) => {
+    code = schema(options)
   })
 
 try {

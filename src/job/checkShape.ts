@@ -1,5 +1,6 @@
 import type { z } from 'zod'
 import { nearest } from '../media/index.js'
+import { keyExamples } from './keyExamples.js'
 import type { Problems } from './Problems.js'
 import { shortened } from './problemAt.js'
 import { type JobAsWritten, jobFormat } from './schema.js'
@@ -122,53 +123,16 @@ const names: Record<string, string> = {
   int: 'a whole number',
 }
 
-const examples: Record<string, string> = {
-  format: '"format: 1"',
-  name: '"name: my-filter"',
-  kind: '"kind: electron"',
-  note: '"note: some text"',
-  temperature: '"temperature: 77 K"',
-  peak: '"peak: 80 meV"',
-  fwhm: '"fwhm: 1..4 meV"',
-  pass: '"pass: 78..82 meV"',
-  above: '"above: 0.8"',
-  block: '"block: 5..60 meV"',
-  below: '"below: 2e-2"',
-  potential: '"potential: 0.2 eV"',
-  mass: '"mass: 0.09"',
-  alpha: '"alpha: 1.2 /eV"',
+/** What a line can't say. */
+const phrases: Record<string, string> = {
   like: '"like: outer", the id of another layer',
-  id: '"id: outer"',
   growth: '"growth:" with sources and spread',
-  search: '"search: { effort: standard, seed: 1 }"',
-  deliver: '"deliver: { candidates: 10 }"',
-  step: '"step: 0.1 nm"',
-  resolution: '"resolution: 0.01 meV"',
   stack: '"stack:" with entry, layers and exit',
   target: '"target:" with scan and demands',
-  entry: '"entry: GaAs"',
-  exit: '"exit: GaAs"',
   layers: '"layers:" with one "- { ... }" a layer',
-  scan: '"scan: 5..200 meV"',
   demands: '"demands:" with one "- { ... }" a demand',
-  material: '"material: GaAs"',
-  width: '"width: 6..20 ML"',
   x: '"x: 0.3" or "x: { pick: [0.25, 0.35] }"',
-  pick: '"pick: [..., ...]"',
-  mirror: '"mirror: true"',
-  repeat: '"repeat: 5"',
   period: '"period:" with one "- { ... }" a layer',
-  weight: '"weight: 0.5"',
-  height: '"height: 0.8"',
-  points: '"points: 64"',
-  within: '"within: 5 meV"',
-  curve: '"curve: goal.csv"',
-  seed: '"seed: 1"',
-  trials: '"trials: 2048"',
-  candidates: '"candidates: 10"',
-  compositions: '"compositions: 1"',
-  sources: '"sources: { Ga: 0.70 ML/s, Al: 0.30 ML/s }"',
-  spread: '"spread: { rate: 1 %, layer: 0.5 ML, x: 0.005 }"',
   'each of layers': '"- { material: GaAs, width: 10..30 ML }"',
   'each of period': '"- { material: GaAs, width: 10..30 ML }"',
   'each of demands': '"- { peak: 80 meV, within: 5 meV }"',
@@ -177,7 +141,8 @@ const examples: Record<string, string> = {
 }
 
 function example(label: string): string {
-  return Object.hasOwn(examples, label) ? examples[label] : `a value for "${label}"`
+  if (Object.hasOwn(phrases, label)) return phrases[label]
+  return Object.hasOwn(keyExamples, label) ? `"${keyExamples[label]}"` : `a value for "${label}"`
 }
 
 /** The key of a value; of an item of a list, the list's. */

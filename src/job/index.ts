@@ -1,6 +1,7 @@
 export { canonicalJson, jobContent, resumeContent } from './canonical.js'
 export { JobError, type JobProblem } from './JobError.js'
 export type * from './job.js'
+export { jobReference } from './jobReference.js'
 export { jobTemplate } from './jobTemplate.js'
 export { readJob } from './readJob.js'
 export { readJobText } from './readJobText.js'

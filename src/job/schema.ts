@@ -1,4 +1,6 @@
+import { parse } from 'yaml'
 import { z } from 'zod'
+import { keyExamples } from './keyExamples.js'
 import { type DimensionName, dimensions } from './quantities.js'
 
 /**
@@ -53,7 +55,11 @@ const itemFields = {
     .optional()
     .describe('Fixed or a range: "12 ML", "6..20 ML", "1..5 nm step 0.1 nm".'),
   repeat: z
-    .union([z.number(), z.string(), z.strictObject({ like: z.string() })])
+    .union([
+      z.number(),
+      z.string(),
+      z.strictObject({ like: z.string().describe('The id of the period whose count is followed.') }),
+    ])
     .optional()
     .describe('How often the period is repeated.'),
   mirror: z.boolean().optional().describe('Reflect the period about its last layer, which must be a single one.'),
@@ -100,6 +106,8 @@ const condition = {
   polarisation: z.enum(['s', 'p', 'mean']).optional().describe('Of the light; s by default, mean: half of each.'),
 }
 
+const yieldOnly = 'That of the demand, at least as loose, for the yield.'
+
 const demand = z
   .strictObject({
     id: z.string().optional().describe('A name for the tables; d1, d2, ... by default.'),
@@ -140,14 +148,14 @@ const demand = z
       .describe('The share that is limited: transmitted, reflected or absorbed; T by default.'),
     accept: z
       .strictObject({
-        within: z.union([z.string(), z.number()]).optional(),
-        fwhm: z.union([z.string(), z.number()]).optional(),
-        height: z.number().optional(),
-        alone: z.union([z.number(), z.string()]).optional(),
-        top: z.number().optional(),
-        ripple: z.number().optional(),
-        above: z.number().optional(),
-        below: z.union([z.number(), z.string()]).optional(),
+        within: z.union([z.string(), z.number()]).optional().describe(yieldOnly),
+        fwhm: z.union([z.string(), z.number()]).optional().describe(yieldOnly),
+        height: z.number().optional().describe(yieldOnly),
+        alone: z.union([z.number(), z.string()]).optional().describe(yieldOnly),
+        top: z.number().optional().describe(yieldOnly),
+        ripple: z.number().optional().describe(yieldOnly),
+        above: z.number().optional().describe(yieldOnly),
+        below: z.union([z.number(), z.string()]).optional().describe(yieldOnly),
         rms: z.number().optional().describe('Of a curve, which without it has no part in the yield.'),
       })
       .optional()
@@ -299,7 +307,33 @@ export function jobSchema(): Record<string, unknown> {
       jsonSchema.type = 'string'
     },
   })
+  withExamples(schema as Node, '')
   return { ...schema, title: 'tunnelwright job' }
+}
+
+/** The part of a JSON Schema that is read here. */
+export interface Node {
+  description?: string
+  examples?: unknown[]
+  properties?: Record<string, Node>
+  additionalProperties?: Node | boolean
+  items?: Node
+  anyOf?: Node[]
+  $ref?: string
+  $defs?: Record<string, Node>
+}
+
+/** Gives every key an example that an editor can offer, ahead of those of its dimension. `inside`: the key that holds it. */
+function withExamples(node: Node, inside: string): void {
+  for (const [key, inner] of Object.entries(node.properties ?? {})) {
+    const line = keyExamples[`${inside} ${key}`] ?? keyExamples[key]
+    const others = (inner.examples ?? []).filter((one) => !line || one !== parse(line)[key])
+    if (line) inner.examples = [parse(line)[key], ...others]
+    withExamples(inner, key)
+  }
+  for (const inner of [...(node.anyOf ?? []), ...Object.values(node.$defs ?? {})]) withExamples(inner, inside)
+  if (node.items) withExamples(node.items, inside)
+  if (typeof node.additionalProperties === 'object') withExamples(node.additionalProperties, inside)
 }
 
 function numbers(form: 'fixed' | 'range') {

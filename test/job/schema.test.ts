@@ -1,5 +1,5 @@
 import { describe, expect, test } from 'vitest'
-import { JobError, jobSchema, readJobText } from '../../src/job/index.js'
+import { JobError, jobReference, jobSchema, readJobText } from '../../src/job/index.js'
 
 type Schema = {
   properties?: Record<string, Schema>
@@ -42,6 +42,14 @@ describe('the JSON Schema', () => {
     ]) {
       expect(keys, key).toContain(key)
     }
+  })
+
+  test('has a description and an example for every key, in the reference too', () => {
+    const rows = jobReference()
+      .split('\n')
+      .filter((line) => line.startsWith('| `'))
+    expect(rows.length).toBeGreaterThan(100)
+    for (const row of rows) expect(row).toMatch(/^\| `[^`]+` \| [^|]{8,}.* \| `[^`]+: .+` \|$/)
   })
 
   test('describes every key of the top and of its sections', () => {
