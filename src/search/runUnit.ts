@@ -21,8 +21,10 @@ const kicksInVain = 32
 /**
  * One independent start of the sampled method (design 7.2): the best of a short evolution from low-discrepancy points, each fitted in
  * its continuous widths, compositions and numbers and taken to the best corner around the fit; the best of them descends on the
- * lattice. Then the basins around: other choices of each unordered list, another structure where the slope speaks for one, and kicks: where moves are priced, kicks of up to five places
- * that descend at once, as long as some help; else a few of up to three, each with a fit of its own. The result depends on the problem, the seed and the unit's number alone; `seed` is the same for all units of a search.
+ * lattice. Then the basins around: other choices of each unordered list, another structure where the slope speaks for one, and kicks:
+ * where moves are priced, kicks of up to five places that descend at once, as long as some help; else a few of up to three, each with
+ * a fit of its own. The result depends on the problem, the seed and the unit's number alone; `seed` is the same for all units of a
+ * search. `cost`: what it may cost, in bounds.
  */
 export function runUnit(problem: SearchProblem, unit: number, seed: Uint32Array | string, cost = budget): UnitResult {
   const examiner = new Examiner(problem, cost)
