@@ -58,6 +58,7 @@ export const keyExamples: Readonly<Record<string, string>> = {
   reference: 'reference: 633 nm',
   back: 'back: { thickness: 1 mm, then: air }',
   thickness: 'thickness: 1 mm',
+  // biome-ignore lint/suspicious/noThenProperty: a key of the job file; nothing awaits this table
   then: 'then: air',
   alike: 'alike: false',
   index: 'index: 1.46',
