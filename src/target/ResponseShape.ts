@@ -33,12 +33,15 @@ const leastEv = 1e-12
  */
 export class ResponseShape implements Shape {
   private readonly known: readonly Extremum[]
+  /** Where a wave comes in. */
+  private readonly windowEv: readonly [number, number]
 
   constructor(
     private readonly system: WaveSystem,
     private readonly quantity: Quantity,
-    private readonly windowEv: readonly [number, number],
+    windowEv: readonly [number, number],
   ) {
+    this.windowEv = [firstOpen(system, windowEv), windowEv[1]]
     this.known = this.find()
   }
 
@@ -191,6 +194,23 @@ function nextTry([a, b, c]: readonly number[], [fa, fb, fc]: readonly number[]):
   if (Math.abs(vertex - b) >= apart) return vertex
   // As good as there: the bracket closes from the wider side.
   return c - b > b - a ? b + Math.max(apart, 1e-3 * (c - b)) : b - Math.max(apart, 1e-3 * (b - a))
+}
+
+/** The lowest energy of a window at which the entry carries a wave, to rounding. */
+function firstOpen({ media, stack }: WaveSystem, [low, high]: readonly [number, number]): number {
+  const table = mediaTable(media, 1)
+  const open = (energy: number) => {
+    media.fill(Float64Array.of(energy), table)
+    return table.q[stack.entry] > 0
+  }
+  if (open(low)) return low
+  let [closed, first] = [low, high]
+  for (let step = 0; step < 60; step++) {
+    const middle = 0.5 * (closed + first)
+    if (open(middle)) first = middle
+    else closed = middle
+  }
+  return first
 }
 
 function poleWidthAt(poles: readonly Pole[], energy: number): number | null {
