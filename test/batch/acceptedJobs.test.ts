@@ -46,7 +46,7 @@ const stackOf = (layer: fc.Arbitrary<string>) =>
         return `[${x}, ${y}]\n  mirror: true`
       case 'unlike':
         return `[{ repeat: 2, alike: false, period: [${x}] }, ${y}]`
-      case 'tied':
+      default:
         return `[${x}, { id: t, ${b.replace(/width: .*$/, 'width: { like: a, times: 2 }')} }, ${z}]`
     }
   })
