@@ -237,7 +237,8 @@ function placesOf(layers: readonly LayerLattice[]): Place[] {
 function merged(a: Stretch, b: Stretch): Stretch {
   const rest = { id: `${a.id}+${b.id}`, slices: a.slices + b.slices, biased: a.biased }
   if (a.medium.widths.stepNm === b.medium.widths.stepNm) return { ...rest, medium: a.medium, count: a.count + b.count }
-  const stepNm = a.count * a.medium.widths.stepNm + b.count * b.medium.widths.stepNm
+  // Twelve digits: the sum of three is the same from either end.
+  const stepNm = Number((a.count * a.medium.widths.stepNm + b.count * b.medium.widths.stepNm).toPrecision(12))
   const widths = { first: 1, last: 1, stride: 1, stepNm, gap: 0, monolayers: false }
   return { ...rest, medium: { ...a.medium, widths }, count: 1 }
 }
