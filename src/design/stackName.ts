@@ -32,7 +32,7 @@ export function stackText({ layers }: Lattice, stretches: readonly Stretch[]): s
   const units = stretches.map(({ medium }) => (medium.widths.monolayers ? 'ML' : 'nm'))
   const single = units.every((unit) => unit === units[0])
   const parts = stretches.map(({ medium, count }, i) => {
-    const width = medium.widths.monolayers ? count : rounded(count * medium.widths.stepNm)
+    const width = medium.widths.monolayers ? count : Number((count * medium.widths.stepNm).toPrecision(6))
     return `${mediumText(medium.choice, ranging)} ${width}${single ? '' : ` ${units[i]}`}`
   })
   return single && parts.length > 0 ? `${parts.join(' / ')} ${units[0]}` : parts.join(' / ')

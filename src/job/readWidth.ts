@@ -32,7 +32,11 @@ export function readWidth(
     return null
   }
   if (to === 0) {
-    reader.complain(path, 'is no width', `Leave the layer out, or let the search choose: "0..${unit === 'ML' ? 5 : 50} ${quantity.unit}".`)
+    reader.complain(
+      path,
+      'is no width',
+      `Leave the layer out, or let the search choose: "0..${unit === 'ML' ? 5 : 50} ${quantity.unit}".`,
+    )
     return null
   }
   if (to > widest[unit]) {

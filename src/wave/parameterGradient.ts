@@ -16,6 +16,9 @@ let dTdMu = new Float64Array(0)
 let dTdQIm = new Float64Array(0)
 let dTdMuIm = new Float64Array(0)
 let partials = new Float64Array(0)
+/** Of every medium at one energy, and the number of the energy after which they were asked. */
+let known = new Float64Array(0)
+let asked = new Int32Array(0)
 let rows = new Float64Array(0)
 
 /**
@@ -35,7 +38,7 @@ export function parameterGradient(
   const points = energies.length
   const layers = stack.medium.length
   const { parameters, lossless } = media
-  grow(media.count * points, layers * points, 4 * parameters, rowMap ? layers * (1 + parameters) : 0)
+  grow(media.count, points, layers, parameters, rowMap !== undefined)
   const { q, mu, qIm, muIm } = table
   const real = { count: media.count, points, q, mu }
   const here = lossless ? real : { ...real, qIm, muIm }
@@ -50,6 +53,8 @@ export function parameterGradient(
   const sign = lossless && share === 'R' ? -1 : 1
   if (sign < 0) for (let e = 0; e < points; e++) out.T[e] = 1 - out.T[e]
   const stride = 1 + parameters
+  const size = 4 * parameters
+  asked.fill(-1, 0, media.count)
   for (let e = 0; e < points; e++) {
     const gradient = rowMap ? rows : out.gradient
     const first = rowMap ? 0 : e * layers
@@ -58,12 +63,18 @@ export function parameterGradient(
       const cell = e * layers + own
       const to = (first + j) * stride
       gradient[to] = sign * dTdWidth[cell]
-      media.partials(energies[e], forward.medium[j], partials)
+      const m = forward.medium[j]
+      const k = m * size
+      if (asked[m] !== e) {
+        asked[m] = e
+        media.partials(energies[e], m, partials)
+        for (let i = 0; i < size; i++) known[k + i] = partials[i]
+      }
       for (let p = 0; p < parameters; p++) {
-        let slope = dTdQ[cell] * partials[2 * p] + dTdMu[cell] * partials[2 * p + 1]
+        let slope = dTdQ[cell] * known[k + 2 * p] + dTdMu[cell] * known[k + 2 * p + 1]
         if (!lossless) {
-          const o = 2 * (parameters + p)
-          slope += dTdQIm[cell] * partials[o] + dTdMuIm[cell] * partials[o + 1]
+          const o = k + 2 * (parameters + p)
+          slope += dTdQIm[cell] * known[o] + dTdMuIm[cell] * known[o + 1]
         }
         gradient[to + 1 + p] = sign * slope
       }
@@ -81,8 +92,9 @@ function tableOf(cells: number): Required<MediaTable> {
   return { count: 0, points: 0, q: row(), mu: row(), qIm: row(), muIm: row() }
 }
 
-function grow(cells: number, entries: number, numbers: number, rowNumbers: number): void {
-  if (table.q.length < cells) table = tableOf(cells)
+function grow(count: number, points: number, layers: number, parameters: number, mapped: boolean): void {
+  const entries = layers * points
+  if (table.q.length < count * points) table = tableOf(count * points)
   if (dTdWidth.length < entries) {
     dTdWidth = new Float64Array(entries)
     dTdQ = new Float64Array(entries)
@@ -90,6 +102,8 @@ function grow(cells: number, entries: number, numbers: number, rowNumbers: numbe
     dTdQIm = new Float64Array(entries)
     dTdMuIm = new Float64Array(entries)
   }
-  if (rows.length < rowNumbers) rows = new Float64Array(rowNumbers)
-  if (partials.length < numbers) partials = new Float64Array(numbers)
+  if (mapped && rows.length < layers * (1 + parameters)) rows = new Float64Array(layers * (1 + parameters))
+  if (partials.length < 4 * parameters) partials = new Float64Array(4 * parameters)
+  if (known.length < 4 * parameters * count) known = new Float64Array(4 * parameters * count)
+  if (asked.length < count) asked = new Int32Array(count)
 }
