@@ -5,6 +5,13 @@ export const colours = createColors(
   process.stderr.isTTY === true && !process.env.NO_COLOR && process.env.TERM !== 'dumb',
 )
 
+// Who reads may have read enough (`| head`): what is left to print has no reader, and what runs goes on.
+for (const stream of [process.stdout, process.stderr]) {
+  stream.on('error', (error: NodeJS.ErrnoException) => {
+    if (error.code !== 'EPIPE') throw error
+  })
+}
+
 /** Progress and everything for people. */
 export function say(text: string): void {
   process.stderr.write(`${text}\n`)

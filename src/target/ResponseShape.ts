@@ -13,6 +13,8 @@ const most = 4000
 
 const rounds = 40
 
+const newtons = 2
+
 /** Of its first bracket. */
 const closeEnough = 1e-6
 
@@ -166,7 +168,35 @@ export class ResponseShape implements Shape {
         }
       })
     }
-    return now.map(({ at, value, sign }) => ({ energyEv: at[1], T: value[1], sign }))
+    return this.polished(now)
+  }
+
+  /**
+   * Values say where an extreme lies only to the root of their rounding: the zero of the slope, by differences over a fiftieth of the first
+   * bracket, says it to some nine digits, so that a peak moves smoothly with what moves it.
+   */
+  private polished(
+    found: readonly (Bracket & { readonly first: number })[],
+  ): { energyEv: number; T: number; sign: number }[] {
+    let places = found.map(({ at }) => at[1])
+    for (let round = 0; round < newtons; round++) {
+      const steps = found.map(({ first }) => first / 50)
+      const value = this.values(places.flatMap((x, b) => [-2, -1, 0, 1, 2].map((n) => x + n * steps[b])))
+      places = places.map((x, b) => {
+        const [a, c, d, e, f] = value.subarray(5 * b, 5 * b + 5)
+        const slope = (a - 8 * c + 8 * e - f) / 12
+        const bend = (16 * (c + e) - 30 * d - (a + f)) / 12
+        const by = (-slope / bend) * steps[b]
+        // Flatter than its rounding, or bent by something else than this extreme: it stays.
+        return Math.abs(by) < steps[b] ? x + by : x
+      })
+    }
+    const value = this.values(places)
+    return found.map(({ at, value: old, sign }, b) => {
+      // Never worse than what was found, but for rounding.
+      if (sign * (old[1] - value[b]) > 1e-12) return { energyEv: at[1], T: old[1], sign }
+      return { energyEv: places[b], T: value[b], sign }
+    })
   }
 
   private values(energies: readonly number[]): Float64Array {

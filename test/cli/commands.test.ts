@@ -1,3 +1,4 @@
+import { spawnSync } from 'node:child_process'
 import { readdirSync } from 'node:fs'
 import { fileURLToPath } from 'node:url'
 import { describe, expect, it } from 'vitest'
@@ -76,6 +77,14 @@ describe('new', () => {
 })
 
 describe('materials', () => {
+  it('minds no reader that has read enough', () => {
+    const main = fileURLToPath(new URL('../../dist/cli/main.js', import.meta.url))
+    const { stdout, stderr } = spawnSync('sh', ['-c', `"${process.execPath}" "${main}" schema | head -c 10`], {
+      encoding: 'utf8',
+    })
+    expect([stdout, stderr]).toEqual(['{\n  "$schem'.slice(0, 10), ''])
+  })
+
   it('lists every material', async () => {
     const { stdout } = await command(['materials'], emptyFolder())
     for (const name of [...materialNames, ...opticalNames]) expect(stdout).toContain(name)
