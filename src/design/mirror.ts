@@ -1,5 +1,6 @@
 import type { MediumChoice } from '../model/index.js'
 import type { Lattice, Stretch } from './Lattice.js'
+import type { Candidate, Cell } from './LayerLattice.js'
 
 /**
  * The one of a stack and its mirror image that is listed (design 5): at the first place where the two differ, the thicker layer; same
@@ -64,24 +65,102 @@ function rankOf(choice: MediumChoice): number {
 
 const sameNm = 1e-9
 
+/**
+ * An assignment of the reversed stack. Counts of repetitions may have to change places, and layers of no width may have to stand elsewhere:
+ * every combination of counts is tried, as they stand first, and the reversed stretches are laid along its layers.
+ */
 function mirrored(lattice: Lattice, assignment: Int32Array): Int32Array | null {
-  const cells = lattice.cells(assignment)
-  // The counts of repetitions stay.
-  const out = Int32Array.from(assignment)
-  for (const [i, from] of partners(lattice, assignment).entries()) {
-    if (from.length === 0) continue
-    const layer = lattice.layers[i]
-    const { medium, count } = cells[from[0]]
-    const agree = from.every((other) => {
-      const cell = cells[other]
-      return (
-        cell.medium.key === medium.key && cell.count === count && cell.medium.widths.stepNm === medium.widths.stepNm
-      )
-    })
-    const own = agree ? layer.equalOf(medium) : null
-    if (own === null || !layer.allows(own, count)) return null
-    layer.writeMedium(own, out)
-    layer.writeCount(own, count, out)
+  const wanted = lattice.stretches(assignment).reverse()
+  for (const out of withCounts(lattice, assignment)) {
+    const found = laid(lattice, wanted, out, (image) => isReversed(lattice, assignment, image))
+    if (found !== null) return found
   }
-  return lattice.feasible(out) && isReversed(lattice, assignment, out) ? out : null
+  return null
+}
+
+/** More steps than this are not taken to lay a stack along its layers. */
+const mostSteps = 20_000
+
+/**
+ * The first makeable assignment along whose layers these stretches stand, layers of no width between them, a stretch split among
+ * neighbours of its medium where it must be; null where there is none, or none was found.
+ */
+function laid(
+  lattice: Lattice,
+  wanted: readonly Stretch[],
+  start: Int32Array,
+  accepted: (assignment: Int32Array) => boolean,
+): Int32Array | null {
+  const slots = lattice.slots(start)
+  const given = new Map<number, Cell>()
+  let steps = 0
+  return place(0, 0, wanted[0]?.count ?? 0)
+
+  /** The layers from `slot` on have to take `left` steps of stretch `next` and all behind it. */
+  function place(slot: number, next: number, left: number): Int32Array | null {
+    if (next < wanted.length && left === 0) return place(slot, next + 1, wanted[next + 1]?.count ?? 0)
+    if (steps++ > mostSteps) return null
+    if (slot === slots.length) return next === wanted.length ? finished() : null
+    const { layer: i } = slots[slot]
+    const known = given.get(i)
+    if (known) {
+      if (known.count === 0) return place(slot + 1, next, left)
+      const fits = next < wanted.length && sameMedium(known.medium, wanted[next].medium) && known.count <= left
+      return fits ? place(slot + 1, next, left - known.count) : null
+    }
+    const layer = lattice.layers[i]
+    const own = next < wanted.length ? layer.equalOf(wanted[next].medium) : null
+    if (own !== null) {
+      // Whole first, so that nothing is split that need not be.
+      for (let count = left; count > 0 && count >= own.widths.first; count--) {
+        if (!layer.allows(own, count)) continue
+        given.set(i, { medium: own, count })
+        const found = place(slot + 1, next, left - count)
+        if (found !== null) return found
+      }
+    }
+    const here = layer.leastCount === 0 ? layer.medium(start) : null
+    if (here !== null && layer.allows(here, 0)) {
+      given.set(i, { medium: here, count: 0 })
+      const found = place(slot + 1, next, left)
+      if (found !== null) return found
+    }
+    given.delete(i)
+    return null
+  }
+
+  function finished(): Int32Array | null {
+    const out = Int32Array.from(start)
+    for (const [i, { medium, count }] of given) {
+      const layer = lattice.layers[i]
+      layer.writeMedium(medium, out)
+      layer.writeCount(medium, count, out)
+    }
+    return lattice.feasible(out) && accepted(out) ? out : null
+  }
+}
+
+function sameMedium(a: Candidate, b: Candidate): boolean {
+  return a.key === b.key && a.widths.stepNm === b.widths.stepNm
+}
+
+/** More combinations than this are not looked through: the counts stay. */
+const mostCounts = 256
+
+/** Copies of an assignment, its own counts of repetitions first. */
+function* withCounts({ places, repeats }: Lattice, assignment: Int32Array): Iterable<Int32Array> {
+  yield Int32Array.from(assignment)
+  const first = places.length - repeats.length
+  const all = repeats.reduce((product, { from, to }) => product * (to - from + 1), 1)
+  if (repeats.length < 2 || all > mostCounts) return
+  for (let n = 0; n < all; n++) {
+    const out = Int32Array.from(assignment)
+    let rest = n
+    for (let r = 0; r < repeats.length; r++) {
+      const choices = places[first + r].choices
+      out[first + r] = rest % choices
+      rest = Math.floor(rest / choices)
+    }
+    yield out
+  }
 }
